@@ -1,0 +1,16 @@
+import react from '@vitejs/plugin-react';
+import { defineConfig } from 'vitest/config';
+
+export default defineConfig({
+  plugins: [react()],
+  base: './',
+  build: { target: 'es2023', sourcemap: false, assetsInlineLimit: 0 },
+  worker: { format: 'es' },
+  server: { port: 5173 },
+  preview: { port: 4173 },
+  test: {
+    include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'],
+    testTimeout: 60_000,
+    hookTimeout: 120_000,
+  },
+});
