@@ -42,3 +42,13 @@ export type AssessEvent =
   /** Share of the span done, 0 to 1, and what is being done. */
   | { type: 'progress'; fraction: number; note: string }
   | { type: 'report'; report: Report };
+
+/** What the assessment asks of whoever runs it: the page's worker, the command line, a test. */
+export interface AssessHost {
+  /** Bytes of a packed ephemeris file by its name, e.g. "de405-2030s.bin". */
+  fetchFile(name: string): Promise<ArrayBuffer>;
+  emit(event: AssessEvent): void;
+  /** Awaited between chunks of work, so that a message (cancel, a new case) can get through. */
+  pause(): Promise<void>;
+  cancelled(): boolean;
+}

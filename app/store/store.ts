@@ -1,0 +1,81 @@
+import { createStore, type StoreApi } from 'zustand/vanilla';
+import type { Choices, ReadResult } from '../../core/case/types';
+import type { Report } from '../../core/report/report';
+import { Trajectory } from '../worker/trajectory';
+
+/** Slow intent: what the person asked for and what has come back. No per-frame state. */
+
+export type Theme = 'auto' | 'paper' | 'night';
+export type StageLayout = 'both' | 'sun' | 'earth';
+export type Station = 'north-pole' | 'along-approach' | 'edge-on' | 'riding';
+export type RibbonTime = 'stretched' | 'linear';
+
+export type RunStatus = 'idle' | 'reading' | 'running' | 'done' | 'failed' | 'stopped';
+
+export interface RunState {
+  status: RunStatus;
+  /** Share of the span done, 0 to 1. */
+  fraction: number;
+  note: string;
+  /** What went wrong, in a sentence; null unless status is 'failed'. */
+  error: string | null;
+}
+
+export interface NamedDistances {
+  sphereOfInfluence: boolean;
+  moonDistance: boolean;
+  geosynchronous: boolean;
+}
+
+export interface DeskStore {
+  /** The pasted text. Kept in a case file. */
+  text: string;
+  /** Fields set by hand. Kept in a case file. */
+  choices: Choices;
+  reading: ReadResult | null;
+  run: RunState;
+  /** The last good report: stays while a new case is read or fails. */
+  report: Report | null;
+  /** The text and reading belong to a newer case than the report does. */
+  reportIsStale: boolean;
+  /** Streamed states of the current run; a new object for each run. Mutable: watch `version`. */
+  trajectory: Trajectory;
+  /** Ids of the findings chosen for the plate. Kept in a case file. */
+  plateFindings: string[];
+  playing: boolean;
+  theme: Theme;
+  stageLayout: StageLayout;
+  sunStation: Station;
+  earthStation: Station;
+  namedDistances: NamedDistances;
+  showUnperturbed: boolean;
+  ribbonTime: RibbonTime;
+  sheetOpen: boolean;
+}
+
+export type DeskStoreApi = StoreApi<DeskStore>;
+
+export const IDLE_RUN: RunState = { status: 'idle', fraction: 0, note: '', error: null };
+
+export function createDeskStore(initial: Partial<DeskStore> = {}): DeskStoreApi {
+  return createStore<DeskStore>(() => ({
+    text: '',
+    choices: {},
+    reading: null,
+    run: IDLE_RUN,
+    report: null,
+    reportIsStale: false,
+    trajectory: new Trajectory(),
+    plateFindings: [],
+    playing: false,
+    theme: 'auto',
+    stageLayout: 'both',
+    sunStation: 'north-pole',
+    earthStation: 'north-pole',
+    namedDistances: { sphereOfInfluence: true, moonDistance: true, geosynchronous: true },
+    showUnperturbed: true,
+    ribbonTime: 'stretched',
+    sheetOpen: true,
+    ...initial,
+  }));
+}
