@@ -107,7 +107,7 @@ const approach = v.object({
   excessSpeedKmS: v.nullable(finite),
   outcome: v.picklist(['pass', 'atmosphere', 'impact']),
   /** Where the hyperbola and the target plane osculate. */
-  osculatingAt: v.picklist(['closest-approach', 'entry-sphere']),
+  osculatingAt: v.picklist(['closest-approach', 'entry-sphere', 'surface']),
   hyperbola: v.nullable(hyperbola),
   targetPlane: v.nullable(targetPlane),
   crossings: v.array(crossing),
