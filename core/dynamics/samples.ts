@@ -35,18 +35,17 @@ export class Sampler {
   ) {}
 
   /**
-   * Appends samples of a step to a list of numbers, in the order of integration.
+   * Appends samples of a step, or a part of it, in the order of integration.
    *
-   * @param segment the step; its start is left out (it is the end of the step before)
-   * @param until   last offset to sample (the step's end, or where the trajectory ends in it)
-   * @param count   how many samples
+   * @param segment the step
+   * @param from    offset where the part starts; it is left out (it is the end of the step before)
+   * @param to      last offset to sample (the step's end, or where the trajectory ends in it)
    * @param out     receives SAMPLE.stride numbers a sample
    */
-  append(segment: Segment, until: number, count: number, out: number[]): void {
+  append(segment: Segment, from: number, to: number, out: number[]): void {
+    const count = this.countFor(segment, from, to);
     for (let i = 1; i <= count; i++) {
-      const offset =
-        i === count ? until : segment.startOffset + ((until - segment.startOffset) * i) / count;
-      this.one(segment, offset, out);
+      this.one(segment, i === count ? to : from + ((to - from) * i) / count, out);
     }
   }
 
@@ -83,16 +82,16 @@ export class Sampler {
   }
 
   /** How many samples a step deserves: more where the object is near the Earth. */
-  countFor(segment: Segment): number {
-    segment.evaluate(segment.endOffset, this.object);
-    this.ephemeris.states(segment.baseSeconds, segment.endOffset, this.bodies);
-    const g = vec3(this.object).map((x, k) => x - this.bodies[BODY_INDEX.Earth * 6 + k]);
-    const distance = Math.hypot(g[0], g[1], g[2]);
-    if (distance < NEAR_KM) return 8;
-    return Math.max(
-      2,
-      Math.ceil(Math.abs(segment.endOffset - segment.startOffset) / FAR_SPACING_S),
-    );
+  private countFor(segment: Segment, from: number, to: number): number {
+    const earth = BODY_INDEX.Earth * 6;
+    let nearest = Number.POSITIVE_INFINITY;
+    for (const offset of [from, to]) {
+      segment.evaluate(offset, this.object);
+      this.ephemeris.states(segment.baseSeconds, offset, this.bodies);
+      const g = vec3(this.object).map((x, k) => x - this.bodies[earth + k]);
+      nearest = Math.min(nearest, Math.hypot(g[0], g[1], g[2]));
+    }
+    return nearest < NEAR_KM ? 8 : Math.max(2, Math.ceil(Math.abs(to - from) / FAR_SPACING_S));
   }
 }
 
