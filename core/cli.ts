@@ -1,0 +1,121 @@
+import { readFile, writeFile } from 'node:fs/promises';
+import { parseArgs } from 'node:util';
+import { AssessmentCancelled, runAssessment } from './assess';
+import { readCase } from './case/read';
+import type { Choices, ReadResult } from './case/types';
+import { Trajectory } from './dynamics/trajectory';
+import { createEphemeris } from './ephemeris';
+import { reportJsonText } from './report/canonical';
+import { writeEphemerisCsv } from './report/ephemeris-csv';
+import { writeOem } from './report/oem';
+
+/** Case on standard input, report on standard output; errors on standard error with exit code 2. */
+
+const USAGE = `Usage: npm run -s assess -- [options] < case.txt > report.json
+  --gm DE405|DE431   gravitational parameters (default DE431)
+  --from DATE        start of the search (default: 30 days before the epoch)
+  --to DATE          end of the search (default: see model.span.rule in the report)
+  --set FIELD=VALUE  sets a field of the case, as an edit on the page does (may be repeated)
+  --oem FILE         also writes the trajectory as a CCSDS OEM
+  --csv FILE         also writes the ephemeris as CSV
+  --made-at TIME     time of making written in the report (default: now)
+  --help
+`;
+
+/** A refusal that is told and ends with exit code 2. */
+class Refused extends Error {}
+
+function choicesOf(values: {
+  gm?: string | undefined;
+  from?: string | undefined;
+  to?: string | undefined;
+  set?: string[] | undefined;
+}): Choices {
+  const choices: Choices = {};
+  for (const item of values.set ?? []) {
+    const at = item.indexOf('=');
+    if (at < 1) throw new Refused(`--set ${item}: expected FIELD=VALUE`);
+    choices[item.slice(0, at) as keyof Choices] = item.slice(at + 1);
+  }
+  if (values.gm !== undefined) choices.gm = values.gm;
+  if (values.from !== undefined) choices.spanFrom = values.from;
+  if (values.to !== undefined) choices.spanTo = values.to;
+  return choices;
+}
+
+function whyNot(reading: ReadResult): string {
+  const errors = reading.problems.filter((problem) => problem.severity === 'error');
+  const place = (line: number | null): string => (line === null ? '' : `line ${line}: `);
+  return [
+    ...errors.map((problem) => `${place(problem.line)}${problem.message}`),
+    ...reading.questions.map(
+      (question) =>
+        `${place(question.line)}${question.message} Answer with ${question.readings
+          .map((reading) => `--set ${question.field}=${reading.value} (${reading.label})`)
+          .join(' or ')}.`,
+    ),
+  ].join('\n');
+}
+
+async function readStandardInput(): Promise<string> {
+  const chunks: Uint8Array[] = [];
+  for await (const chunk of process.stdin) chunks.push(chunk);
+  return Buffer.concat(chunks).toString('utf8');
+}
+
+async function main(): Promise<void> {
+  const { values } = parseArgs({
+    options: {
+      gm: { type: 'string' },
+      from: { type: 'string' },
+      to: { type: 'string' },
+      set: { type: 'string', multiple: true },
+      oem: { type: 'string' },
+      csv: { type: 'string' },
+      'made-at': { type: 'string' },
+      help: { type: 'boolean' },
+    },
+  });
+  if (values.help === true) {
+    process.stderr.write(USAGE);
+    return;
+  }
+  const text = await readStandardInput();
+  const reading = readCase(text, choicesOf(values));
+  if (reading.case === null) throw new Refused(whyNot(reading));
+  const trajectory = new Trajectory();
+  const report = await runAssessment(
+    {
+      text,
+      reading,
+      case: reading.case,
+      madeAt: values['made-at'] ?? new Date().toISOString(),
+    },
+    createEphemeris(),
+    {
+      fetchFile: async (name) => {
+        const bytes = await readFile(new URL(`../public/ephemeris/${name}`, import.meta.url));
+        return bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength);
+      },
+      emit: (event) => {
+        if (event.type === 'states') trajectory.append(event.direction, event.samples);
+      },
+      pause: async () => {},
+      cancelled: () => false,
+    },
+  );
+  const samples = trajectory.samples();
+  if (values.oem !== undefined) await writeFile(values.oem, writeOem(report, samples));
+  if (values.csv !== undefined) await writeFile(values.csv, writeEphemerisCsv(report, samples));
+  process.stdout.write(reportJsonText(report));
+}
+
+main().catch((error: unknown) => {
+  const known =
+    error instanceof Refused ||
+    error instanceof AssessmentCancelled ||
+    (error instanceof Error && 'code' in error);
+  const words = error instanceof Error ? (known ? error.message : (error.stack ?? '')) : `${error}`;
+  process.stderr.write(`${words}\n`);
+  process.exitCode = 2;
+});
