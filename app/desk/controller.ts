@@ -1,0 +1,224 @@
+import type { Choices, FieldName, OrbitCase, ReadResult } from '../../core/case/types';
+import type { Report } from '../../core/report/report';
+import type { Clock } from '../store/clock';
+import { type DeskStoreApi, IDLE_RUN } from '../store/store';
+import { type Assessment, type WorkerClient, WorkerDied } from '../worker/client';
+import type { ExportKind } from '../worker/messages';
+import { Trajectory } from '../worker/trajectory';
+
+/** How long typing must rest before the text is read, ms. */
+const TYPING_REST_MS = 120;
+/** How many supporting findings a new case puts on the plate by itself. */
+const FINDINGS_ON_PLATE = 3;
+
+/** Typed letter by letter, or put there as a whole (pasted, dropped, opened, picked). */
+export type TextSource = 'typed' | 'replaced';
+
+export interface ControllerDeps {
+  store: DeskStoreApi;
+  clock: Clock;
+  client: WorkerClient;
+  /** The time of making, ISO 8601 UTC. */
+  now(): string;
+  /** Hands a file to the person. */
+  save(fileName: string, content: Blob): void;
+}
+
+/** What the person can do; every action of the desk goes through here. */
+export interface Controller {
+  setText(text: string, source: TextSource): void;
+  /** Sets a field by hand; null takes the hand away again. */
+  setChoice(field: FieldName, value: string | null): void;
+  openFile(file: Blob): Promise<void>;
+  stop(): void;
+  runAgain(): void;
+  goTo(tdbSeconds: number): void;
+  togglePlateFinding(id: string): void;
+  /** Rejects with a sentence when there is nothing to write. */
+  saveFile(kind: ExportKind): Promise<void>;
+}
+
+interface Shown {
+  report: Report | null;
+  trajectory: Trajectory;
+}
+
+/**
+ * Carries the person's text to a report: reads it, runs what is complete, streams the states into
+ * the store. The last good report stays, marked stale, until the next one is there; a run that is
+ * stopped or fails gives its place back to the trajectory of that report, so that what the page
+ * shows always belongs together.
+ */
+export function createController({ store, clock, client, now, save }: ControllerDeps): Controller {
+  /** Counts changes of the case: an answer to an older one is dropped. */
+  let turn = 0;
+  let run: Assessment | null = null;
+  let typing: ReturnType<typeof setTimeout> | undefined;
+  let shown: Shown = { report: null, trajectory: store.getState().trajectory };
+  /** The case is a new one, not a change of the one before: the plate's findings start afresh. */
+  let isNewCase = true;
+  let personMovedClock = false;
+  let settingClock = false;
+
+  clock.subscribe(() => {
+    if (!settingClock) personMovedClock = true;
+  });
+
+  function setClock(tdbSeconds: number): void {
+    settingClock = true;
+    clock.set(tdbSeconds);
+    settingClock = false;
+  }
+
+  /** Drops what is under way for the case before; its findings stay, marked. */
+  function leaveCase(): void {
+    turn += 1;
+    clearTimeout(typing);
+    run?.cancel();
+    run = null;
+    store.setState({
+      run: { ...IDLE_RUN, status: 'reading' },
+      trajectory: shown.trajectory,
+      reportIsStale: shown.report !== null,
+    });
+  }
+
+  function fail(error: unknown): void {
+    const message = error instanceof Error ? error.message : String(error);
+    const advice = error instanceof WorkerDied ? ' Run it again to start a new worker.' : '';
+    store.setState({
+      run: { status: 'failed', fraction: 0, note: '', error: message + advice },
+      trajectory: shown.trajectory,
+    });
+  }
+
+  async function read(): Promise<void> {
+    const mine = turn;
+    const { text, choices } = store.getState();
+    if (text.trim() === '') {
+      store.setState({ reading: null, run: IDLE_RUN });
+      return;
+    }
+    try {
+      const answer = await client.read(text, choices);
+      if (mine !== turn) return;
+      const { desk, result } = answer;
+      if (desk !== null && desk.text !== '' && desk.text !== text) {
+        store.setState({
+          text: desk.text,
+          choices: desk.choices,
+          plateFindings: desk.plateFindings,
+        });
+        isNewCase = false;
+        if (desk.clockTdbSeconds !== null) clock.set(desk.clockTdbSeconds);
+        return read();
+      }
+      store.setState({ reading: result, run: IDLE_RUN });
+      if (result.case !== null) await assess(text, result, result.case);
+    } catch (error) {
+      if (mine === turn) fail(error);
+    }
+  }
+
+  async function assess(text: string, reading: ReadResult, orbit: OrbitCase): Promise<void> {
+    const trajectory = new Trajectory();
+    store.setState({ run: { ...IDLE_RUN, status: 'running' } });
+    const own = client.assess({ text, reading, case: orbit, madeAt: now() }, (event) => {
+      if (event.type === 'progress') {
+        const { fraction, note } = event;
+        store.setState({ run: { status: 'running', fraction, note, error: null } });
+      } else if (event.type === 'report') {
+        show({ report: event.report, trajectory });
+      } else {
+        trajectory.append(event.direction, event.samples);
+        // The trajectory grows in place; setting it tells those who watch its version.
+        store.setState({ trajectory });
+        if (trajectory.version === 1 && !personMovedClock) setClock(trajectory.fromTdbSeconds);
+      }
+    });
+    run = own;
+    const outcome = await own.outcome;
+    if (run !== own) return;
+    run = null;
+    if (outcome === 'done') store.setState({ run: { ...IDLE_RUN, status: 'done', fraction: 1 } });
+  }
+
+  function show(next: Shown & { report: Report }): void {
+    shown = next;
+    const { report, trajectory } = next;
+    store.setState({
+      report,
+      trajectory,
+      reportIsStale: false,
+      ...(isNewCase ? { plateFindings: firstFindings(report) } : {}),
+    });
+    isNewCase = false;
+    const at = clock.tdbSeconds;
+    const outside = at < trajectory.fromTdbSeconds || at > trajectory.toTdbSeconds;
+    if (personMovedClock && !outside) return;
+    const principal = report.principal === null ? null : report.approaches[report.principal];
+    setClock(principal?.tdbSeconds ?? report.case.normalised.epochTdbSeconds);
+    personMovedClock = false;
+  }
+
+  const controller: Controller = {
+    setText(text, source) {
+      if (source === 'replaced') {
+        isNewCase = true;
+        personMovedClock = false;
+        store.setState({ choices: {}, playing: false });
+      }
+      store.setState({ text });
+      leaveCase();
+      if (source === 'replaced') void read();
+      else typing = setTimeout(() => void read(), TYPING_REST_MS);
+    },
+    setChoice(field, value) {
+      const choices: Choices = { ...store.getState().choices };
+      if (value === null) delete choices[field];
+      else choices[field] = value;
+      store.setState({ choices });
+      leaveCase();
+      void read();
+    },
+    async openFile(file) {
+      controller.setText(await file.text(), 'replaced');
+    },
+    stop() {
+      if (run === null) return;
+      const { fraction, note } = store.getState().run;
+      leaveCase();
+      store.setState({ run: { status: 'stopped', fraction, note, error: null } });
+    },
+    runAgain() {
+      leaveCase();
+      void read();
+    },
+    goTo(tdbSeconds) {
+      store.setState({ playing: false });
+      clock.set(tdbSeconds);
+    },
+    togglePlateFinding(id) {
+      const { plateFindings } = store.getState();
+      store.setState({
+        plateFindings: plateFindings.includes(id)
+          ? plateFindings.filter((each) => each !== id)
+          : [...plateFindings, id],
+      });
+    },
+    async saveFile(kind) {
+      const { text, choices, plateFindings } = store.getState();
+      const desk = { text, choices, clockTdbSeconds: clock.tdbSeconds, plateFindings };
+      const file = await client.exportFile(kind, now(), kind === 'case-file' ? desk : null);
+      save(file.fileName, new Blob([file.text], { type: file.mediaType }));
+    },
+  };
+  return controller;
+}
+
+function firstFindings(report: Report): string[] {
+  return report.findings
+    .filter((finding) => finding.kind === 'support')
+    .slice(0, FINDINGS_ON_PLATE)
+    .map((finding) => finding.id);
+}
