@@ -1,0 +1,155 @@
+import {
+  ARCSEC_TO_RAD,
+  AU_KM,
+  BODIES,
+  BODY_INDEX,
+  EARTH_J2,
+  EARTH_RADIUS_KM,
+  GM_KM3_S2,
+  type GmSet,
+  SPEED_OF_LIGHT_KM_S,
+} from '../constants';
+import type { Ephemeris } from '../ephemeris';
+
+/** Non-gravitational acceleration at 1 au, km/s^2: radial, transverse, normal; g(r) = (1 au/r)^2. */
+export interface NonGravitationalForce {
+  a1: number;
+  a2: number;
+  a3: number;
+}
+
+export interface ForceModelOptions {
+  gm: GmSet;
+  nonGravitational: NonGravitationalForce | null;
+}
+
+/** Geocentric distance within which the oblateness of the Earth is applied, km. */
+const OBLATENESS_REGION_KM = 1e7;
+const CENTURY_S = 36525 * 86400;
+
+/**
+ * Acceleration of a massless object in the field of Sun, planets and Moon.
+ *
+ * Newtonian point masses; the Sun's relativity to first post-Newtonian order (Schwarzschild,
+ * harmonic coordinates); J2 of the Earth about the pole of date; optional A1, A2, A3.
+ * Barycentric ICRF, km, s, TDB. One instance serves one trajectory at a time (it keeps buffers).
+ * Source: Newhall, Standish & Williams (1983), A&A 125, 150 (point masses and the post-Newtonian
+ * term for one mass); Marsden, Sekanina & Yeomans (1973), AJ 78, 211 (A1, A2, A3); pole of date from
+ * the precession of Capitaine, Wallace & Chapront (2003), A&A 412, 567, to second order.
+ */
+export class ForceModel {
+  private readonly gm: Float64Array;
+  private readonly bodies = new Float64Array(36);
+  private readonly forces: Float64Array | null;
+  /** Evaluations so far. */
+  evaluations = 0;
+
+  constructor(
+    readonly ephemeris: Ephemeris,
+    options: ForceModelOptions,
+  ) {
+    this.gm = Float64Array.from(BODIES, (body) => GM_KM3_S2[options.gm][body]);
+    const forces = options.nonGravitational;
+    this.forces = forces === null ? null : Float64Array.of(forces.a1, forces.a2, forces.a3);
+  }
+
+  /**
+   * Derivative of a state: hot loop, allocates nothing.
+   *
+   * @param base   whole TDB seconds past J2000
+   * @param offset seconds past the base
+   * @param y      barycentric state, km and km/s (6)
+   * @param out    receives velocity (3) and acceleration (3) from `at`
+   * @throws       EphemerisRangeError outside the ephemeris
+   */
+  derivative(base: number, offset: number, y: Float64Array, out: Float64Array, at: number): void {
+    const { bodies, gm } = this;
+    this.ephemeris.positionsAndSunVelocity(base, offset, bodies);
+    this.evaluations += 1;
+    const x = y[0];
+    const yy = y[1];
+    const z = y[2];
+    let ax = 0;
+    let ay = 0;
+    let az = 0;
+    for (let i = 0; i < 11; i++) {
+      const dx = bodies[i * 3] - x;
+      const dy = bodies[i * 3 + 1] - yy;
+      const dz = bodies[i * 3 + 2] - z;
+      const d2 = dx * dx + dy * dy + dz * dz;
+      const k = gm[i] / (d2 * Math.sqrt(d2));
+      ax += k * dx;
+      ay += k * dy;
+      az += k * dz;
+    }
+    out[at] = y[3];
+    out[at + 1] = y[4];
+    out[at + 2] = y[5];
+    out[at + 3] = ax;
+    out[at + 4] = ay;
+    out[at + 5] = az;
+    this.addSolarTerms(y, out, at);
+    this.addOblateness(base + offset, y, out, at);
+  }
+
+  /** Relativity of the Sun and the non-gravitational terms. */
+  private addSolarTerms(y: Float64Array, out: Float64Array, at: number): void {
+    const { bodies, forces } = this;
+    const sx = y[0] - bodies[SUN];
+    const sy = y[1] - bodies[SUN + 1];
+    const sz = y[2] - bodies[SUN + 2];
+    const wx = y[3] - bodies[33];
+    const wy = y[4] - bodies[34];
+    const wz = y[5] - bodies[35];
+    const s2 = sx * sx + sy * sy + sz * sz;
+    const s = Math.sqrt(s2);
+    const w2 = wx * wx + wy * wy + wz * wz;
+    const sw = sx * wx + sy * wy + sz * wz;
+    const gm = this.gm[10];
+    const k = gm / (SPEED_OF_LIGHT_KM_S * SPEED_OF_LIGHT_KM_S * s2 * s);
+    const along = k * ((4 * gm) / s - w2);
+    const drag = 4 * k * sw;
+    out[at + 3] += along * sx + drag * wx;
+    out[at + 4] += along * sy + drag * wy;
+    out[at + 5] += along * sz + drag * wz;
+    if (forces === null) return;
+    const g = (AU_KM * AU_KM) / s2;
+    const hx = sy * wz - sz * wy;
+    const hy = sz * wx - sx * wz;
+    const hz = sx * wy - sy * wx;
+    const h = Math.sqrt(hx * hx + hy * hy + hz * hz);
+    const radial = (g * forces[0]) / s;
+    const transverse = (g * forces[1]) / (h * s);
+    const normal = (g * forces[2]) / h;
+    out[at + 3] += radial * sx + transverse * (hy * sz - hz * sy) + normal * hx;
+    out[at + 4] += radial * sy + transverse * (hz * sx - hx * sz) + normal * hy;
+    out[at + 5] += radial * sz + transverse * (hx * sy - hy * sx) + normal * hz;
+  }
+
+  private addOblateness(tdbSeconds: number, y: Float64Array, out: Float64Array, at: number): void {
+    const { bodies } = this;
+    const gx = y[0] - bodies[EARTH];
+    const gy = y[1] - bodies[EARTH + 1];
+    const gz = y[2] - bodies[EARTH + 2];
+    const q2 = gx * gx + gy * gy + gz * gz;
+    if (q2 > OBLATENESS_REGION_KM * OBLATENESS_REGION_KM) return;
+    const century = tdbSeconds / CENTURY_S;
+    const px = (2004.191898 - 0.4297829 * century) * century * ARCSEC_TO_RAD;
+    const py = (-0.025896 - 22.4072747 * century) * century * ARCSEC_TO_RAD;
+    const pz = Math.sqrt(1 - px * px - py * py);
+    const q = Math.sqrt(q2);
+    const sine = (gx * px + gy * py + gz * pz) / q;
+    const k = (1.5 * EARTH_J2 * this.gm[2] * EARTH_RADIUS_KM * EARTH_RADIUS_KM) / (q2 * q2);
+    const radial = (k * (5 * sine * sine - 1)) / q;
+    const polar = 2 * k * sine;
+    out[at + 3] += radial * gx - polar * px;
+    out[at + 4] += radial * gy - polar * py;
+    out[at + 5] += radial * gz - polar * pz;
+  }
+}
+
+const SUN = BODY_INDEX.Sun * 3;
+const EARTH = BODY_INDEX.Earth * 3;
+
+export const createForceModel = (ephemeris: Ephemeris, options: ForceModelOptions): ForceModel =>
+  new ForceModel(ephemeris, options);

@@ -1,0 +1,9 @@
+export {
+  createEphemeris,
+  EPHEMERIS_COVERAGE,
+  type Ephemeris,
+  EphemerisFileError,
+  EphemerisRangeError,
+  ephemerisFileNames,
+  loadEphemeris,
+} from './ephemeris';
