@@ -118,7 +118,8 @@ const DE405_GM_EMB = 8.997011346712499e-10;
 /**
  * Gravitational parameters, km^3/s^2, by set and body (planets with their satellites).
  * DE405: header values in au^3/d^2 (Standish 1998), written from memory and checked against
- * the values repeated in the open encounter set's header.
+ * the values repeated in the open encounter set's header. That set is there to repeat integrations
+ * made with these masses, and those leave Pluto out: its pull moves the slowest of them by 0.2 km.
  * DE431: values published with Folkner et al. 2014 (IPN Progress Report 42-196), from memory.
  */
 export const GM_KM3_S2: Readonly<Record<GmSet, Readonly<Record<Body, number>>>> = {
@@ -132,7 +133,7 @@ export const GM_KM3_S2: Readonly<Record<GmSet, Readonly<Record<Body, number>>>> 
     Saturn: 8.4597151856806587e-8 * DE405_AU3_D2_TO_KM3_S2,
     Uranus: 1.2920249167819694e-8 * DE405_AU3_D2_TO_KM3_S2,
     Neptune: 1.5243589007842762e-8 * DE405_AU3_D2_TO_KM3_S2,
-    Pluto: 2.1886997654259697e-12 * DE405_AU3_D2_TO_KM3_S2,
+    Pluto: 0,
     Moon: (DE405_GM_EMB * DE405_AU3_D2_TO_KM3_S2) / (1 + EARTH_MOON_MASS_RATIO),
     Sun: 2.959122082855911e-4 * DE405_AU3_D2_TO_KM3_S2,
   },

@@ -57,7 +57,7 @@ export async function integrateLeg(plan: LegPlan, host: LegHost): Promise<Leg> {
   const before = (a: number, b: number): boolean => (a - b) * direction < 0;
   if (!before(start.tdbSeconds, goal([]))) return leg;
   await host.prepare(start.tdbSeconds, direction);
-  const propagator = createPropagator(plan.model, plan.ephemeris, start, direction, {
+  const propagator = createPropagator(plan.model, start, direction, {
     longestStepS: LONGEST_STEP_S,
   });
   const scanner = new EncounterScanner(plan.ephemeris);

@@ -33,14 +33,15 @@ export interface ModelFacts {
 /** The model behind the figures, in full: ephemeris, masses, terms, integrator, span, assumptions. */
 export function modelSection(facts: ModelFacts): Report['model'] {
   const gm = GM_KM3_S2[facts.gm];
+  const bodies = BODIES.filter((body) => gm[body] > 0);
   return {
     ephemeris:
       'JPL DE405 (Standish 1998), Chebyshev coefficients as published; planets with their satellites as one point',
     ephemerisCoverage: facts.coverageText,
     gmSet: facts.gm,
-    bodies: BODIES.map((body) => ({ body, gmKm3S2: gm[body] })),
+    bodies: bodies.map((body) => ({ body, gmKm3S2: gm[body] })),
     terms: [
-      'Newtonian point masses: Sun, Mercury, Venus, Earth, Moon, Mars, Jupiter, Saturn, Uranus, Neptune, Pluto',
+      `Newtonian point masses: ${bodies.join(', ')}`,
       'relativity of the Sun, first post-Newtonian order (Schwarzschild)',
       'oblateness J2 of the Earth within 10 000 000 km, pole of date',
       ...(facts.nonGravitational

@@ -14,8 +14,8 @@ const padded = (value: number, width: number): string => String(value).padStart(
  * @param decimals    digits after the second, 0 to 9 (beyond 6 the double itself is coarser)
  * @returns           "2031-05-14T03:12:40.123Z"; rounding carries into minutes, days and years, and
  *                    a UTC leap second reads 23:59:60. Years before 0 have a sign and six digits.
- * @throws            EpochError when tdbSeconds is not finite or beyond the years ±9000; RangeError
- *                    for decimals outside 0 to 9
+ * @throws            EpochError when tdbSeconds is not finite or outside the years −5900 to 9900;
+ *                    RangeError for decimals outside 0 to 9
  */
 export function formatIso(tdbSeconds: number, scale: TimeScale, decimals: number): string {
   if (!Number.isInteger(decimals) || decimals < 0 || decimals > 9) {
