@@ -35,17 +35,14 @@ const SCALES: Readonly<Record<string, TimeScale>> = {
 /** Scales of the trade that are not carried here; named so that they are refused in words. */
 const REFUSED_SCALES = ['UT0', 'UT1', 'UT2', 'TCB', 'TCG'];
 
-const SCALE = 'UTC|UT[012]|UT|GMT|TDB|TDT|TT|ET|TAI|GPS|TCB|TCG';
+const SCALE = 'UTC|UT[012](?!\\d)|UT|GMT|TDB|TDT|TT|ET|TAI|GPS|TCB|TCG';
 const DAY_COUNT = 'MJD|JDE|JED|JD';
 const ERA = 'A\\. ?D\\.?|AD|CE';
-const HEAD_DAY_COUNT = new RegExp(
-  `^(${DAY_COUNT})(?=(?:${SCALE})(?![A-Za-z0-9])|[^A-Za-z]|$)`,
-  'i',
-);
-const HEAD_WORD = new RegExp(`^(${SCALE}|${ERA})(?![A-Za-z0-9])`, 'i');
+const HEAD_DAY_COUNT = new RegExp(`^(${DAY_COUNT})(?=(?:${SCALE})(?![A-Za-z])|[^A-Za-z]|$)`, 'i');
+const HEAD_WORD = new RegExp(`^(${SCALE}|${ERA})(?![A-Za-z])`, 'i');
 const TAIL_WORD = new RegExp(`(?<![A-Za-z])(${SCALE}|Z|${DAY_COUNT}|${ERA})$`, 'i');
-const HEAD_PUNCTUATION = /^[\s([=:,_]+/;
-const TAIL_PUNCTUATION = /[\s)\]=:,;_.]+$/;
+const HEAD_PUNCTUATION = /^[\s()[\]=:,;_]+/;
+const TAIL_PUNCTUATION = /[\s()[\]=:,;_.]+$/;
 
 const NUMBER = /^([+-]?)(\d+)(?:[.,](\d*))?$/;
 const GROUPED_JULIAN_DATE = /^(\d)([.,'’])(\d{3})\2(\d{3})(?:(?!\2)[.,](\d+))?$/;
