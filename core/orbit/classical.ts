@@ -1,0 +1,188 @@
+import { AU_KM, SECONDS_PER_DAY } from '../constants';
+import { findRoot } from '../math/roots';
+import { dot, norm, subtract, type Vec3 } from '../math/vector';
+import { type Elements, elementsFromState } from './elements';
+import {
+  flightPathAngleAtRadius,
+  type Hyperbola,
+  hyperbolaFromState,
+  speedAtRadius,
+  timeToPeriapsisFrom,
+} from './hyperbola';
+import { type Moid, moid } from './moid';
+import { propagateTwoBody } from './propagate';
+
+interface State {
+  r: Vec3;
+  v: Vec3;
+}
+
+export interface ClassicalInput {
+  /** Heliocentric states at the epoch, km and km/s, one set of axes. */
+  object: State;
+  /** Of the Earth–Moon barycentre. */
+  earth: State;
+  gmSun: number;
+  gmEarthMoon: number;
+  gmEarth: number;
+  /** The Earth's centre relative to the Earth–Moon barycentre, so many seconds after the epoch. */
+  earthOffset(dtS: number): State;
+  /** First and last second looked at, relative to the epoch. */
+  spanS: readonly [number, number];
+  sphereOfInfluenceKm: number;
+  entryRadiusKm: number;
+}
+
+/** Times are seconds after the epoch. */
+export interface ClassicalEncounter {
+  objectElements: Elements;
+  earthElements: Elements;
+  moid: Moid;
+  /** The nearest the two unperturbed orbits bring object and Earth in the span. */
+  closest: { dtS: number; distanceKm: number };
+  /** Every local minimum of that distance below 0.5 au. */
+  approaches: { dtS: number; distanceKm: number }[];
+  /** Entering the sphere of influence before the closest approach; null when it is never entered. */
+  sphereEntry: { dtS: number; r: Vec3; v: Vec3 } | null;
+  hyperbola: Hyperbola | null;
+  periapsisBelowInterface: boolean;
+  /** At the entry radius on the way in; travel time from the sphere of influence. */
+  interface: {
+    dtS: number;
+    speedKmS: number;
+    flightPathAngleRad: number;
+    travelTimeS: number;
+  } | null;
+  periapsis: { dtS: number; distanceKm: number; speedKmS: number; travelTimeS: number } | null;
+}
+
+const APPROACH_LIMIT_KM = 0.5 * AU_KM;
+const TIME_TOLERANCE_S = 1e-3;
+
+/**
+ * The classical chain: two-body orbits about the Sun, sphere of influence, geocentric hyperbola.
+ *
+ * @param input states at the epoch and the boundaries
+ * @returns     the chain's result; parts that do not come about are null. An object inside the sphere
+ *              at the epoch takes its geocentric state there, and the entry by running back.
+ * @throws      DegenerateOrbit, KeplerFailure for states with no orbit
+ * Accuracy: that of its assumptions; it is the first answer and the cross-check of the n-body one.
+ * Source: patched conics, Bate, Mueller & White, Fundamentals of Astrodynamics (1971), ch. 7 and 8.
+ */
+export function classicalEncounter(input: ClassicalInput): ClassicalEncounter {
+  const { object, earth, gmSun, gmEarthMoon } = input;
+  const objectElements = elementsFromState(object.r, object.v, gmSun);
+  const earthElements = elementsFromState(earth.r, earth.v, gmSun + gmEarthMoon);
+  const relative = (dtS: number): State => {
+    const a = propagateTwoBody(object.r, object.v, gmSun, dtS);
+    const b = propagateTwoBody(earth.r, earth.v, gmSun + gmEarthMoon, dtS);
+    const offset = input.earthOffset(dtS);
+    return {
+      r: subtract(subtract(a.r, b.r), offset.r),
+      v: subtract(subtract(a.v, b.v), offset.v),
+    };
+  };
+  const { closest, minima } = search(relative, input.spanS);
+  const sphereEntry = entryBefore(relative, closest, input);
+  return {
+    objectElements,
+    earthElements,
+    moid: moid(objectElements, earthElements),
+    closest,
+    approaches: minima.filter((item) => item.distanceKm <= APPROACH_LIMIT_KM),
+    sphereEntry,
+    ...encounterOf(sphereEntry, input),
+  };
+}
+
+type Approach = ClassicalEncounter['closest'];
+
+/** All local minima of the distance in the span, and the least distance in it. */
+function search(
+  relative: (dtS: number) => State,
+  [from, to]: readonly [number, number],
+): { closest: Approach; minima: Approach[] } {
+  const count = Math.max(8, Math.ceil((to - from) / SECONDS_PER_DAY));
+  const radial = (t: number): number => {
+    const { r, v } = relative(t);
+    return dot(r, v);
+  };
+  const at = (t: number): Approach => ({ dtS: t, distanceKm: norm(relative(t).r) });
+  const minima: Approach[] = [];
+  let before = radial(from);
+  for (let i = 1; i <= count; i++) {
+    const t = from + ((to - from) * i) / count;
+    const now = radial(t);
+    if (before < 0 && now >= 0) {
+      minima.push(at(findRoot(radial, t - (to - from) / count, t, TIME_TOLERANCE_S)));
+    }
+    before = now;
+  }
+  const closest = [...minima, at(from), at(to)].reduce((a, b) =>
+    b.distanceKm < a.distanceKm ? b : a,
+  );
+  return { closest, minima };
+}
+
+/** The last time the sphere is entered before the closest approach. */
+function entryBefore(
+  relative: (dtS: number) => State,
+  closest: Approach,
+  input: ClassicalInput,
+): ClassicalEncounter['sphereEntry'] {
+  const radius = input.sphereOfInfluenceKm;
+  if (closest.distanceKm >= radius) return null;
+  const epoch = relative(0);
+  if (norm(epoch.r) < radius && closest.dtS >= 0) {
+    const hyperbola = hyperbolaFromState(epoch.r, epoch.v, input.gmEarth);
+    const back = hyperbola === null ? null : timeToPeriapsisFrom(hyperbola, radius, input.gmEarth);
+    if (hyperbola === null || back === null) return { dtS: 0, ...epoch };
+    const dtS = hyperbola.timeToPeriapsisS - back;
+    return { dtS, ...propagateTwoBody(epoch.r, epoch.v, input.gmEarth, dtS) };
+  }
+  const excess = (t: number): number => norm(relative(t).r) - radius;
+  let outside = closest.dtS;
+  let step = radius / Math.max(1, norm(relative(closest.dtS).v));
+  for (let i = 0; excess(outside) <= 0; i++) {
+    if (i === 60) return null;
+    outside -= step;
+    step *= 1.2;
+  }
+  const dtS = findRoot(excess, outside, closest.dtS, TIME_TOLERANCE_S);
+  return { dtS, ...relative(dtS) };
+}
+
+/** What the hyperbola from the sphere's edge says. */
+function encounterOf(
+  entry: ClassicalEncounter['sphereEntry'],
+  input: ClassicalInput,
+): Pick<ClassicalEncounter, 'hyperbola' | 'periapsisBelowInterface' | 'interface' | 'periapsis'> {
+  const { gmEarth, entryRadiusKm } = input;
+  const hyperbola = entry === null ? null : hyperbolaFromState(entry.r, entry.v, gmEarth);
+  if (entry === null || hyperbola === null) {
+    return { hyperbola: null, periapsisBelowInterface: false, interface: null, periapsis: null };
+  }
+  const toPeriapsis = hyperbola.timeToPeriapsisS;
+  const below = hyperbola.periapsisKm < entryRadiusKm;
+  const fromInterface = timeToPeriapsisFrom(hyperbola, entryRadiusKm, gmEarth);
+  const angle = flightPathAngleAtRadius(hyperbola, entryRadiusKm, gmEarth);
+  return {
+    hyperbola,
+    periapsisBelowInterface: below,
+    interface:
+      fromInterface === null || angle === null
+        ? null
+        : {
+            dtS: entry.dtS + toPeriapsis - fromInterface,
+            speedKmS: speedAtRadius(hyperbola, entryRadiusKm, gmEarth),
+            flightPathAngleRad: angle,
+            travelTimeS: toPeriapsis - fromInterface,
+          },
+    periapsis: {
+      dtS: entry.dtS + toPeriapsis,
+      distanceKm: hyperbola.periapsisKm,
+      speedKmS: hyperbola.periapsisSpeedKmS,
+      travelTimeS: toPeriapsis,
+    },
+  };
+}
