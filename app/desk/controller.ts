@@ -3,6 +3,7 @@ import type { Report } from '../../core/report/report';
 import type { Clock } from '../store/clock';
 import { type DeskStoreApi, IDLE_RUN } from '../store/store';
 import { type Assessment, type WorkerClient, WorkerDied } from '../worker/client';
+import { fileStem } from '../worker/file-name';
 import type { ExportKind } from '../worker/messages';
 import { Trajectory } from '../worker/trajectory';
 
@@ -20,8 +21,16 @@ export interface ControllerDeps {
   client: WorkerClient;
   /** The time of making, ISO 8601 UTC. */
   now(): string;
+  /** Draws the plate of a report with what the desk shows now. */
+  drawPlate(report: Report, trajectory: Trajectory): Promise<Blob>;
   /** Hands a file to the person. */
   save(fileName: string, content: Blob): void;
+}
+
+/** There is no report of the case on the sheet yet. */
+export class NoReport extends Error {
+  readonly code = 'no-report';
+  override name = 'NoReport';
 }
 
 /** What the person can do; every action of the desk goes through here. */
@@ -34,8 +43,9 @@ export interface Controller {
   runAgain(): void;
   goTo(tdbSeconds: number): void;
   togglePlateFinding(id: string): void;
-  /** Rejects with a sentence when there is nothing to write. */
-  saveFile(kind: ExportKind): Promise<void>;
+  /** Writes a file and gives its name; rejects with a sentence when there is nothing to write. */
+  saveFile(kind: ExportKind): Promise<string>;
+  savePlate(): Promise<string>;
 }
 
 interface Shown {
@@ -49,7 +59,8 @@ interface Shown {
  * stopped or fails gives its place back to the trajectory of that report, so that what the page
  * shows always belongs together.
  */
-export function createController({ store, clock, client, now, save }: ControllerDeps): Controller {
+export function createController(deps: ControllerDeps): Controller {
+  const { store, clock, client, now } = deps;
   /** Counts changes of the case: an answer to an older one is dropped. */
   let turn = 0;
   let run: Assessment | null = null;
@@ -210,7 +221,17 @@ export function createController({ store, clock, client, now, save }: Controller
       const { text, choices, plateFindings } = store.getState();
       const desk = { text, choices, clockTdbSeconds: clock.tdbSeconds, plateFindings };
       const file = await client.exportFile(kind, now(), kind === 'case-file' ? desk : null);
-      save(file.fileName, new Blob([file.text], { type: file.mediaType }));
+      deps.save(file.fileName, new Blob([file.text], { type: file.mediaType }));
+      return file.fileName;
+    },
+    async savePlate() {
+      const { report, trajectory } = shown;
+      if (report === null || store.getState().reportIsStale) {
+        throw new NoReport('The plate needs a finished assessment of the case on the sheet.');
+      }
+      const fileName = `${fileStem(report)}-plate.png`;
+      deps.save(fileName, await deps.drawPlate(report, trajectory));
+      return fileName;
     },
   };
   return controller;

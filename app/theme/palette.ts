@@ -11,14 +11,17 @@ function subscribeToSystem(listener: () => void): () => void {
   return () => query.removeEventListener('change', listener);
 }
 
-function paletteOf(theme: Theme, systemIsDark: boolean): Palette {
-  if (theme === 'auto') return systemIsDark ? NIGHT : PAPER;
-  return theme === 'night' ? NIGHT : PAPER;
+const systemIsDark = (): boolean => matchMedia(DARK).matches;
+
+/** The palette of a theme now, outside React. */
+export function paletteOf(theme: Theme): Palette {
+  const night = theme === 'auto' ? systemIsDark() : theme === 'night';
+  return night ? NIGHT : PAPER;
 }
 
 /** The palette in force: the person's choice, or the system's when the choice is `auto`. */
 export function usePalette(): Palette {
   const theme = useDeskStore((state) => state.theme);
-  const systemIsDark = useSyncExternalStore(subscribeToSystem, () => matchMedia(DARK).matches);
-  return paletteOf(theme, systemIsDark);
+  useSyncExternalStore(subscribeToSystem, systemIsDark);
+  return paletteOf(theme);
 }

@@ -67,6 +67,7 @@ function setUp() {
     clock,
     client,
     now: () => '2026-03-01T00:00:00Z',
+    drawPlate: async (report, trajectory) => new Blob([`${report.fingerprint} ${trajectory.count}`]),
     save: (fileName, content) => saved.push({ fileName, content }),
   });
   return { store, clock, controller, reads, runs, saved, asked, state: store.getState };
@@ -362,7 +363,7 @@ describe('what is handed over', () => {
 
   it('saves what the worker writes, under its name', async () => {
     const { controller, saved, asked } = await finished();
-    await controller.saveFile('oem');
+    expect(await controller.saveFile('oem')).toBe('x.oem');
     expect(asked).toEqual([{ kind: 'oem', madeAt: '2026-03-01T00:00:00Z', desk: null }]);
     expect(saved[0].fileName).toBe('x.oem');
     expect(await saved[0].content.text()).toBe('content');
@@ -377,5 +378,19 @@ describe('what is handed over', () => {
       kind: 'case-file',
       desk: { text: 'first', choices: { centre: 'Sun' }, clockTdbSeconds: 12, plateFindings: [] },
     });
+  });
+
+  it('draws the plate from the report and the trajectory that belong together', async () => {
+    const { controller, saved } = await finished();
+    expect(await controller.savePlate()).toBe('Sample-One-invented-a1b2c3d4-plate.png');
+    expect(await saved[0].content.text()).toBe(`${inventedReport().fingerprint} 2`);
+  });
+
+  it('draws no plate of a case that has been changed since', async () => {
+    const { controller, saved } = await finished();
+    controller.setText('bad', 'replaced');
+    await settle();
+    await expect(controller.savePlate()).rejects.toMatchObject({ code: 'no-report' });
+    expect(saved).toEqual([]);
   });
 });

@@ -1,0 +1,8 @@
+/** Words of caution, set off by a rule and named as what they are. */
+export function Caution({ text }: { text: string }) {
+  return (
+    <p className="caution">
+      <span className="caps">Caution</span> {text}
+    </p>
+  );
+}

@@ -1,0 +1,110 @@
+import { type ClipboardEvent, useEffect, useRef } from 'react';
+import type { Problem } from '../../../core/case/types';
+import { useDeskStore } from '../../store/context';
+import { useController } from '../controller-context';
+import { DEMOS } from '../demos';
+
+/** What the sheet can ask of the paste area: lay the selection on a line (1-based). */
+export interface LinePointer {
+  select(line: number): void;
+}
+
+const SIGNS = { error: '✕', warning: '△', note: '·' } as const;
+const RANK = { error: 2, warning: 1, note: 0 } as const;
+
+/** The worst problem of each line. */
+function marksOf(problems: Problem[]): Map<number, Problem['severity']> {
+  const marks = new Map<number, Problem['severity']>();
+  for (const { line, severity } of problems) {
+    if (line === null) continue;
+    const known = marks.get(line);
+    if (known === undefined || RANK[severity] > RANK[known]) marks.set(line, severity);
+  }
+  return marks;
+}
+
+/** The big paste area with its lines numbered and the problems marked beside them. */
+export function PasteArea({ onReady }: { onReady(pointer: LinePointer): void }) {
+  const controller = useController();
+  const text = useDeskStore((state) => state.text);
+  const reading = useDeskStore((state) => state.reading);
+  const area = useRef<HTMLTextAreaElement>(null);
+  const gutter = useRef<HTMLDivElement>(null);
+  const pastedWhole = useRef(false);
+  const lines = text.split('\n').length;
+  const marks = marksOf(reading?.problems ?? []);
+
+  useEffect(() => {
+    onReady({
+      select(line) {
+        const element = area.current;
+        if (element === null) return;
+        const before = element.value
+          .split('\n')
+          .slice(0, line - 1)
+          .join('\n').length;
+        const start = line === 1 ? 0 : before + 1;
+        const end = element.value.indexOf('\n', start);
+        element.focus();
+        element.setSelectionRange(start, end === -1 ? element.value.length : end);
+        const lineHeight = element.scrollHeight / element.value.split('\n').length;
+        element.scrollTop = (line - 1) * lineHeight - element.clientHeight / 2;
+      },
+    });
+  }, [onReady]);
+
+  /** A paste over everything, or into a demo nobody has touched, is a new case as a whole. */
+  function paste(event: ClipboardEvent<HTMLTextAreaElement>) {
+    const element = event.currentTarget;
+    const all = element.selectionStart === 0 && element.selectionEnd === element.value.length;
+    const untouchedDemo = DEMOS.some((demo) => demo.text === element.value);
+    if (untouchedDemo && !all) {
+      event.preventDefault();
+      controller.setText(event.clipboardData.getData('text'), 'replaced');
+    } else {
+      pastedWhole.current = all;
+    }
+  }
+
+  return (
+    <div className="paste">
+      <div className="paste-gutter" aria-hidden="true">
+        <div ref={gutter} className="paste-lines">
+          {Array.from({ length: lines }, (_, index) => {
+            const mark = marks.get(index + 1);
+            return (
+              // biome-ignore lint/suspicious/noArrayIndexKey: a line is its number
+              <span key={index} className={mark === undefined ? undefined : `paste-${mark}`}>
+                {mark === undefined ? '' : SIGNS[mark]} {index + 1}
+              </span>
+            );
+          })}
+        </div>
+      </div>
+      <textarea
+        ref={area}
+        className="paste-text figures"
+        aria-label="The case: paste or type a state, elements, a CCSDS OPM or a case file"
+        aria-describedby="paste-hint"
+        aria-invalid={reading?.problems.some((problem) => problem.severity === 'error') ?? false}
+        spellCheck={false}
+        autoComplete="off"
+        autoCapitalize="off"
+        wrap="off"
+        rows={11}
+        value={text}
+        onPaste={paste}
+        onChange={(event) => {
+          controller.setText(event.target.value, pastedWhole.current ? 'replaced' : 'typed');
+          pastedWhole.current = false;
+        }}
+        onScroll={(event) => {
+          const { scrollTop } = event.currentTarget;
+          if (gutter.current !== null) {
+            gutter.current.style.transform = `translateY(${-scrollTop}px)`;
+          }
+        }}
+      />
+    </div>
+  );
+}
