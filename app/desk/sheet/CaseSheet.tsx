@@ -16,17 +16,18 @@ export function CaseSheet() {
   return (
     <section id="sheet" className="sheet" aria-labelledby="sheet-title" tabIndex={-1}>
       <header className="sheet-head">
-        <h2 id="sheet-title" className="caps">
+        <h2 id="sheet-title" className={open ? 'caps' : 'only-spoken'}>
           Case sheet
         </h2>
         <button
           type="button"
           className="link sheet-fold"
+          aria-label={open ? 'Fold away the case sheet' : 'Case sheet, unfold it'}
           aria-expanded={open}
           aria-controls="sheet-body"
           onClick={toggle}
         >
-          {open ? 'Fold away' : 'Unfold'}
+          {open ? 'Fold away' : 'Case sheet'}
         </button>
       </header>
       <div id="sheet-body" className="sheet-body" hidden={!open}>
