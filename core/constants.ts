@@ -111,6 +111,17 @@ export const BODY_RADIUS_KM: Readonly<Record<Body, number>> = {
 
 export type GmSet = 'DE405' | 'DE431';
 
+/**
+ * Second zonal harmonic of the Sun, by set of gravitational parameters (radius 696 000 km).
+ * DE431: 2.1106e-7 (Folkner et al. 2014, from memory). The DE405 set leaves it out, as the
+ * integrations do that it is there to repeat.
+ */
+export const SUN_J2: Readonly<Record<GmSet, number>> = { DE405: 0, DE431: 2.1106e-7 };
+
+/** North pole of the Sun, ICRF, degrees. IAU/IAG WGCCRE 2009 (Archinal et al. 2011). */
+export const SUN_POLE_RA_DEG = 286.13;
+export const SUN_POLE_DEC_DEG = 63.87;
+
 const DE405_AU3_D2_TO_KM3_S2 = AU_DE405_KM ** 3 / SECONDS_PER_DAY ** 2;
 /** GM of the Earth-Moon barycentre, au^3/d^2. DE405 header (Standish 1998). */
 const DE405_GM_EMB = 8.997011346712499e-10;

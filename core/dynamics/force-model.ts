@@ -3,11 +3,16 @@ import {
   AU_KM,
   BODIES,
   BODY_INDEX,
+  BODY_RADIUS_KM,
+  DEG_TO_RAD,
   EARTH_J2,
   EARTH_RADIUS_KM,
   GM_KM3_S2,
   type GmSet,
   SPEED_OF_LIGHT_KM_S,
+  SUN_J2,
+  SUN_POLE_DEC_DEG,
+  SUN_POLE_RA_DEG,
 } from '../constants';
 import type { Ephemeris } from '../ephemeris';
 
@@ -31,7 +36,7 @@ const CENTURY_S = 36525 * 86400;
  * Acceleration of a massless object in the field of Sun, planets and Moon.
  *
  * Newtonian point masses; the Sun's relativity to first post-Newtonian order (Schwarzschild,
- * harmonic coordinates); J2 of the Earth about the pole of date; optional A1, A2, A3.
+ * harmonic coordinates); J2 of the Sun, and of the Earth about the pole of date; optional A1, A2, A3.
  * Barycentric ICRF, km, s, TDB. One instance serves one trajectory at a time (it keeps buffers).
  * Source: Newhall, Standish & Williams (1983), A&A 125, 150 (point masses and the post-Newtonian
  * term for one mass); Marsden, Sekanina & Yeomans (1973), AJ 78, 211 (A1, A2, A3); pole of date from
@@ -41,6 +46,8 @@ export class ForceModel {
   private readonly gm: Float64Array;
   private readonly bodies = new Float64Array(36);
   private readonly forces: Float64Array | null;
+  /** 1.5 J2 R² of the Sun, km². */
+  private readonly solarOblateness: number;
   /** Evaluations so far. */
   evaluations = 0;
 
@@ -49,6 +56,7 @@ export class ForceModel {
     options: ForceModelOptions,
   ) {
     this.gm = Float64Array.from(BODIES, (body) => GM_KM3_S2[options.gm][body]);
+    this.solarOblateness = 1.5 * SUN_J2[options.gm] * BODY_RADIUS_KM.Sun ** 2;
     const forces = options.nonGravitational;
     this.forces = forces === null ? null : Float64Array.of(forces.a1, forces.a2, forces.a3);
   }
@@ -112,6 +120,14 @@ export class ForceModel {
     out[at + 3] += along * sx + drag * wx;
     out[at + 4] += along * sy + drag * wy;
     out[at + 5] += along * sz + drag * wz;
+    // Oblateness of the Sun about its fixed pole.
+    const sine = (sx * SUN_POLE_X + sy * SUN_POLE_Y + sz * SUN_POLE_Z) / s;
+    const kj = (this.solarOblateness * gm) / (s2 * s2);
+    const radialJ = (kj * (5 * sine * sine - 1)) / s;
+    const polarJ = 2 * kj * sine;
+    out[at + 3] += radialJ * sx - polarJ * SUN_POLE_X;
+    out[at + 4] += radialJ * sy - polarJ * SUN_POLE_Y;
+    out[at + 5] += radialJ * sz - polarJ * SUN_POLE_Z;
     if (forces === null) return;
     const g = (AU_KM * AU_KM) / s2;
     const hx = sy * wz - sz * wy;
@@ -148,6 +164,9 @@ export class ForceModel {
   }
 }
 
+const SUN_POLE_X = Math.cos(SUN_POLE_DEC_DEG * DEG_TO_RAD) * Math.cos(SUN_POLE_RA_DEG * DEG_TO_RAD);
+const SUN_POLE_Y = Math.cos(SUN_POLE_DEC_DEG * DEG_TO_RAD) * Math.sin(SUN_POLE_RA_DEG * DEG_TO_RAD);
+const SUN_POLE_Z = Math.sin(SUN_POLE_DEC_DEG * DEG_TO_RAD);
 const SUN = BODY_INDEX.Sun * 3;
 const EARTH = BODY_INDEX.Earth * 3;
 

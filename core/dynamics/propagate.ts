@@ -2,7 +2,7 @@ import { DENSE_DOUBLES, Dop853, evaluateDense } from './dop853';
 import type { ForceModel } from './force-model';
 
 /** Relative tolerance of a step: on the distance from the barycentre and on the speed. */
-export const INTEGRATION_TOLERANCE = 1e-13;
+export const INTEGRATION_TOLERANCE = 1e-14;
 
 /** No step may be shorter, s: some thousand roundings of the offset. */
 const SHORTEST_STEP_S = 1e-6;

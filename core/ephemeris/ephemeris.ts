@@ -45,8 +45,6 @@ export class EphemerisFileError extends Error {
 export class Ephemeris {
   /** The packed record by its number; null while its file has not been added. */
   private readonly records: (Float64Array | null)[] = new Array(RECORD_COUNT).fill(null);
-  private readonly t = new Float64Array(16);
-  private readonly u = new Float64Array(16);
 
   /** Takes the bytes of one packed file. */
   addFile(bytes: ArrayBuffer): void {
@@ -125,39 +123,20 @@ export class Ephemeris {
     if (record === null) throw this.missing(base + offset, number);
     // Exact: base and the record's start are whole numbers.
     const seconds = base - (FIRST_RECORD_S + number * RECORD_S) + offset;
-    const { t, u } = this;
     for (let body = 0; body < 11; body++) {
-      const { at, terms, parts } = SERIES[body];
-      const length = RECORD_S / parts;
+      const terms = TERMS[body];
+      const length = RECORD_S / PARTS[body];
       let part = Math.floor(seconds / length);
-      if (part >= parts) part = parts - 1;
-      if (part < 0) part = 0;
-      const x = (2 * (seconds - part * length)) / length - 1;
-      const twice = 2 * x;
-      t[0] = 1;
-      t[1] = x;
-      for (let k = 2; k < terms; k++) t[k] = twice * t[k - 1] - t[k - 2];
-      let from = at + part * terms * 3;
+      if (part >= PARTS[body]) part = PARTS[body] - 1;
+      const from = STARTS[body] + part * terms * 3;
       const to = body * stride;
-      for (let axis = 0; axis < 3; axis++) {
-        let sum = 0;
-        for (let k = terms - 1; k >= 0; k--) sum += record[from + k] * t[k];
-        out[to + axis] = sum;
-        from += terms;
-      }
-      if (stride === 6 || (body === 10 && sunVelocityAt >= 0)) {
-        u[0] = 0;
-        u[1] = 1;
-        for (let k = 2; k < terms; k++) u[k] = twice * u[k - 1] - u[k - 2] + 2 * t[k - 1];
-        const rate = 2 / length;
-        let derivative = at + part * terms * 3;
-        const place = stride === 6 ? to + 3 : sunVelocityAt;
-        for (let axis = 0; axis < 3; axis++) {
-          let sum = 0;
-          for (let k = terms - 1; k > 0; k--) sum += record[derivative + k] * u[k];
-          out[place + axis] = sum * rate;
-          derivative += terms;
-        }
+      const x = (2 * (seconds - part * length)) / length - 1;
+      if (stride === 6) {
+        series(record, from, terms, x, 2 / length, out, to, to + 3);
+      } else if (body === SUN && sunVelocityAt >= 0) {
+        series(record, from, terms, x, 2 / length, out, to, sunVelocityAt);
+      } else {
+        place(record, from, terms, x, out, to);
       }
     }
     // Earth and Moon from their barycentre and the geocentric Moon.
@@ -176,6 +155,77 @@ export class Ephemeris {
       `The ephemeris file for ${isoDate(tdbSeconds)} has not been loaded.`,
     );
   }
+}
+
+/** Layout of the series as typed arrays, for the hot loop. */
+const STARTS = Int32Array.from(SERIES, (series) => series.at);
+const TERMS = Int32Array.from(SERIES, (series) => series.terms);
+const PARTS = Int32Array.from(SERIES, (series) => series.parts);
+const SUN = 10;
+
+/** Chebyshev sums of three components: hot loop, allocates nothing. */
+function place(
+  record: Float64Array,
+  from: number,
+  terms: number,
+  x: number,
+  out: Float64Array,
+  to: number,
+): void {
+  const second = from + terms;
+  const third = second + terms;
+  const twice = 2 * x;
+  let t0 = 1;
+  let t1 = x;
+  let sx = record[from] + record[from + 1] * x;
+  let sy = record[second] + record[second + 1] * x;
+  let sz = record[third] + record[third + 1] * x;
+  for (let k = 2; k < terms; k++) {
+    const t = twice * t1 - t0;
+    t0 = t1;
+    t1 = t;
+    sx += record[from + k] * t;
+    sy += record[second + k] * t;
+    sz += record[third + k] * t;
+  }
+  out[to] = sx;
+  out[to + 1] = sy;
+  out[to + 2] = sz;
+}
+
+/** The same with derivatives (rate = 2 / length of the interval). */
+function series(
+  record: Float64Array,
+  from: number,
+  terms: number,
+  x: number,
+  rate: number,
+  out: Float64Array,
+  to: number,
+  velocityTo: number,
+): void {
+  place(record, from, terms, x, out, to);
+  const second = from + terms;
+  const third = second + terms;
+  const twice = 2 * x;
+  // Derivatives of the polynomials: k times those of the second kind, U(k−1).
+  let u0 = 1;
+  let u1 = twice;
+  let sx = record[from + 1];
+  let sy = record[second + 1];
+  let sz = record[third + 1];
+  for (let k = 2; k < terms; k++) {
+    const d = k * u1;
+    sx += record[from + k] * d;
+    sy += record[second + k] * d;
+    sz += record[third + k] * d;
+    const u = twice * u1 - u0;
+    u0 = u1;
+    u1 = u;
+  }
+  out[velocityTo] = sx * rate;
+  out[velocityTo + 1] = sy * rate;
+  out[velocityTo + 2] = sz * rate;
 }
 
 export const createEphemeris = (): Ephemeris => new Ephemeris();

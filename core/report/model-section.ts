@@ -11,6 +11,7 @@ import {
   OBLIQUITY_J2000_ARCSEC,
   SPEED_OF_LIGHT_KM_S,
   SPHERE_OF_INFLUENCE_KM,
+  SUN_J2,
 } from '../constants';
 import { TARGETS } from '../encounter/targets';
 import { jdFromTdbSeconds } from '../time/convert';
@@ -43,6 +44,7 @@ export function modelSection(facts: ModelFacts): Report['model'] {
     terms: [
       `Newtonian point masses: ${bodies.join(', ')}`,
       'relativity of the Sun, first post-Newtonian order (Schwarzschild)',
+      ...(SUN_J2[facts.gm] > 0 ? ['oblateness J2 of the Sun'] : []),
       'oblateness J2 of the Earth within 10 000 000 km, pole of date',
       ...(facts.nonGravitational
         ? ['non-gravitational A1, A2, A3 with g(r) = (1 au/r)² (Marsden, Sekanina & Yeomans 1973)']
@@ -78,7 +80,7 @@ export function modelSection(facts: ModelFacts): Report['model'] {
     notModelled: [
       'atmospheric drag, lift, ablation and break-up',
       'asteroids other than the object; gravity of the Earth beyond J2, of the Moon beyond a point mass',
-      'relativity of the planets; J2 of the Sun',
+      'relativity of the planets',
       'frame bias between ICRF and EME2000 (0.02″)',
       'light time and aberration: states are geometric',
     ],
