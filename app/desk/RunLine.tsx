@@ -2,17 +2,19 @@ import { useDeskStore } from '../store/context';
 import type { DeskStore, RunState } from '../store/store';
 import { useController } from './controller-context';
 
-/** What the desk is doing: said aloud when it changes; the figure of progress is shown beside it. */
+/** What the desk is doing, with the figure of progress; only what has settled is said aloud. */
 export function RunLine() {
   const controller = useController();
   const run = useDeskStore((state) => state.run);
   const words = useDeskStore(statusInWords);
+  const spoken = useDeskStore(spokenStatus);
   const isRunning = run.status === 'running';
   const canRunAgain = run.status === 'stopped' || run.status === 'failed';
   return (
     <div className="run">
-      <p className="run-words" role="status">
-        {words}
+      <p className="run-words">{words}</p>
+      <p className="only-spoken" role="status">
+        {spoken}
       </p>
       {isRunning && (
         <>
@@ -52,7 +54,7 @@ function statusInWords({ run, reading, report, text }: DeskStore): string {
     case 'stopped':
       return `Stopped at ${percent(run)}`;
     case 'failed':
-      return 'The assessment could not be finished';
+      return 'Could not be done: see the findings';
     case 'idle':
       break;
   }
@@ -63,6 +65,16 @@ function statusInWords({ run, reading, report, text }: DeskStore): string {
     return `${count(reading.questions.length, 'question')} about the case`;
   }
   return 'The case is not complete';
+}
+
+/** Not every keystroke's reading and not every step: the outcome, with the answer. */
+function spokenStatus(state: DeskStore): string {
+  const { run, report } = state;
+  if (run.status === 'reading') return '';
+  if (run.status === 'running') return 'Assessing';
+  const answer = report?.findings.find((finding) => finding.kind === 'answer');
+  if (run.status === 'done' && answer !== undefined) return `Assessed. ${answer.text}`;
+  return statusInWords(state);
 }
 
 function count(n: number, word: string): string {

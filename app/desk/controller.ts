@@ -9,6 +9,8 @@ import { Trajectory } from '../worker/trajectory';
 
 /** How long typing must rest before the text is read, ms. */
 const TYPING_REST_MS = 120;
+/** A case is a short text; a larger file was not meant for the sheet. */
+const LARGEST_FILE_BYTES = 1_000_000;
 /** How many supporting findings a new case puts on the plate by itself. */
 const FINDINGS_ON_PLATE = 3;
 
@@ -28,9 +30,21 @@ export interface ControllerDeps {
 }
 
 /** There is no report of the case on the sheet yet. */
-export class NoReport extends Error {
+class NoReport extends Error {
   readonly code = 'no-report';
   override name = 'NoReport';
+}
+
+/** A file that cannot be a case. */
+class FileTooLarge extends Error {
+  readonly code = 'file-too-large';
+
+  constructor(bytes: number) {
+    super(
+      `The file has ${(bytes / 1e6).toFixed(1)} MB; a case is a text of at most ${LARGEST_FILE_BYTES / 1e6} MB. Drop the file that holds the orbit.`,
+    );
+    this.name = 'FileTooLarge';
+  }
 }
 
 /** What the person can do; every action of the desk goes through here. */
@@ -38,6 +52,7 @@ export interface Controller {
   setText(text: string, source: TextSource): void;
   /** Sets a field by hand; null takes the hand away again. */
   setChoice(field: FieldName, value: string | null): void;
+  /** Takes the text of a file as the case; one that is too large is refused in words. */
   openFile(file: Blob): Promise<void>;
   stop(): void;
   runAgain(): void;
@@ -97,10 +112,7 @@ export function createController(deps: ControllerDeps): Controller {
   function fail(error: unknown): void {
     const message = error instanceof Error ? error.message : String(error);
     const advice = error instanceof WorkerDied ? ' Run it again to start a new worker.' : '';
-    store.setState({
-      run: { status: 'failed', fraction: 0, note: '', error: message + advice },
-      trajectory: shown.trajectory,
-    });
+    store.setState({ run: { ...IDLE_RUN, status: 'failed', error: message + advice } });
   }
 
   async function read(): Promise<void> {
@@ -121,13 +133,18 @@ export function createController(deps: ControllerDeps): Controller {
           plateFindings: desk.plateFindings,
         });
         isNewCase = false;
-        if (desk.clockTdbSeconds !== null) clock.set(desk.clockTdbSeconds);
+        if (desk.clockTdbSeconds !== null) {
+          setClock(desk.clockTdbSeconds);
+          personMovedClock = true;
+        }
         return read();
       }
       store.setState({ reading: result, run: IDLE_RUN });
       if (result.case !== null) await assess(text, result, result.case);
     } catch (error) {
-      if (mine === turn) fail(error);
+      if (mine !== turn) return;
+      store.setState({ trajectory: shown.trajectory });
+      fail(error);
     }
   }
 
@@ -148,9 +165,9 @@ export function createController(deps: ControllerDeps): Controller {
       }
     });
     run = own;
-    const outcome = await own.outcome;
-    if (run !== own) return;
-    run = null;
+    const outcome = await own.outcome.finally(() => {
+      if (run === own) run = null;
+    });
     if (outcome === 'done') store.setState({ run: { ...IDLE_RUN, status: 'done', fraction: 1 } });
   }
 
@@ -193,6 +210,10 @@ export function createController(deps: ControllerDeps): Controller {
       void read();
     },
     async openFile(file) {
+      if (file.size > LARGEST_FILE_BYTES) {
+        fail(new FileTooLarge(file.size));
+        return;
+      }
       controller.setText(await file.text(), 'replaced');
     },
     stop() {

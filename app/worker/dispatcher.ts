@@ -26,13 +26,13 @@ export interface DispatcherDeps<Ephemeris> {
 }
 
 /** An export was asked for before there was anything to write. */
-export class NothingToExport extends Error {
+class NothingToExport extends Error {
   readonly code = 'nothing-to-export';
   override name = 'NothingToExport';
 }
 
 /** An error in the form that crosses between threads. */
-export function toWireError(error: unknown): WireError {
+function toWireError(error: unknown): WireError {
   if (!(error instanceof Error)) {
     return { name: 'Error', message: String(error), code: null, stack: null };
   }

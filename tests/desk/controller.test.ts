@@ -67,7 +67,8 @@ function setUp() {
     clock,
     client,
     now: () => '2026-03-01T00:00:00Z',
-    drawPlate: async (report, trajectory) => new Blob([`${report.fingerprint} ${trajectory.count}`]),
+    drawPlate: async (report, trajectory) =>
+      new Blob([`${report.fingerprint} ${trajectory.count}`]),
     save: (fileName, content) => saved.push({ fileName, content }),
   });
   return { store, clock, controller, reads, runs, saved, asked, state: store.getState };
@@ -173,13 +174,24 @@ describe('reading', () => {
 
   it('restores text, choices, clock and plate findings of a case file', async () => {
     const { controller, state, clock, runs } = setUp();
+    // Even when the clock stands there already.
+    clock.set(4000);
     await controller.openFile(new Blob(['{"a case file"}']));
     await settle();
     expect(state()).toMatchObject({ text: CASE_FILE.text, choices: CASE_FILE.choices });
     runs[0].tell(states(0, 86400));
     runs[0].tell(reported(inventedReport({ findings: [support('other')] })));
-    expect(clock.tdbSeconds).toBe(4000);
+    expect(clock.tdbSeconds).toBe(CASE_FILE.clockTdbSeconds);
     expect(state().plateFindings).toEqual(['moid']);
+  });
+
+  it('refuses a file that is too large to be a case, and keeps the sheet as it is', async () => {
+    const { controller, state, reads } = await finished();
+    await controller.openFile(new Blob([new Uint8Array(1_000_001)]));
+    expect(state()).toMatchObject({ text: 'first', reportIsStale: false });
+    expect(state().run).toMatchObject({ status: 'failed' });
+    expect(state().run.error).toContain('1.0 MB');
+    expect(reads).toEqual(['first']);
   });
 
   it('empties the sheet without an error', async () => {

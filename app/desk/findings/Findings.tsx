@@ -45,7 +45,7 @@ function Failure() {
   if (run.status !== 'failed') return null;
   return (
     <div className="findings-failure" role="alert">
-      <p className="caps">The assessment could not be finished</p>
+      <p className="caps">Could not be done</p>
       <p>{run.error}</p>
     </div>
   );

@@ -12,6 +12,15 @@ export interface LinePointer {
 const SIGNS = { error: '✕', warning: '△', note: '·' } as const;
 const RANK = { error: 2, warning: 1, note: 0 } as const;
 
+/** As in sheet.css. */
+const LINE_HEIGHT_PX = 18;
+
+const topOf = (line: number): number => (line - 1) * LINE_HEIGHT_PX;
+
+function numbersTo(lines: number): string {
+  return Array.from({ length: lines }, (_, index) => index + 1).join('\n');
+}
+
 /** The worst problem of each line. */
 function marksOf(problems: Problem[]): Map<number, Problem['severity']> {
   const marks = new Map<number, Problem['severity']>();
@@ -47,8 +56,7 @@ export function PasteArea({ onReady }: { onReady(pointer: LinePointer): void }) 
         const end = element.value.indexOf('\n', start);
         element.focus();
         element.setSelectionRange(start, end === -1 ? element.value.length : end);
-        const lineHeight = element.scrollHeight / element.value.split('\n').length;
-        element.scrollTop = (line - 1) * lineHeight - element.clientHeight / 2;
+        element.scrollTop = topOf(line) - element.clientHeight / 2;
       },
     });
   }, [onReady]);
@@ -70,15 +78,12 @@ export function PasteArea({ onReady }: { onReady(pointer: LinePointer): void }) 
     <div className="paste">
       <div className="paste-gutter" aria-hidden="true">
         <div ref={gutter} className="paste-lines">
-          {Array.from({ length: lines }, (_, index) => {
-            const mark = marks.get(index + 1);
-            return (
-              // biome-ignore lint/suspicious/noArrayIndexKey: a line is its number
-              <span key={index} className={mark === undefined ? undefined : `paste-${mark}`}>
-                {mark === undefined ? '' : SIGNS[mark]} {index + 1}
-              </span>
-            );
-          })}
+          <div className="paste-numbers">{numbersTo(lines)}</div>
+          {[...marks].map(([line, mark]) => (
+            <span key={line} className={`paste-mark paste-${mark}`} style={{ top: topOf(line) }}>
+              {SIGNS[mark]} {line}
+            </span>
+          ))}
         </div>
       </div>
       <textarea
