@@ -9,8 +9,26 @@ export default defineConfig({
   server: { port: 5173 },
   preview: { port: 4173 },
   test: {
-    include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'],
     testTimeout: 60_000,
     hookTimeout: 120_000,
+    projects: [
+      {
+        extends: true,
+        test: {
+          name: 'code',
+          include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'],
+          exclude: ['tests/desk/browser/**'],
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'page',
+          include: ['tests/desk/browser/**/*.test.ts'],
+          globalSetup: 'tests/desk/browser/serve.ts',
+          fileParallelism: false,
+        },
+      },
+    ],
   },
 });

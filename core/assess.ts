@@ -58,6 +58,8 @@ const ASKED_RULE = 'As asked.';
 /** The orbit before and after a pass is taken this far from it, or as far as the span allows. */
 const ORBIT_CHANGE_S = 60 * DAY;
 const LEAST_ORBIT_CHANGE_S = 5 * DAY;
+/** How far the classical chain looks past the end on a surface. */
+const PAST_SURFACE_S = 30 * DAY;
 /** A two-body approach this far in time from the n-body one is not the same pass. */
 const SAME_PASS_S = 10 * DAY;
 
@@ -99,7 +101,11 @@ export async function runAssessment(
     gmEarthMoon: gm.Earth + gm.Moon,
     gmEarth: gm.Earth,
     earthOffset: (dtS) => earthFromBarycentre(ephemeris, withinCoverage(epoch + dtS)),
-    spanS: [from - epoch, to - epoch],
+    // The two-body orbits know of no surface: they run on past it to their own closest approach.
+    spanS: [
+      from - epoch,
+      withinCoverage(forward.surface === null ? to : to + PAST_SURFACE_S) - epoch,
+    ],
     sphereOfInfluenceKm: SPHERE_OF_INFLUENCE_KM,
     entryRadiusKm: ENTRY_RADIUS_KM,
   });
