@@ -1,84 +1,23 @@
-import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import type { Epoch, OrbitCase } from '../../core/case/types';
-import { AU_KM, JD_J2000, SECONDS_PER_DAY } from '../../core/constants';
+import { AU_KM, SECONDS_PER_DAY } from '../../core/constants';
 import type { Report } from '../../core/report/report';
-import { assessCase, caseOf } from '../helpers/assess';
+import { assessCase } from '../helpers/assess';
+import { type ApproachRow, publishedCase, secondsOfJd, smallBodyRecord } from '../helpers/record';
 
 /**
  * The open small-body record: elements, A2 and close approaches as published (source in the file's
  * own header). Its approaches were computed by its publisher with DE431 and 16 asteroids; ours run on
  * DE405 with the GM of DE431, so the two ephemerides' difference is part of every tolerance.
  */
-interface Record {
-  orbit: {
-    epoch: string;
-    elements: { label: string; value: string }[];
-    model_pars: { name: string; value: string }[];
-  };
-  ca_data: {
-    jd: string;
-    body: string;
-    dist: string;
-    dist_min: string;
-    dist_max: string;
-    v_rel: string;
-    v_inf: string;
-    sigma_t: string;
-  }[];
-}
-
-const record: Record = JSON.parse(
-  readFileSync(new URL('data/apophis.json', import.meta.url), 'utf8'),
-);
-
-/** A Julian date written in decimal, split without losing digits. */
-function epochOfJd(text: string): Epoch {
-  const [whole, fraction = '0'] = text.split('.');
-  const half = Number(`0.${fraction}`) - 0.5;
-  const mjd = Number(whole) - 2400000 + (half >= 0 ? 0 : -1);
-  return { scale: 'TDB', mjd, secondOfDay: (half >= 0 ? half : half + 1) * SECONDS_PER_DAY };
-}
-
-const secondsOfJd = (text: string): number => {
-  const epoch = epochOfJd(text);
-  return (epoch.mjd + 2400000.5 - JD_J2000) * SECONDS_PER_DAY + epoch.secondOfDay;
-};
-
-const element = (label: string): string => {
-  const found = record.orbit.elements.find((item) => item.label === label);
-  if (found === undefined) throw new Error(`no element ${label}`);
-  return found.value;
-};
-
-function publishedCase(fromJd: string, toJd: string): OrbitCase {
-  const a2 = record.orbit.model_pars.find((item) => item.name === 'A2');
-  return caseOf({
-    epoch: epochOfJd(record.orbit.epoch),
-    axes: 'EclipticJ2000',
-    state: {
-      kind: 'elements',
-      periapsisKm: Number(element('q')) * AU_KM,
-      eccentricity: Number(element('e')),
-      inclinationDeg: Number(element('i')),
-      nodeDeg: Number(element('node')),
-      argumentOfPeriapsisDeg: Number(element('peri')),
-      phase: { kind: 'periapsis-time', periapsisEpoch: epochOfJd(element('tp')) },
-    },
-    nonGravitational: { a1AuD2: 0, a2AuD2: Number(a2?.value), a3AuD2: 0 },
-    span: { fromTdbSeconds: secondsOfJd(fromJd), toTdbSeconds: secondsOfJd(toJd) },
-  });
-}
-
 interface Pair {
-  row: Record['ca_data'][number];
+  row: ApproachRow;
   distanceMissKm: number;
   timeMissS: number;
   excessMissKmS: number;
 }
 
 /** Each published row with the approach nearest to it in time; a row with none fails the test. */
-function compare(report: Report, rows: Record['ca_data']): Pair[] {
+function compare(report: Report, rows: ApproachRow[]): Pair[] {
   return rows.map((row) => {
     const at = secondsOfJd(row.jd);
     const ours = report.approaches.find(
@@ -98,8 +37,8 @@ const worst = (pairs: Pair[], of: (pair: Pair) => number): number => Math.max(..
 
 describe('published approaches of the open small-body record', async () => {
   const { report } = await assessCase(publishedCase('2436934.5', '2473459.5'));
-  const upTo2029 = record.ca_data.filter((row) => Number(row.jd) < 2462241.5);
-  const later = record.ca_data.filter((row) => Number(row.jd) >= 2462241.5);
+  const upTo2029 = smallBodyRecord.ca_data.filter((row) => Number(row.jd) < 2462241.5);
+  const later = smallBodyRecord.ca_data.filter((row) => Number(row.jd) >= 2462241.5);
   const before = compare(report, upTo2029);
 
   it('are all there: 40 rows from 1964 to 2029-04-14, 3 after it', () => {

@@ -1,0 +1,3 @@
+import { benchPropagation } from './propagation';
+
+await benchPropagation();
