@@ -1,0 +1,57 @@
+import { sha256 } from '@noble/hashes/sha2.js';
+import { bytesToHex, utf8ToBytes } from '@noble/hashes/utils.js';
+import type { Report } from './report';
+
+/** A number that is not finite was about to enter a report. */
+export class NonFiniteError extends Error {
+  readonly code = 'non-finite';
+  override name = 'NonFiniteError';
+  constructor(path: string, value: number) {
+    super(
+      `The figure ${path} came out as ${value}; no report is made with it. The case's state leads where the model cannot follow.`,
+    );
+  }
+}
+
+/**
+ * JSON with sorted keys and no spaces: the form the fingerprint is taken of.
+ *
+ * @param value plain data; keys whose value is undefined are left out
+ * @throws      NonFiniteError naming the path of a NaN or an infinity
+ * Numbers are written as ECMAScript writes them: the shortest decimal that reads back the same.
+ */
+export function canonicalJson(value: unknown, path = 'report'): string {
+  if (typeof value === 'number') {
+    if (!Number.isFinite(value)) throw new NonFiniteError(path, value);
+    return JSON.stringify(value);
+  }
+  if (Array.isArray(value)) {
+    return `[${value.map((item, i) => canonicalJson(item, `${path}[${i}]`)).join(',')}]`;
+  }
+  if (typeof value === 'object' && value !== null) {
+    const members = Object.entries(value)
+      .filter(([, item]) => item !== undefined)
+      .sort(([a], [b]) => (a < b ? -1 : 1))
+      .map(([key, item]) => `${JSON.stringify(key)}:${canonicalJson(item, `${path}.${key}`)}`);
+    return `{${members.join(',')}}`;
+  }
+  return JSON.stringify(value);
+}
+
+/** SHA-256, hex, of the canonical JSON of a report without `madeAt` and `fingerprint`. */
+export function fingerprintOf(report: Omit<Report, 'fingerprint'>): string {
+  const { madeAt: _, ...rest } = report;
+  const content = Object.fromEntries(Object.entries(rest).filter(([key]) => key !== 'fingerprint'));
+  return bytesToHex(sha256(utf8ToBytes(canonicalJson(content))));
+}
+
+/** The draft with its fingerprint. */
+export function sealReport(draft: Omit<Report, 'fingerprint'>): Report {
+  return { ...draft, fingerprint: fingerprintOf(draft) };
+}
+
+/** The report as the file that is handed over: indented, with a newline at the end. */
+export function reportJsonText(report: Report): string {
+  canonicalJson(report);
+  return `${JSON.stringify(report, null, 2)}\n`;
+}
