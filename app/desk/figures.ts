@@ -16,8 +16,10 @@ export function grouped(value: number, decimals = 0): string {
   return value < 0 && /[1-9]/.test(digits) ? MINUS + digits : digits;
 }
 
+/** The unit after a thin space; the degree sign close up. */
 export function withUnit(figure: string, unit: string): string {
-  return unit === '' ? figure : figure + THIN_SPACE + unit;
+  if (unit === '' || unit === '°') return figure + unit;
+  return figure + THIN_SPACE + unit;
 }
 
 /** A constant or a tolerance as it is: no digit is dropped. */

@@ -18,7 +18,8 @@ describe('figures', () => {
     expect(grouped(value, decimals)).toBe(text);
   });
 
-  it('puts a unit after a thin space and nothing after a bare number', () => {
+  it('puts a unit after a thin space, a degree sign close up, nothing after a bare number', () => {
+    expect(withUnit('5', '°')).toBe('5°');
     expect(withUnit('5', 'km')).toBe('5\u2009km');
     expect(withUnit('5', '')).toBe('5');
   });

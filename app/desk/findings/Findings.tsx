@@ -73,13 +73,10 @@ function Found({ report }: { report: Report }) {
             <span className="soft"> · {report.case.objectId}</span>
           )}
         </p>
-        {report.case.invented && (
-          <p className="findings-invented">An invented object on an invented approach.</p>
-        )}
         <ul className="findings-list">{of('answer')}</ul>
+        <Cautions report={report} />
         <ul className="findings-list">{of('support')}</ul>
         <ul className="findings-list">{of('caution')}</ul>
-        <Cautions report={report} />
         <ApproachesTable report={report} />
         {principal !== null && <CrossingsTable approach={principal} />}
         {principal?.entry !== undefined && <EntryTable entry={principal.entry} />}
