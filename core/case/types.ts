@@ -139,6 +139,14 @@ export interface Field {
   note: string | null;
 }
 
+/** What the desk keeps beside the case: goes into a case file. */
+export interface DeskContent {
+  text: string;
+  choices: Choices;
+  clockTdbSeconds: number | null;
+  plateFindings: string[];
+}
+
 /** Something wrong or worth knowing, beside its line. */
 export interface Problem {
   severity: 'error' | 'warning' | 'note';

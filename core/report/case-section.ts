@@ -26,7 +26,7 @@ export function caseSection(
       notes: reading.problems.map((problem) => problem.message),
     },
     asAssumed: reading.fields.flatMap(({ field, value, origin, note }) =>
-      origin === 'read' ? [] : [{ field, value, origin, note: note ?? '' }],
+      origin === 'read' || value === '' ? [] : [{ field, value, origin, note: note ?? '' }],
     ),
     normalised: {
       epochJdTdb: jdFromTdbSeconds(normalised.epochTdbSeconds),

@@ -1,0 +1,77 @@
+import type { FieldName } from './types';
+
+/** Labels that people write before a value, longest spoken forms first. */
+
+export interface Label {
+  /** Null: a known value that is not used (mean motion, aphelion, period…). */
+  field: FieldName | null;
+  /** What stands behind it. */
+  kind: 'number' | 'epoch';
+  pattern: RegExp;
+}
+
+/** A unit in brackets, then "=" or ":". */
+const SIGN = String.raw`\s*(?:[\[(][^\])]{0,12}[\])])?\s*[:=]\s*`;
+/** A label at the start of a line, or behind a comma, may stand without a sign. */
+const BARE = String.raw`(?<=^[\s#*]*|[,;\t]\s*)`;
+
+function label(
+  field: FieldName | null,
+  words: string,
+  {
+    bare = false,
+    kind = 'number',
+    flags = 'giu',
+  }: { bare?: boolean; kind?: Label['kind']; flags?: string } = {},
+): Label {
+  const signed = String.raw`(?<![\p{L}\d_.])(?:${words})${SIGN}`;
+  const unsigned = String.raw`${BARE}(?:${words})\s*(?:[\[(][^\])]{0,12}[\])])?\s+(?=[+\-\u2212.\d])`;
+  return {
+    field,
+    kind,
+    pattern: new RegExp(bare ? `${signed}|${unsigned}` : signed, flags),
+  };
+}
+
+const time = String.raw`time of (?:periapsis|perihelion|perigee)(?: passage)?|(?:periapsis|perihelion) (?:time|date|passage)|t_?p(?:eri)?`;
+
+export const LABELS: readonly Label[] = [
+  label('periapsisTime', time, { kind: 'epoch', bare: true }),
+  label('periapsisTime', 'T', { kind: 'epoch', flags: 'gu' }),
+  label('vx', String.raw`v_?x|x_?dot|dx\/dt|velocity[ _]x|ẋ`, { bare: true }),
+  label('vy', String.raw`v_?y|y_?dot|dy\/dt|velocity[ _]y|ẏ`, { bare: true }),
+  label('vz', String.raw`v_?z|z_?dot|dz\/dt|velocity[ _]z|ż`, { bare: true }),
+  label('x', String.raw`r_?x|position[ _]x|pos_?x|x`, { bare: true }),
+  label('y', String.raw`r_?y|position[ _]y|pos_?y|y`, { bare: true }),
+  label('z', String.raw`r_?z|position[ _]z|pos_?z|z`, { bare: true }),
+  label('semiMajorAxis', String.raw`semi-?\s?major axis|sma|a`, { bare: true }),
+  label('periapsisDistance', String.raw`(?:perihelion|periapsis|perigee) distance|qr`, {
+    bare: true,
+  }),
+  label('periapsisDistance', 'q', { bare: true, flags: 'gu' }),
+  label('eccentricity', 'eccentricity|ecc?|e', { bare: true }),
+  label('inclination', 'inclination|incl?|i|in', { bare: true }),
+  label(
+    'node',
+    String.raw`(?:longitude|long\.?) of (?:the )?(?:ascending )?node|(?:ascending |asc\.? )?node|raan|lan|om|Ω`,
+    { bare: true },
+  ),
+  label(
+    'argumentOfPeriapsis',
+    String.raw`(?:argument|arg\.?) of (?:periapsis|perihelion|perigee|pericent(?:er|re))|arg_?p(?:eri)?|aop|peri|w|ω`,
+    { bare: true },
+  ),
+  label('meanAnomaly', 'mean anomaly|m_?0?|ma', { bare: true }),
+  label('trueAnomaly', 'true anomaly|ta|nu|ν|f', { bare: true }),
+  label(null, 'mean motion|n|aphelion distance|ad|period|pr', { bare: true }),
+  label(null, 'Q|P|LT|RG|RR', { flags: 'gu' }),
+  label('a1', 'a1', { bare: true }),
+  label('a2', 'a2', { bare: true }),
+  label('a3', 'a3', { bare: true }),
+  label('absoluteMagnitude', 'absolute magnitude|H', { flags: 'gu', bare: true }),
+  label('slopeParameter', 'slope parameter|G', { flags: 'gu', bare: true }),
+  label('diameter', String.raw`diameter(?:_m)?`, { bare: true }),
+  label('albedo', 'albedo', { bare: true }),
+  label('density', String.raw`density(?:_kg_m3)?`, { bare: true }),
+  label('strength', String.raw`strength(?:_pa)?`, { bare: true }),
+];
