@@ -18,6 +18,7 @@ import { integrateLeg, type Leg, type LegHost, LONGEST_STEP_S, stateInLeg } from
 import type { EncounterEvent } from './encounter/scan';
 import { EPHEMERIS_COVERAGE, type Ephemeris, loadEphemeris } from './ephemeris';
 import type { AssessHost, AssessInput } from './events';
+import { icrfToEcliptic } from './frames/ecliptic';
 import { add, scale, subtract, type Vec3, vec3 } from './math/vector';
 import { type ClassicalEncounter, classicalEncounter } from './orbit/classical';
 import { elementsFromState } from './orbit/elements';
@@ -287,7 +288,11 @@ function orbitChange(
       if (!legs.some((leg) => stateInLeg(leg, tdbSeconds, state))) continue;
       const sun = bodyState(ephemeris, BODY_INDEX.Sun, tdbSeconds);
       return elementsSection(
-        elementsFromState(subtract(vec3(state), sun.r), subtract(vec3(state, 3), sun.v), gmSun),
+        elementsFromState(
+          icrfToEcliptic(subtract(vec3(state), sun.r)),
+          icrfToEcliptic(subtract(vec3(state, 3), sun.v)),
+          gmSun,
+        ),
       );
     }
     return null;

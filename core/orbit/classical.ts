@@ -1,4 +1,5 @@
 import { AU_KM, SECONDS_PER_DAY } from '../constants';
+import { icrfToEcliptic } from '../frames/ecliptic';
 import { findRoot } from '../math/roots';
 import { dot, norm, subtract, type Vec3 } from '../math/vector';
 import { type Elements, elementsFromState } from './elements';
@@ -18,7 +19,7 @@ interface State {
 }
 
 export interface ClassicalInput {
-  /** Heliocentric states at the epoch, km and km/s, one set of axes. */
+  /** Heliocentric states at the epoch, km and km/s, ICRF axes. */
   object: State;
   /** Of the Earth–Moon barycentre. */
   earth: State;
@@ -35,6 +36,7 @@ export interface ClassicalInput {
 
 /** Times are seconds after the epoch. */
 export interface ClassicalEncounter {
+  /** On the ecliptic and equinox of J2000. */
   objectElements: Elements;
   earthElements: Elements;
   moid: Moid;
@@ -71,8 +73,10 @@ const TIME_TOLERANCE_S = 1e-3;
  */
 export function classicalEncounter(input: ClassicalInput): ClassicalEncounter {
   const { object, earth, gmSun, gmEarthMoon } = input;
-  const objectElements = elementsFromState(object.r, object.v, gmSun);
-  const earthElements = elementsFromState(earth.r, earth.v, gmSun + gmEarthMoon);
+  const elements = ({ r, v }: State, gm: number): Elements =>
+    elementsFromState(icrfToEcliptic(r), icrfToEcliptic(v), gm);
+  const objectElements = elements(object, gmSun);
+  const earthElements = elements(earth, gmSun + gmEarthMoon);
   const relative = (dtS: number): State => {
     const a = propagateTwoBody(object.r, object.v, gmSun, dtS);
     const b = propagateTwoBody(earth.r, earth.v, gmSun + gmEarthMoon, dtS);

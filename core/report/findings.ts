@@ -84,7 +84,8 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
     (item) => item.body === 'Earth' && item.outcome !== 'pass',
   );
   const caution = reachesAir ? CIVIL_PROTECTION_CAUTION : null;
-  const answer = main === null ? nothingFound(draft) : answerOf(main);
+  const moon = main === null ? null : nearMoon(draft, main);
+  const answer = main === null ? nothingFound(draft) : answerOf(main, moon);
   const findings = [
     { ...answer, kind: 'answer' as const, caution },
     ...(main === null
@@ -96,7 +97,7 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
           focusingFinding(main),
           classicalFinding(draft, main),
           targetPlaneFinding(main),
-          moonFinding(draft, main),
+          moon === null ? null : moonFinding(moon),
           orbitFinding(main),
         ]),
     moidFinding(draft),
@@ -128,7 +129,7 @@ const radii = (approach: Approach): string => {
   return approach.body === 'Moon' ? `${n} lunar radii` : `${n} of its radii`;
 };
 
-function answerOf(approach: Approach): Finding {
+function answerOf(approach: Approach, moon: Approach | null): Finding {
   const { body, distanceKm, tdbSeconds, entry, surfaceImpact } = approach;
   const figures = [km('distance from the centre', distanceKm), kmS('speed', approach.speedKmS)];
   if (approach.outcome === 'impact') {
@@ -166,9 +167,13 @@ function answerOf(approach: Approach): Finding {
     body === 'Earth' && distanceKm < 50000
       ? `, ${formatKm(distanceKm - EARTH_RADIUS_KM)} above the surface`
       : '';
+  const moonToo =
+    moon === null || moon.distanceRadii > NEAR_MOON_RADII
+      ? ''
+      : ` It comes within ${formatKm(moon.distanceKm)} of the Moon’s centre, ${radii(moon)}, on ${formatMoment(moon.tdbSeconds)}.`;
   return finding(
     'answer',
-    `Passes ${formatKm(distanceKm)} from ${CENTRES[body]}, ${radii(approach)}${height}, on ${formatMoment(tdbSeconds)}.`,
+    `Passes ${formatKm(distanceKm)} from ${CENTRES[body]}, ${radii(approach)}${height}, on ${formatMoment(tdbSeconds)}.${moonToo}`,
     figures,
     N_BODY,
     tdbSeconds,
@@ -241,7 +246,10 @@ const BOUNDARY_WORDS: Record<Crossing['boundary'], string> = {
 
 function crossingsFinding(main: Approach): Finding | null {
   const inward = main.crossings.filter(
-    (item) => item.direction === 'in' && item.boundary !== 'entry-sphere',
+    (item) =>
+      item.direction === 'in' &&
+      item.boundary !== 'entry-sphere' &&
+      item.tdbSeconds <= main.tdbSeconds,
   );
   if (main.body !== 'Earth' || inward.length === 0) return null;
   const last = inward[inward.length - 1];
@@ -251,10 +259,14 @@ function crossingsFinding(main: Approach): Finding | null {
     out === undefined
       ? ''
       : `; it leaves ${BOUNDARY_WORDS[out.boundary]} on ${formatMoment(out.tdbSeconds)}`;
+  const reaches: Partial<Record<Crossing['boundary'], string>> = {
+    ground: 'would reach the ground, were there no air,',
+    'entry-interface': 'reaches the entry interface',
+  };
   const deepest =
     last === first
       ? ''
-      : ` and comes inside ${BOUNDARY_WORDS[last.boundary]} ${formatDuration(last.tdbSeconds - first.tdbSeconds)} later`;
+      : ` and ${reaches[last.boundary] ?? `comes inside ${BOUNDARY_WORDS[last.boundary]}`} ${formatDuration(last.tdbSeconds - first.tdbSeconds)} later`;
   return finding(
     'crossings',
     `It enters ${BOUNDARY_WORDS[first.boundary]} on ${formatMoment(first.tdbSeconds)}${deepest}${leaves}.`,
@@ -343,14 +355,24 @@ function targetPlaneFinding(main: Approach): Finding | null {
   );
 }
 
-function moonFinding(draft: FindingsDraft, main: Approach): Finding | null {
+/** A pass of the Moon this near belongs to the answer, lunar radii. */
+const NEAR_MOON_RADII = 10;
+/** Approaches of the Moon this close in time belong to a pass of the Earth, s. */
+const SAME_PASS_S = 5 * 86400;
+
+/** The nearest pass of the Moon that goes with a pass of the Earth. */
+function nearMoon(draft: FindingsDraft, main: Approach): Approach | null {
   if (main.body !== 'Earth') return null;
-  const near = draft.approaches
-    .filter(
-      (item) => item.body === 'Moon' && Math.abs(item.tdbSeconds - main.tdbSeconds) < 5 * 86400,
-    )
-    .sort((a, b) => a.distanceKm - b.distanceKm)[0];
-  if (near === undefined) return null;
+  return (
+    draft.approaches
+      .filter(
+        (item) => item.body === 'Moon' && Math.abs(item.tdbSeconds - main.tdbSeconds) < SAME_PASS_S,
+      )
+      .sort((a, b) => a.distanceKm - b.distanceKm)[0] ?? null
+  );
+}
+
+function moonFinding(near: Approach): Finding {
   return finding(
     'moon',
     `It passes ${formatKm(near.distanceKm)} from the Moon’s centre, ${radii(near)}, on ${formatMoment(near.tdbSeconds)}.`,
@@ -411,7 +433,7 @@ function othersFinding(draft: FindingsDraft, main: Approach | null): Finding | n
       !(
         item.body === 'Moon' &&
         main !== null &&
-        Math.abs(item.tdbSeconds - main.tdbSeconds) < 5 * 86400
+        Math.abs(item.tdbSeconds - main.tdbSeconds) < SAME_PASS_S
       ),
   );
   if (others.length === 0) return null;

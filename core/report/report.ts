@@ -25,6 +25,7 @@ export const BOUNDARIES = [
 
 const bodyName = v.picklist(['Earth', 'Moon', 'Venus', 'Mars', 'Mercury', 'Jupiter']);
 
+/** Heliocentric, on the ecliptic and equinox of J2000. */
 const elements = v.object({
   semiMajorAxisKm: v.nullable(finite),
   semiMajorAxisAu: v.nullable(finite),
