@@ -106,7 +106,7 @@ async function main(): Promise<void> {
   );
   const samples = trajectory.samples();
   if (values.oem !== undefined) await writeFile(values.oem, writeOem(report, samples));
-  if (values.csv !== undefined) await writeFile(values.csv, writeEphemerisCsv(report, samples));
+  if (values.csv !== undefined) await writeFile(values.csv, writeEphemerisCsv(samples));
   process.stdout.write(reportJsonText(report));
 }
 

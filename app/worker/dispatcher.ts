@@ -9,7 +9,7 @@ import { Trajectory } from './trajectory';
 export interface Writers {
   reportJsonText(report: Report): string;
   writeOem(report: Report, samples: Float64Array): string;
-  writeEphemerisCsv(report: Report, samples: Float64Array): string;
+  writeEphemerisCsv(samples: Float64Array): string;
   writeCaseFile(orbit: OrbitCase, desk: DeskState): string;
 }
 
@@ -137,7 +137,7 @@ export function createDispatcher<Ephemeris>(
         return {
           fileName: `${stem}-ephemeris.csv`,
           mediaType: 'text/csv',
-          text: deps.writers.writeEphemerisCsv(report, samples),
+          text: deps.writers.writeEphemerisCsv(samples),
         };
     }
   }

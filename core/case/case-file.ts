@@ -115,7 +115,7 @@ export function parseCaseFile(
 }
 
 /** What a case file says of the desk; null for any other text, and for a file without a text. */
-export function readCaseFileDesk(text: string): DeskContent | null {
+export function readDesk(text: string): DeskContent | null {
   if (!looksLikeCaseFile(text)) return null;
   const { file } = parseCaseFile(text);
   if (file === null) return null;

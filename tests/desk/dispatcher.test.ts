@@ -28,7 +28,7 @@ function fakeDeps(changes: Partial<Deps> = {}): Omit<Deps, 'post'> {
       reportJsonText: (report) => `json ${report.fingerprint} ${report.madeAt}`,
       writeOem: (_report, samples) =>
         `oem ${[0, 1, 2, 3].map((row) => samples[row * SAMPLE.stride]).join(' ')}`,
-      writeEphemerisCsv: (_report, samples) => `csv ${samples.length / SAMPLE.stride}`,
+      writeEphemerisCsv: (samples) => `csv ${samples.length / SAMPLE.stride}`,
       writeCaseFile: (orbit, desk) => `case ${orbit.name} ${desk.clockTdbSeconds}`,
     },
     ephemeris: 'the ephemeris',
