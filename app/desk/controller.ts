@@ -4,7 +4,7 @@ import type { Clock } from '../store/clock';
 import { type DeskStoreApi, IDLE_RUN } from '../store/store';
 import { type Assessment, type WorkerClient, WorkerDied } from '../worker/client';
 import { fileStem } from '../worker/file-name';
-import type { ExportKind } from '../worker/messages';
+import type { DeskState, ExportKind } from '../worker/messages';
 import { Trajectory } from '../worker/trajectory';
 
 /** How long typing must rest before the text is read, ms. */
@@ -115,6 +115,16 @@ export function createController(deps: ControllerDeps): Controller {
     store.setState({ run: { ...IDLE_RUN, status: 'failed', error: message + advice } });
   }
 
+  /** Takes what a case file says of the desk; a file without a text keeps its own as the text. */
+  function restore(desk: DeskState): void {
+    const { text, choices, clockTdbSeconds, plateFindings } = desk;
+    store.setState({ choices, plateFindings, ...(text === '' ? {} : { text }) });
+    isNewCase = false;
+    if (clockTdbSeconds === null) return;
+    setClock(clockTdbSeconds);
+    personMovedClock = true;
+  }
+
   async function read(): Promise<void> {
     const mine = turn;
     const { text, choices } = store.getState();
@@ -126,18 +136,9 @@ export function createController(deps: ControllerDeps): Controller {
       const answer = await client.read(text, choices);
       if (mine !== turn) return;
       const { desk, result } = answer;
-      if (desk !== null && desk.text !== '' && desk.text !== text) {
-        store.setState({
-          text: desk.text,
-          choices: desk.choices,
-          plateFindings: desk.plateFindings,
-        });
-        isNewCase = false;
-        if (desk.clockTdbSeconds !== null) {
-          setClock(desk.clockTdbSeconds);
-          personMovedClock = true;
-        }
-        return read();
+      if (desk !== null && isNewCase) {
+        restore(desk);
+        if (desk.text !== '') return read();
       }
       store.setState({ reading: result, run: IDLE_RUN });
       if (result.case !== null) await assess(text, result, result.case);
