@@ -53,14 +53,17 @@ export const LABELS: readonly Label[] = [
   label('inclination', 'inclination|incl?|i|in', { bare: true }),
   label(
     'node',
-    String.raw`(?:longitude|long\.?) of (?:the )?(?:ascending )?node|(?:ascending |asc\.? )?node|raan|lan|om|Ω`,
+    String.raw`(?:longitude|long\.?) of (?:the )?(?:ascending )?node|(?:ascending |asc\.? )?node|raan|lan|om`,
     { bare: true },
   ),
   label(
     'argumentOfPeriapsis',
-    String.raw`(?:argument|arg\.?) of (?:periapsis|perihelion|perigee|pericent(?:er|re))|arg_?p(?:eri)?|aop|peri|w|ω`,
+    String.raw`(?:argument|arg\.?) of (?:periapsis|perihelion|perigee|pericent(?:er|re))|arg_?p(?:eri)?|aop|peri|w`,
     { bare: true },
   ),
+  // Apart from the others: without regard to case Ω and ω are one letter.
+  label('node', 'Ω', { bare: true, flags: 'gu' }),
+  label('argumentOfPeriapsis', 'ω', { bare: true, flags: 'gu' }),
   label('meanAnomaly', 'mean anomaly|m_?0?|ma', { bare: true }),
   label('trueAnomaly', 'true anomaly|ta|nu|ν|f', { bare: true }),
   label(null, 'mean motion|n|aphelion distance|ad|period|pr', { bare: true }),

@@ -8,7 +8,7 @@ export type NumberFormat = 'point' | 'comma';
 
 /** A run of digits with points and commas between them, a sign and an exponent. */
 export const NUMBER_TOKEN =
-  /(?<![\p{L}\d_.,])[+\-\u2212\u2013]?(?:\d[\d.,\u2009\u202f\u00a0'’_]*|[.,]\d[\d]*)(?:[eEdD][+\-\u2212]?\d+)?(?![\p{L}_])/gu;
+  /(?:(?<![\p{L}_])[+\-\u2212\u2013]|(?<![\p{L}\d_]|\p{L}[-\u2212]))(?:\d[\d.,\u2009\u202f\u00a0'’_]*|[.,]\d+)(?:[eEdD][+\-\u2212]?\d+)?(?![\p{L}\d_])/gu;
 
 const GROUPED_BY_COMMAS = /^[+-]?[1-9]\d{0,2}(?:,\d{3})+(?:\.\d*)?(?:e[+-]?\d+)?$/i;
 const GROUPED_BY_POINTS = /^[+-]?[1-9]\d{0,2}(?:\.\d{3})+(?:,\d*)?(?:e[+-]?\d+)?$/i;
