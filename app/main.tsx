@@ -1,3 +1,5 @@
+import './theme/fonts.css';
+import './theme/base.css';
 import { StrictMode, useLayoutEffect } from 'react';
 import { createRoot } from 'react-dom/client';
 import { type Controller, createController } from './desk/controller';
@@ -10,8 +12,6 @@ import { createDeskStore } from './store/store';
 import { paletteOf, usePalette } from './theme/palette';
 import { applyTheme, NIGHT } from './theme/tokens';
 import { createWorkerClient, openWorkerPort } from './worker/client';
-import './theme/fonts.css';
-import './theme/base.css';
 
 /** The worker starts before anything is drawn, and the first demo runs while the page is laid out. */
 const client = createWorkerClient(openWorkerPort);

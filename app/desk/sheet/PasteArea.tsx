@@ -1,5 +1,5 @@
 import { type ClipboardEvent, useEffect, useRef } from 'react';
-import type { Problem } from '../../../core/case/types';
+import type { Problem, ReadResult } from '../../../core/case/types';
 import { useDeskStore } from '../../store/context';
 import { useController } from '../controller-context';
 import { DEMOS } from '../demos';
@@ -9,8 +9,10 @@ export interface LinePointer {
   select(line: number): void;
 }
 
-const SIGNS = { error: '✕', warning: '△', note: '·' } as const;
-const RANK = { error: 2, warning: 1, note: 0 } as const;
+type Mark = Problem['severity'] | 'question';
+
+const SIGNS: Record<Mark, string> = { error: '✕', question: '?', warning: '△', note: '·' };
+const RANK: Record<Mark, number> = { error: 3, question: 2, warning: 1, note: 0 };
 
 /** As in sheet.css. */
 const LINE_HEIGHT_PX = 18;
@@ -21,14 +23,16 @@ function numbersTo(lines: number): string {
   return Array.from({ length: lines }, (_, index) => index + 1).join('\n');
 }
 
-/** The worst problem of each line. */
-function marksOf(problems: Problem[]): Map<number, Problem['severity']> {
-  const marks = new Map<number, Problem['severity']>();
-  for (const { line, severity } of problems) {
-    if (line === null) continue;
+/** The gravest mark of each line. */
+function marksOf(reading: ReadResult | null): Map<number, Mark> {
+  const marks = new Map<number, Mark>();
+  const put = (line: number | null, mark: Mark) => {
+    if (line === null) return;
     const known = marks.get(line);
-    if (known === undefined || RANK[severity] > RANK[known]) marks.set(line, severity);
-  }
+    if (known === undefined || RANK[mark] > RANK[known]) marks.set(line, mark);
+  };
+  for (const { line, severity } of reading?.problems ?? []) put(line, severity);
+  for (const { line } of reading?.questions ?? []) put(line, 'question');
   return marks;
 }
 
@@ -41,7 +45,7 @@ export function PasteArea({ onReady }: { onReady(pointer: LinePointer): void }) 
   const gutter = useRef<HTMLDivElement>(null);
   const pastedWhole = useRef(false);
   const lines = text.split('\n').length;
-  const marks = marksOf(reading?.problems ?? []);
+  const marks = marksOf(reading);
 
   useEffect(() => {
     onReady({

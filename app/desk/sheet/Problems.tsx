@@ -26,7 +26,6 @@ export function Problems({ problems, onSelect }: Props) {
               <Place problem={problem} onSelect={onSelect} />
             </p>
             <p>{problem.message}</p>
-            {problem.severity !== 'note' && <ReadAndExpected problem={problem} />}
           </li>
         ))}
       </ul>
@@ -42,25 +41,5 @@ function Place({ problem, onSelect }: { problem: Problem; onSelect(line: number)
       line {line}
       {field === '' ? '' : ` · ${field}`}
     </button>
-  );
-}
-
-function ReadAndExpected({ problem }: { problem: Problem }) {
-  if (problem.read === '' && problem.expected === '') return null;
-  return (
-    <dl className="problem-pair">
-      {problem.read !== '' && (
-        <>
-          <dt>read</dt>
-          <dd className="figures">{problem.read}</dd>
-        </>
-      )}
-      {problem.expected !== '' && (
-        <>
-          <dt>expected</dt>
-          <dd>{problem.expected}</dd>
-        </>
-      )}
-    </dl>
   );
 }
