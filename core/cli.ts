@@ -2,7 +2,7 @@ import { readFile, writeFile } from 'node:fs/promises';
 import { parseArgs } from 'node:util';
 import { AssessmentCancelled, runAssessment } from './assess';
 import { readCase } from './case/read';
-import type { Choices, ReadResult } from './case/types';
+import { type Choices, FIELD_NAMES, type ReadResult } from './case/types';
 import { Trajectory } from './dynamics/trajectory';
 import { createEphemeris } from './ephemeris';
 import { reportJsonText } from './report/canonical';
@@ -35,7 +35,11 @@ function choicesOf(values: {
   for (const item of values.set ?? []) {
     const at = item.indexOf('=');
     if (at < 1) throw new Refused(`--set ${item}: expected FIELD=VALUE`);
-    choices[item.slice(0, at) as keyof Choices] = item.slice(at + 1);
+    const field = FIELD_NAMES.find((name) => name === item.slice(0, at));
+    if (field === undefined) {
+      throw new Refused(`--set ${item}: expected one of the fields ${FIELD_NAMES.join(', ')}`);
+    }
+    choices[field] = item.slice(at + 1);
   }
   if (values.gm !== undefined) choices.gm = values.gm;
   if (values.from !== undefined) choices.spanFrom = values.from;
@@ -81,6 +85,11 @@ async function main(): Promise<void> {
     return;
   }
   const text = await readStandardInput();
+  if (text.trim() === '') {
+    throw new Refused(
+      'Standard input is empty; expected a case: an OPM, a case file, a state or elements.',
+    );
+  }
   const reading = readCase(text, choicesOf(values));
   if (reading.case === null) throw new Refused(whyNot(reading));
   const trajectory = new Trajectory();

@@ -33,7 +33,8 @@ function label(
   };
 }
 
-const time = String.raw`time of (?:periapsis|perihelion|perigee)(?: passage)?|(?:periapsis|perihelion) (?:time|date|passage)|t_?p(?:eri)?`;
+const time =
+  'time of (?:periapsis|perihelion|perigee)(?: passage)?|(?:periapsis|perihelion) (?:time|date|passage)|t_?p(?:eri)?';
 
 export const LABELS: readonly Label[] = [
   label('periapsisTime', time, { kind: 'epoch', bare: true }),
@@ -41,11 +42,11 @@ export const LABELS: readonly Label[] = [
   label('vx', String.raw`v_?x|x_?dot|dx\/dt|velocity[ _]x|ẋ`, { bare: true }),
   label('vy', String.raw`v_?y|y_?dot|dy\/dt|velocity[ _]y|ẏ`, { bare: true }),
   label('vz', String.raw`v_?z|z_?dot|dz\/dt|velocity[ _]z|ż`, { bare: true }),
-  label('x', String.raw`r_?x|position[ _]x|pos_?x|x`, { bare: true }),
-  label('y', String.raw`r_?y|position[ _]y|pos_?y|y`, { bare: true }),
-  label('z', String.raw`r_?z|position[ _]z|pos_?z|z`, { bare: true }),
+  label('x', 'r_?x|position[ _]x|pos_?x|x', { bare: true }),
+  label('y', 'r_?y|position[ _]y|pos_?y|y', { bare: true }),
+  label('z', 'r_?z|position[ _]z|pos_?z|z', { bare: true }),
   label('semiMajorAxis', String.raw`semi-?\s?major axis|sma|a`, { bare: true }),
-  label('periapsisDistance', String.raw`(?:perihelion|periapsis|perigee) distance|qr`, {
+  label('periapsisDistance', '(?:perihelion|periapsis|perigee) distance|qr', {
     bare: true,
   }),
   label('periapsisDistance', 'q', { bare: true, flags: 'gu' }),
@@ -73,8 +74,8 @@ export const LABELS: readonly Label[] = [
   label('a3', 'a3', { bare: true }),
   label('absoluteMagnitude', 'absolute magnitude|H', { flags: 'gu', bare: true }),
   label('slopeParameter', 'slope parameter|G', { flags: 'gu', bare: true }),
-  label('diameter', String.raw`diameter(?:_m)?`, { bare: true }),
+  label('diameter', 'diameter(?:_m)?', { bare: true }),
   label('albedo', 'albedo', { bare: true }),
-  label('density', String.raw`density(?:_kg_m3)?`, { bare: true }),
-  label('strength', String.raw`strength(?:_pa)?`, { bare: true }),
+  label('density', 'density(?:_kg_m3)?', { bare: true }),
+  label('strength', 'strength(?:_pa)?', { bare: true }),
 ];

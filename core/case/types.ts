@@ -75,47 +75,48 @@ export interface OrbitCase {
 }
 
 /** Names of the fields a person sees and may edit; also the keys of `Choices`. */
-export type FieldName =
-  | 'name'
-  | 'objectId'
-  | 'epoch'
-  | 'timeScale'
-  | 'centre'
-  | 'axes'
-  | 'lengthUnit'
-  | 'speedUnit'
-  | 'x'
-  | 'y'
-  | 'z'
-  | 'vx'
-  | 'vy'
-  | 'vz'
-  | 'semiMajorAxis'
-  | 'periapsisDistance'
-  | 'eccentricity'
-  | 'inclination'
-  | 'node'
-  | 'argumentOfPeriapsis'
-  | 'meanAnomaly'
-  | 'trueAnomaly'
-  | 'periapsisTime'
-  | 'covariance'
-  | 'a1'
-  | 'a2'
-  | 'a3'
-  | 'absoluteMagnitude'
-  | 'slopeParameter'
-  | 'diameter'
-  | 'albedo'
-  | 'density'
-  | 'strength'
-  | 'gm'
-  | 'spanFrom'
-  | 'spanTo'
+export const FIELD_NAMES = [
+  'name',
+  'objectId',
+  'epoch',
+  'timeScale',
+  'centre',
+  'axes',
+  'lengthUnit',
+  'speedUnit',
+  'x',
+  'y',
+  'z',
+  'vx',
+  'vy',
+  'vz',
+  'semiMajorAxis',
+  'periapsisDistance',
+  'eccentricity',
+  'inclination',
+  'node',
+  'argumentOfPeriapsis',
+  'meanAnomaly',
+  'trueAnomaly',
+  'periapsisTime',
+  'covariance',
+  'a1',
+  'a2',
+  'a3',
+  'absoluteMagnitude',
+  'slopeParameter',
+  'diameter',
+  'albedo',
+  'density',
+  'strength',
+  'gm',
+  'spanFrom',
+  'spanTo',
   /** How numbers are written, where a text can be read in two ways (decimal comma or point). */
-  | 'numberFormat'
-  /** Day/month order, and other "which of two readings" questions about the epoch. */
-  | 'dateOrder';
+  'numberFormat',
+] as const;
+
+export type FieldName = (typeof FIELD_NAMES)[number];
 
 /** What the person has set by hand, as text, over what the text says or what is assumed. */
 export type Choices = Partial<Record<FieldName, string>>;

@@ -9,7 +9,7 @@ interface Props {
 
 const GROUPS: { title: string; fields: FieldName[] }[] = [
   { title: 'Object', fields: ['name', 'objectId'] },
-  { title: 'Epoch', fields: ['epoch', 'timeScale', 'dateOrder'] },
+  { title: 'Epoch', fields: ['epoch', 'timeScale'] },
   {
     title: 'Centre, axes and units',
     fields: ['centre', 'axes', 'lengthUnit', 'speedUnit', 'numberFormat'],
