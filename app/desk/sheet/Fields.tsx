@@ -7,50 +7,55 @@ interface Props {
   onSelect(line: number): void;
 }
 
-const GROUPS: { title: string; fields: FieldName[] }[] = [
-  { title: 'Object', fields: ['name', 'objectId'] },
-  { title: 'Epoch', fields: ['epoch', 'timeScale'] },
-  {
-    title: 'Centre, axes and units',
-    fields: ['centre', 'axes', 'lengthUnit', 'speedUnit', 'numberFormat'],
-  },
-  {
-    title: 'State',
-    fields: [
-      'x',
-      'y',
-      'z',
-      'vx',
-      'vy',
-      'vz',
-      'semiMajorAxis',
-      'periapsisDistance',
-      'eccentricity',
-      'inclination',
-      'node',
-      'argumentOfPeriapsis',
-      'meanAnomaly',
-      'trueAnomaly',
-      'periapsisTime',
-      'covariance',
-    ],
-  },
-  {
-    title: 'Object’s own forces and body',
-    fields: [
-      'a1',
-      'a2',
-      'a3',
-      'absoluteMagnitude',
-      'slopeParameter',
-      'diameter',
-      'albedo',
-      'density',
-      'strength',
-    ],
-  },
-  { title: 'Model and span', fields: ['gm', 'spanFrom', 'spanTo'] },
-];
+const GROUPS = [
+  'Object',
+  'Epoch',
+  'Centre, axes and units',
+  'State',
+  'Forces of its own and body',
+  'Model and span',
+] as const;
+
+/** Under which heading each field stands; every field has its place. */
+const GROUP_OF: Record<FieldName, (typeof GROUPS)[number]> = {
+  name: 'Object',
+  objectId: 'Object',
+  epoch: 'Epoch',
+  timeScale: 'Epoch',
+  centre: 'Centre, axes and units',
+  axes: 'Centre, axes and units',
+  lengthUnit: 'Centre, axes and units',
+  speedUnit: 'Centre, axes and units',
+  numberFormat: 'Centre, axes and units',
+  x: 'State',
+  y: 'State',
+  z: 'State',
+  vx: 'State',
+  vy: 'State',
+  vz: 'State',
+  semiMajorAxis: 'State',
+  periapsisDistance: 'State',
+  eccentricity: 'State',
+  inclination: 'State',
+  node: 'State',
+  argumentOfPeriapsis: 'State',
+  meanAnomaly: 'State',
+  trueAnomaly: 'State',
+  periapsisTime: 'State',
+  covariance: 'State',
+  a1: 'Forces of its own and body',
+  a2: 'Forces of its own and body',
+  a3: 'Forces of its own and body',
+  absoluteMagnitude: 'Forces of its own and body',
+  slopeParameter: 'Forces of its own and body',
+  diameter: 'Forces of its own and body',
+  albedo: 'Forces of its own and body',
+  density: 'Forces of its own and body',
+  strength: 'Forces of its own and body',
+  gm: 'Model and span',
+  spanFrom: 'Model and span',
+  spanTo: 'Model and span',
+};
 
 /** The case as understood: every field with its unit and where it comes from, each editable. */
 export function Fields({ fields, onSelect }: Props) {
@@ -66,8 +71,8 @@ export function Fields({ fields, onSelect }: Props) {
           ? 'Nothing is assumed: every field was read or set by hand.'
           : `${assumed} of ${fields.length} fields are assumed (†): the text does not say them.`}
       </p>
-      {GROUPS.map(({ title, fields: names }) => {
-        const own = fields.filter((field) => names.includes(field.field));
+      {GROUPS.map((title) => {
+        const own = fields.filter((field) => GROUP_OF[field.field] === title);
         if (own.length === 0) return null;
         return (
           <section key={title} className="fields-group" aria-label={title}>
