@@ -99,22 +99,7 @@ function FieldRow({ field, onSelect }: { field: Field; onSelect(line: number): v
       <label htmlFor={id}>{field.label}</label>
       <Origin id={`${id}-origin`} field={field} onSelect={onSelect} />
       <div className="field-value">
-        {field.options === null ? (
-          <TextValue id={id} described={described} value={field.value} onSet={set} />
-        ) : (
-          <select
-            id={id}
-            aria-describedby={described}
-            value={field.value}
-            onChange={(event) => set(event.target.value)}
-          >
-            {field.options.map((option) => (
-              <option key={option.value} value={option.value}>
-                {option.label}
-              </option>
-            ))}
-          </select>
-        )}
+        <Value id={id} described={described} field={field} onSet={set} />
         {field.unit !== null && <span className="field-unit">{field.unit}</span>}
       </div>
       {field.note !== null && (
@@ -123,6 +108,41 @@ function FieldRow({ field, onSelect }: { field: Field; onSelect(line: number): v
         </p>
       )}
     </div>
+  );
+}
+
+interface ValueProps {
+  id: string;
+  described: string;
+  field: Field;
+  onSet(value: string): void;
+}
+
+function Value({ id, described, field, onSet }: ValueProps) {
+  // The entries of a covariance are changed in the text; the sheet only names it.
+  if (field.field === 'covariance') {
+    return (
+      <output id={id} className="figures" aria-describedby={described}>
+        {field.value}
+      </output>
+    );
+  }
+  if (field.options === null) {
+    return <TextValue id={id} described={described} value={field.value} onSet={onSet} />;
+  }
+  return (
+    <select
+      id={id}
+      aria-describedby={described}
+      value={field.value}
+      onChange={(event) => onSet(event.target.value)}
+    >
+      {field.options.map((option) => (
+        <option key={option.value} value={option.value}>
+          {option.label}
+        </option>
+      ))}
+    </select>
   );
 }
 
