@@ -11,6 +11,9 @@ import {
 } from './dop853-coefficients';
 import type { ForceModel } from './force-model';
 
+/** Rounding of a barycentric place about 1 au from the Sun, km: one unit in the last place. */
+const ROUNDING_KM = 3e-8;
+
 /** Numbers of the dense output of a step: 7 polynomials of 6 components. */
 export const DENSE_DOUBLES = 42;
 
@@ -58,10 +61,12 @@ export class Dop853 {
   /**
    * Error of the last attempt in units of the tolerance: at most 1 is accepted.
    *
-   * @param tolerance relative to the distance and the speed, each as a whole
+   * @param tolerance relative to the distance and the speed, each as a whole. What the rounding of
+   *                  the place alone makes of the speed in a step is let through on top: near a body
+   *                  no shorter step would make it smaller, and the step would collapse.
    */
   error(h: number, y: Float64Array, tolerance: number): number {
-    const { k, end } = this;
+    const { k, end, model } = this;
     let fifth = 0;
     let third = 0;
     for (let part = 0; part < 6; part += 3) {
@@ -69,7 +74,8 @@ export class Dop853 {
         Math.hypot(y[part], y[part + 1], y[part + 2]),
         Math.hypot(end[part], end[part + 1], end[part + 2]),
       );
-      const scale = 1 / (tolerance * size);
+      const rounding = part === 0 ? 0 : Math.abs(h) * 2 * model.tide * ROUNDING_KM;
+      const scale = 1 / (tolerance * size + rounding);
       for (let i = part; i < part + 3; i++) {
         let e5 = 0;
         let e3 = 0;

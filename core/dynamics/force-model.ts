@@ -30,6 +30,8 @@ export interface ForceModelOptions {
 
 /** Geocentric distance within which the oblateness of the Earth is applied, km. */
 const OBLATENESS_REGION_KM = 1e7;
+/** Below the lowest ground, km. */
+const LOWEST_OBLATE_KM = 6350;
 const CENTURY_S = 36525 * 86400;
 
 /**
@@ -50,6 +52,8 @@ export class ForceModel {
   private readonly solarOblateness: number;
   /** Evaluations so far. */
   evaluations = 0;
+  /** Largest GM/d³ of the last evaluation, 1/s²: how fast the pull changes with place. */
+  tide = 0;
 
   constructor(
     readonly ephemeris: Ephemeris,
@@ -80,6 +84,7 @@ export class ForceModel {
     let ax = 0;
     let ay = 0;
     let az = 0;
+    let tide = 0;
     for (let i = 0; i < 11; i++) {
       const dx = bodies[i * 3] - x;
       const dy = bodies[i * 3 + 1] - yy;
@@ -89,7 +94,9 @@ export class ForceModel {
       ax += k * dx;
       ay += k * dy;
       az += k * dz;
+      if (k > tide) tide = k;
     }
+    this.tide = tide;
     out[at] = y[3];
     out[at + 1] = y[4];
     out[at + 2] = y[5];
@@ -155,7 +162,9 @@ export class ForceModel {
     const pz = Math.sqrt(1 - px * px - py * py);
     const q = Math.sqrt(q2);
     const sine = (gx * px + gy * py + gz * pz) / q;
-    const k = (1.5 * EARTH_J2 * this.gm[2] * EARTH_RADIUS_KM * EARTH_RADIUS_KM) / (q2 * q2);
+    // Below the surface, where only trial steps go, the term is held: it would outgrow all else.
+    const held = Math.max(q2, LOWEST_OBLATE_KM * LOWEST_OBLATE_KM);
+    const k = (1.5 * EARTH_J2 * this.gm[2] * EARTH_RADIUS_KM * EARTH_RADIUS_KM) / (held * held);
     const radial = (k * (5 * sine * sine - 1)) / q;
     const polar = 2 * k * sine;
     out[at + 3] += radial * gx - polar * px;
