@@ -1,7 +1,7 @@
 import { AU_KM, SECONDS_PER_DAY } from '../constants';
 import { icrfToEcliptic } from '../frames/ecliptic';
 import { findRoot } from '../math/roots';
-import { dot, norm, subtract, type Vec3 } from '../math/vector';
+import { add, dot, norm, subtract, type Vec3 } from '../math/vector';
 import { type Elements, elementsFromState } from './elements';
 import {
   flightPathAngleAtRadius,
@@ -76,7 +76,9 @@ export function classicalEncounter(input: ClassicalInput): ClassicalEncounter {
   const elements = ({ r, v }: State, gm: number): Elements =>
     elementsFromState(icrfToEcliptic(r), icrfToEcliptic(v), gm);
   const objectElements = elements(object, gmSun);
-  const earthElements = elements(earth, gmSun + gmEarthMoon);
+  // The Earth's own osculating orbit: against it the published distances between orbits are taken.
+  const offset = input.earthOffset(0);
+  const earthElements = elements({ r: add(earth.r, offset.r), v: add(earth.v, offset.v) }, gmSun);
   const relative = (dtS: number): State => {
     const a = propagateTwoBody(object.r, object.v, gmSun, dtS);
     const b = propagateTwoBody(earth.r, earth.v, gmSun + gmEarthMoon, dtS);

@@ -106,10 +106,11 @@ export function hyperbolicAnomaly(meanAnomaly: number, eccentricity: number): nu
 /** The positive root of a x + b x³ = m, without cancellation. */
 function cubicStart(a: number, b: number, m: number): number {
   if (m === 0) return 0;
-  if (b === 0) return m / a;
+  if (!(b > 1e-100 * a)) return m / a;
   const p = a / (3 * b);
   const q = m / (2 * b);
   const w = Math.cbrt(q + Math.sqrt(q * q + p * p * p));
+  if (!(w > 1e-100)) return a > 0 ? m / a : Math.cbrt(m / b);
   // w − p/w cancels for small m: use the identity x = 2q / (w² + p + p²/w²).
   return (2 * q) / (w * w + p + (p * p) / (w * w));
 }

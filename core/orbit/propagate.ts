@@ -64,7 +64,8 @@ export function propagateTwoBody(r: Vec3, v: Vec3, gm: number, dtS: number): { r
     const period = (2 * Math.PI * gm) / alpha ** 1.5;
     dt -= period * Math.round(dt / period);
   }
-  if (dt === 0) return { r, v };
+  // Below this nothing moves, and the products of the search would underflow.
+  if (Math.abs(dt) < 1e-100) return { r, v };
   const time = (s: number): number => {
     stumpff(alpha * s * s);
     return s * (distance * c[1] + s * (eta * c[2] + gm * s * c[3]));

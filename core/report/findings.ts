@@ -419,9 +419,9 @@ function moidFinding(draft: FindingsDraft): Finding | null {
     `The two orbits, as they are at the epoch, come within ${formatAu(distanceAu)} (${formatKm(distanceKm)}) of each other.`,
     [km('minimum orbit intersection distance', distanceKm)],
     {
-      model: 'osculating orbits of the object and of the Earth–Moon barycentre at the epoch',
+      model: 'osculating heliocentric orbits of the object and of the Earth at the epoch',
       formula: 'least distance over both true anomalies',
-      source: 'nested minimisation, Brent 1973',
+      source: 'definition; damped Newton search, Levenberg 1944',
     },
   );
 }

@@ -161,7 +161,7 @@ export function classicalSection(
   const periapsis = c.periapsis;
   return {
     method:
-      'Two-body motion about the Sun for the object and for the Earth–Moon barycentre (the Earth set off from it by the ephemeris), joined to a geocentric two-body hyperbola at the sphere of influence.',
+      'Two-body motion about the Sun for the object and for the Earth–Moon barycentre (the Earth set off from it by the ephemeris), joined to a geocentric two-body hyperbola at the sphere of influence. The elements and the distance between the orbits are of the heliocentric orbits that object and Earth osculate at the epoch.',
     objectElements: elementsSection(c.objectElements),
     earthElements: elementsSection(c.earthElements),
     moid: {
