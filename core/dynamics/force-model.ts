@@ -29,9 +29,9 @@ export interface ForceModelOptions {
 }
 
 /** Geocentric distance within which the oblateness of the Earth is applied, km. */
-const OBLATENESS_REGION_KM = 1e7;
+export const OBLATENESS_REGION_KM = 1e7;
 /** Below the lowest ground, km. */
-const LOWEST_OBLATE_KM = 6350;
+export const LOWEST_OBLATE_KM = 6350;
 const CENTURY_S = 36525 * 86400;
 
 /**
@@ -47,6 +47,7 @@ const CENTURY_S = 36525 * 86400;
 export class ForceModel {
   private readonly gm: Float64Array;
   private readonly bodies = new Float64Array(36);
+  private readonly pole = new Float64Array(3);
   private readonly forces: Float64Array | null;
   /** 1.5 J2 R² of the Sun, km². */
   private readonly solarOblateness: number;
@@ -156,10 +157,11 @@ export class ForceModel {
     const gz = y[2] - bodies[EARTH + 2];
     const q2 = gx * gx + gy * gy + gz * gz;
     if (q2 > OBLATENESS_REGION_KM * OBLATENESS_REGION_KM) return;
-    const century = tdbSeconds / CENTURY_S;
-    const px = (2004.191898 - 0.4297829 * century) * century * ARCSEC_TO_RAD;
-    const py = (-0.025896 - 22.4072747 * century) * century * ARCSEC_TO_RAD;
-    const pz = Math.sqrt(1 - px * px - py * py);
+    const { pole } = this;
+    earthPole(tdbSeconds, pole);
+    const px = pole[0];
+    const py = pole[1];
+    const pz = pole[2];
     const q = Math.sqrt(q2);
     const sine = (gx * px + gy * py + gz * pz) / q;
     // Below the surface, where only trial steps go, the term is held: it would outgrow all else.
@@ -178,6 +180,22 @@ const SUN_POLE_Y = Math.cos(SUN_POLE_DEC_DEG * DEG_TO_RAD) * Math.sin(SUN_POLE_R
 const SUN_POLE_Z = Math.sin(SUN_POLE_DEC_DEG * DEG_TO_RAD);
 const SUN = BODY_INDEX.Sun * 3;
 const EARTH = BODY_INDEX.Earth * 3;
+
+/**
+ * Pole of the Earth of date, a unit vector in ICRF: precession without nutation.
+ *
+ * @param tdbSeconds TDB seconds past J2000
+ * @param out        receives three numbers
+ * Source: Capitaine, Wallace & Chapront (2003), A&A 412, 567, to second order in time.
+ */
+export function earthPole(tdbSeconds: number, out: Float64Array): void {
+  const century = tdbSeconds / CENTURY_S;
+  const x = (2004.191898 - 0.4297829 * century) * century * ARCSEC_TO_RAD;
+  const y = (-0.025896 - 22.4072747 * century) * century * ARCSEC_TO_RAD;
+  out[0] = x;
+  out[1] = y;
+  out[2] = Math.sqrt(1 - x * x - y * y);
+}
 
 export const createForceModel = (ephemeris: Ephemeris, options: ForceModelOptions): ForceModel =>
   new ForceModel(ephemeris, options);
