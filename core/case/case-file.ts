@@ -1,4 +1,5 @@
 import * as v from 'valibot';
+import { ELEMENT_LABELS } from '../uncertainty/covariance';
 import type { DeskContent, OrbitCase } from './types';
 
 /** The case file of our own: everything the desk knows, as JSON. */
@@ -12,6 +13,25 @@ const epoch = v.object({
   mjd: v.pipe(v.number(), v.integer()),
   secondOfDay: v.pipe(v.number(), v.minValue(0), v.maxValue(86401)),
 });
+
+const isSquareOfLabels = ({ labels, matrix }: { labels: string[]; matrix: number[][] }): boolean =>
+  matrix.length === labels.length &&
+  matrix.every(
+    (row, i) =>
+      row.length === labels.length &&
+      row.every((x, j) => Math.abs(x - (matrix[j]?.[i] ?? Number.NaN)) <= 1e-9 * Math.abs(x)),
+  );
+
+const namesASet = ({ labels }: { labels: string[] }): boolean => {
+  const count = (...names: string[]): number =>
+    names.filter((name) => labels.includes(name)).length;
+  return (
+    new Set(labels).size === labels.length &&
+    count('e', 'i', 'node', 'peri') === 4 &&
+    count('q', 'a') === 1 &&
+    count('tp', 'M') === 1
+  );
+};
 
 const orbitCase = v.object({
   name: v.string(),
@@ -37,12 +57,29 @@ const orbitCase = v.object({
       ]),
     }),
   ]),
-  covariance: v.nullable(
-    v.object({
-      kind: v.literal('cartesian'),
-      frame: v.picklist(['ICRF', 'EclipticJ2000', 'RTN', 'TNW']),
-      lowerTriangle: v.pipe(v.array(finite), v.length(21)),
-    }),
+  covariance: v.pipe(
+    v.nullable(
+      v.variant('kind', [
+        v.object({
+          kind: v.literal('cartesian'),
+          frame: v.picklist(['ICRF', 'EclipticJ2000', 'RTN', 'TNW']),
+          lowerTriangle: v.pipe(v.array(finite), v.length(21)),
+        }),
+        v.object({
+          kind: v.literal('elements'),
+          labels: v.array(v.picklist(ELEMENT_LABELS)),
+          matrix: v.array(v.array(finite)),
+        }),
+      ]),
+    ),
+    v.check(
+      (given) => given?.kind !== 'elements' || isSquareOfLabels(given),
+      'expected a symmetric matrix of as many rows as labels',
+    ),
+    v.check(
+      (given) => given?.kind !== 'elements' || namesASet(given),
+      'expected e, i, node, peri, one of q and a, one of tp and M, and any of A1, A2, A3',
+    ),
   ),
   nonGravitational: v.nullable(v.object({ a1AuD2: finite, a2AuD2: finite, a3AuD2: finite })),
   physical: v.object({

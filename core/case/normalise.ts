@@ -5,6 +5,11 @@ import { add, scale, subtract, type Vec3, vec3 } from '../math/vector';
 import { stateFromElements } from '../orbit/elements';
 import { trueAnomalyFromMean, trueAnomalyFromTimeSincePeriapsis } from '../orbit/kepler';
 import { tdbSecondsFromEpoch } from '../time/convert';
+import {
+  cartesianCovariance,
+  type EpochCovariance,
+  elementCovariance,
+} from '../uncertainty/covariance';
 import type { Centre, ElementsState, OrbitCase } from './types';
 
 /** A case carried to the core's own terms. */
@@ -17,6 +22,8 @@ export interface NormalisedCase {
   a1KmS2: number;
   a2KmS2: number;
   a3KmS2: number;
+  /** Of the heliocentric state and A1 to A3; null when the case has none. */
+  covariance: EpochCovariance | null;
 }
 
 /** The case's epoch, TDB seconds past J2000. */
@@ -55,7 +62,18 @@ export function normaliseCase(orbit: OrbitCase, ephemeris: Ephemeris): Normalise
     a1KmS2: (forces?.a1AuD2 ?? 0) * a,
     a2KmS2: (forces?.a2AuD2 ?? 0) * a,
     a3KmS2: (forces?.a3AuD2 ?? 0) * a,
+    covariance: covarianceOf(orbit, given),
   };
+}
+
+function covarianceOf(orbit: OrbitCase, given: State): EpochCovariance | null {
+  const { covariance } = orbit;
+  if (covariance === null) return null;
+  const ecliptic = orbit.axes === 'EclipticJ2000';
+  const state = { ...given, ecliptic, gm: centreGm(orbit) };
+  return covariance.kind === 'cartesian'
+    ? cartesianCovariance(covariance.lowerTriangle, covariance.frame, state)
+    : elementCovariance(covariance.labels, covariance.matrix, state);
 }
 
 interface State {

@@ -1,4 +1,4 @@
-import type { CartesianCovariance, CaseFormat, FieldName, Problem, Question } from './types';
+import type { CaseFormat, FieldName, OrbitCase, Problem, Question } from './types';
 
 /** What a text says, field by field, before anything is made of it. */
 
@@ -15,7 +15,7 @@ export interface Raw {
 export interface RawCase {
   format: CaseFormat;
   fields: Map<FieldName, Raw>;
-  covariance: CartesianCovariance | null;
+  covariance: OrbitCase['covariance'];
   originator: string | null;
   invented: boolean;
   problems: Problem[];

@@ -1,5 +1,6 @@
 import type { GmSet } from '../constants';
 import type { Epoch, TimeScale } from '../time/epoch';
+import type { ElementLabel } from '../uncertainty/covariance';
 
 /** What a case is: everything one orbit solution says, in the centre, axes and scale it was given in. */
 
@@ -56,6 +57,13 @@ export interface CartesianCovariance {
   lowerTriangle: number[];
 }
 
+/** Covariance of orbital elements, in the order of its labels: au, days, degrees, au/d². */
+export interface ElementCovariance {
+  kind: 'elements';
+  labels: ElementLabel[];
+  matrix: number[][];
+}
+
 export interface OrbitCase {
   name: string;
   objectId: string | null;
@@ -66,7 +74,7 @@ export interface OrbitCase {
   centre: Centre;
   axes: Axes;
   state: CartesianState | ElementsState;
-  covariance: CartesianCovariance | null;
+  covariance: CartesianCovariance | ElementCovariance | null;
   nonGravitational: NonGravitational | null;
   physical: Physical;
   model: { gm: GmSet };

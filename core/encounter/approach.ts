@@ -20,6 +20,8 @@ export interface ApproachRecord {
   hyperbola: Hyperbola | null;
   plane: TargetPlane | null;
   crossings: EncounterEvent[];
+  /** Where its uncertainty is taken: closest approach, or for an impact where the conic osculates. */
+  reference: EncounterEvent;
   /** At the entry interface (geodetic 100 km), inbound. */
   entry: { tdbSeconds: number; point: EntryPoint } | null;
   /** Where the trajectory ends on the body's surface. */
@@ -99,6 +101,7 @@ function record(
             BODY_RADIUS_KM[at.body],
           ),
     crossings,
+    reference: impact ? anchor : at,
     entry:
       interfaceEvent === undefined
         ? null

@@ -9,6 +9,7 @@ import {
   hyperbolaFromState,
   speedAtRadius,
   timeToPeriapsisFrom,
+  travelTime,
 } from './hyperbola';
 import { type Moid, moid } from './moid';
 import { propagateTwoBody } from './propagate';
@@ -130,32 +131,47 @@ function search(
   return { closest, minima };
 }
 
-/** The last time the sphere is entered before the closest approach. */
+/** Entering the sphere before the closest approach, or as the epoch's own hyperbola says. */
 function entryBefore(
   relative: (dtS: number) => State,
   closest: Approach,
   input: ClassicalInput,
 ): ClassicalEncounter['sphereEntry'] {
-  const radius = input.sphereOfInfluenceKm;
+  const { sphereOfInfluenceKm: radius, gmEarth } = input;
   if (closest.distanceKm >= radius) return null;
+  const entry = edgeOfSphere(relative, closest, radius, -1);
   const epoch = relative(0);
-  if (norm(epoch.r) < radius && closest.dtS >= 0) {
-    const hyperbola = hyperbolaFromState(epoch.r, epoch.v, input.gmEarth);
-    const back = hyperbola === null ? null : timeToPeriapsisFrom(hyperbola, radius, input.gmEarth);
-    if (hyperbola === null || back === null) return { dtS: 0, ...epoch };
-    const dtS = hyperbola.timeToPeriapsisS - back;
-    return { dtS, ...propagateTwoBody(epoch.r, epoch.v, input.gmEarth, dtS) };
+  if (norm(epoch.r) < radius && (entry === null || entry <= 0)) {
+    const exit = edgeOfSphere(relative, closest, radius, 1);
+    if (exit === null || exit >= 0) {
+      const hyperbola = hyperbolaFromState(epoch.r, epoch.v, gmEarth);
+      const back = hyperbola === null ? null : timeToPeriapsisFrom(hyperbola, radius, gmEarth);
+      if (hyperbola === null || back === null) return { dtS: 0, ...epoch };
+      const dtS = hyperbola.timeToPeriapsisS - back;
+      return { dtS, ...propagateTwoBody(epoch.r, epoch.v, gmEarth, dtS) };
+    }
   }
+  return entry === null ? null : { dtS: entry, ...relative(entry) };
+}
+
+/** Steps to the sphere's edge before an object counts as staying inside. */
+const MOST_STEPS_INSIDE = 400;
+
+/** When the sphere is entered before (or left after) the closest approach; null when it is not. */
+function edgeOfSphere(
+  relative: (dtS: number) => State,
+  closest: Approach,
+  radius: number,
+  direction: 1 | -1,
+): number | null {
   const excess = (t: number): number => norm(relative(t).r) - radius;
-  let outside = closest.dtS;
-  let step = radius / Math.max(1, norm(relative(closest.dtS).v));
-  for (let i = 0; excess(outside) <= 0; i++) {
-    if (i === 60) return null;
-    outside -= step;
-    step *= 1.2;
+  // A fifth of the sphere at a time; a faster object has left it in a few steps.
+  const step = (0.2 * radius * direction) / Math.max(0.5, norm(relative(closest.dtS).v));
+  for (let i = 1; i <= MOST_STEPS_INSIDE; i++) {
+    const t = closest.dtS + i * step;
+    if (excess(t) >= 0) return findRoot(excess, t - step, t, TIME_TOLERANCE_S);
   }
-  const dtS = findRoot(excess, outside, closest.dtS, TIME_TOLERANCE_S);
-  return { dtS, ...relative(dtS) };
+  return null;
 }
 
 /** What the hyperbola from the sphere's edge says. */
@@ -170,19 +186,19 @@ function encounterOf(
   }
   const toPeriapsis = hyperbola.timeToPeriapsisS;
   const below = hyperbola.periapsisKm < entryRadiusKm;
-  const fromInterface = timeToPeriapsisFrom(hyperbola, entryRadiusKm, gmEarth);
-  const angle = flightPathAngleAtRadius(hyperbola, entryRadiusKm, gmEarth);
+  const travelTimeS = travelTime(hyperbola, norm(entry.r), entryRadiusKm, gmEarth);
+  const angle = flightPathAngleAtRadius(hyperbola, entryRadiusKm);
   return {
     hyperbola,
     periapsisBelowInterface: below,
     interface:
-      fromInterface === null || angle === null
+      travelTimeS === null || angle === null
         ? null
         : {
-            dtS: entry.dtS + toPeriapsis - fromInterface,
+            dtS: entry.dtS + travelTimeS,
             speedKmS: speedAtRadius(hyperbola, entryRadiusKm, gmEarth),
             flightPathAngleRad: angle,
-            travelTimeS: toPeriapsis - fromInterface,
+            travelTimeS,
           },
     periapsis: {
       dtS: entry.dtS + toPeriapsis,

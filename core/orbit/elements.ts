@@ -1,5 +1,5 @@
 import { cross, dot, norm, scale, subtract, unit, type Vec3 } from '../math/vector';
-import { meanFromTrueAnomaly, meanMotion } from './kepler';
+import { meanFromTrueAnomaly, meanMotion, sinhMinusX } from './kepler';
 
 /** A straight-line orbit: no plane, no elements. */
 export class DegenerateOrbit extends Error {
@@ -27,15 +27,25 @@ export interface Elements extends ConicPlace {
   timeFromPeriapsisS: number;
   /** Null for open orbits. */
   periodS: number | null;
+  /** Whether periapsis or node have no direction of their own and were set (see the function). */
+  degenerate: { circular: boolean; equatorial: boolean };
 }
 
-/** Relative size below which node or periapsis have no direction, and an energy is a parabola's. */
-const DEGENERATE = 1e-13;
+/**
+ * Eccentricity and sine of the inclination below which rounding of the state (some 1e-16, a few
+ * times over) has more to say of the direction of periapsis or node than the orbit has.
+ */
+const NO_DIRECTION = 1e-13;
 
-const positive = (angle: number): number => {
+/** Energy over that of rest at the same distance below which rounding hides it: a parabola. */
+const NO_ENERGY = 1e-14;
+
+/** Angle brought into [0, 2π); a negative one below rounding becomes 0. */
+function positive(angle: number): number {
   const turned = angle % (2 * Math.PI);
-  return turned < 0 ? turned + 2 * Math.PI : turned;
-};
+  const up = turned < 0 ? turned + 2 * Math.PI : turned;
+  return up < 2 * Math.PI ? up : 0;
+}
 
 /**
  * Elliptic, parabolic or hyperbolic elements of a state about one attracting centre.
@@ -47,8 +57,8 @@ const positive = (angle: number): number => {
  *           node is set to 0 (along x). Circular: the argument of periapsis is set to 0 and the true
  *           anomaly counts from the node.
  * @throws   DegenerateOrbit for rectilinear motion (|r × v| below 1e-12 |r||v|)
- * Accuracy: round trip within 1e-12 relative for 0 ≤ e ≤ 10 (property test).
- * Source: Vallado, Fundamentals of Astrodynamics (2013), algorithm 9.
+ * Accuracy: round trip ROUNDTRIP
+ * Source: Vallado, Fundamentals of Astrodynamics (2013), algorithm 9; e and 1/a from the energy.
  */
 export function elementsFromState(r: Vec3, v: Vec3, gm: number): Elements {
   const distance = norm(r);
@@ -63,37 +73,60 @@ export function elementsFromState(r: Vec3, v: Vec3, gm: number): Elements {
   const eVector = subtract(scale(cross(v, h), 1 / gm), scale(r, 1 / distance));
   const pole = scale(h, 1 / momentum);
   const inPlane = Math.hypot(pole[0], pole[1]);
-  const node: Vec3 = inPlane > DEGENERATE ? [-pole[1] / inPlane, pole[0] / inPlane, 0] : [1, 0, 0];
+  const equatorial = inPlane <= NO_DIRECTION;
+  const node: Vec3 = equatorial ? [1, 0, 0] : [-pole[1] / inPlane, pole[0] / inPlane, 0];
   const ahead = unit(cross(pole, node));
   const measured = norm(eVector);
-  const circular = measured <= DEGENERATE;
+  const circular = measured <= NO_DIRECTION;
   const periapsis = circular ? 0 : Math.atan2(dot(eVector, ahead), dot(eVector, node));
   const trueAnomaly = positive(Math.atan2(dot(r, ahead), dot(r, node)) - periapsis);
-  // Binding energy over that of a circle: 1/a without the loss that p/(1 − e²) has near e = 1.
+  // 1/a from the energy, without the loss that p/(1 − e²) has near e = 1.
   const inverse = 2 / distance - dot(v, v) / gm;
-  const parabolic = Math.abs(inverse) * p <= DEGENERATE;
+  const parabolic = Math.abs(inverse) * distance <= 2 * NO_ENERGY;
   const e = parabolic ? 1 : Math.sqrt(Math.max(0, 1 - p * inverse));
-  const eccentricity = circular || measured < 0.5 ? measured : keepKind(e, inverse, parabolic);
+  const eccentricity = measured < 0.5 ? measured : keepKind(e, inverse, parabolic);
   const q = p / (1 + eccentricity);
-  const mean = meanFromTrueAnomaly(
-    trueAnomaly > Math.PI ? trueAnomaly - 2 * Math.PI : trueAnomaly,
-    eccentricity,
-  );
-  const motion = meanMotion(q, eccentricity, gm);
-  const closed = eccentricity < 1;
+  const semiMajorAxis = parabolic ? null : 1 / inverse;
+  const { mean, motion } =
+    semiMajorAxis !== null && semiMajorAxis < 0
+      ? hyperbolicMean(dot(r, v), q, -semiMajorAxis, eccentricity, gm)
+      : {
+          mean: meanFromTrueAnomaly(
+            trueAnomaly > Math.PI ? trueAnomaly - 2 * Math.PI : trueAnomaly,
+            eccentricity,
+          ),
+          motion: meanMotion(q, eccentricity, gm),
+        };
+  const closed = semiMajorAxis !== null && semiMajorAxis > 0;
   return {
     semiLatusRectumKm: p,
     eccentricity,
     periapsisKm: q,
-    semiMajorAxisKm: parabolic ? null : q / (1 - eccentricity),
+    semiMajorAxisKm: semiMajorAxis,
     inclinationRad: Math.atan2(inPlane, pole[2]),
     nodeRad: positive(Math.atan2(node[1], node[0])),
     argumentOfPeriapsisRad: positive(periapsis),
     trueAnomalyRad: trueAnomaly,
     meanAnomalyRad: closed ? positive(mean) : mean,
     timeFromPeriapsisS: mean / motion,
-    periodS: closed ? (2 * Math.PI) / motion : null,
+    periodS: closed ? 2 * Math.PI * Math.sqrt(semiMajorAxis ** 3 / gm) : null,
+    degenerate: { circular, equatorial },
   };
+}
+
+/**
+ * Mean anomaly and motion on a hyperbola from r·v = e sinh H sqrt(gm a): a true anomaly near the
+ * asymptote does not hold the digits.
+ */
+function hyperbolicMean(
+  radial: number,
+  q: number,
+  a: number,
+  e: number,
+  gm: number,
+): { mean: number; motion: number } {
+  const x = Math.asinh(radial / (Math.sqrt(gm * a) * e));
+  return { mean: (q / a) * x + e * sinhMinusX(x), motion: Math.sqrt(gm / a) / a };
 }
 
 /** Keeps e on the side of 1 that the energy says, where rounding would lose it. */

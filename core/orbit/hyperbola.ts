@@ -72,7 +72,13 @@ function timeFromPeriapsis(radial: number, a: number, e: number, q: number, gm: 
   return Math.sqrt((a * a * a) / gm) * ((q / a) * x + e * sinhMinusX(x));
 }
 
-/** Speed at a distance from the body, km/s (vis-viva). */
+/**
+ * Speed at a distance from the body, km/s (vis-viva).
+ *
+ * @param hyperbola the encounter
+ * @param radiusKm  distance from the body's centre, km
+ * @param gm        gravitational parameter of the body, km^3/s^2
+ */
 export function speedAtRadius(hyperbola: Hyperbola, radiusKm: number, gm: number): number {
   return Math.sqrt(hyperbola.excessSpeedKmS ** 2 + (2 * gm) / radiusKm);
 }
@@ -80,20 +86,45 @@ export function speedAtRadius(hyperbola: Hyperbola, radiusKm: number, gm: number
 /**
  * Flight-path angle at a distance on the way in, radians, negative.
  *
- * @returns null when the periapsis is farther out
+ * @param hyperbola the encounter
+ * @param radiusKm  distance from the body's centre, km
+ * @returns         null when the periapsis is farther out
+ * Accuracy: rounding, at periapsis too: v_r² r² = v∞² (r − q)(r + q + 2a), no arccosine near 1.
  */
-export function flightPathAngleAtRadius(
-  hyperbola: Hyperbola,
-  radiusKm: number,
-  gm: number,
-): number | null {
-  if (radiusKm < hyperbola.periapsisKm) return null;
-  const across = hyperbola.impactParameterKm * hyperbola.excessSpeedKmS;
-  const cosine = across / (radiusKm * speedAtRadius(hyperbola, radiusKm, gm));
-  return -Math.acos(Math.min(1, Math.max(-1, cosine)));
+export function flightPathAngleAtRadius(hyperbola: Hyperbola, radiusKm: number): number | null {
+  const { periapsisKm: q, semiMajorAxisKm: a, impactParameterKm: b } = hyperbola;
+  if (radiusKm < q) return null;
+  return -Math.atan2(Math.sqrt((radiusKm - q) * (radiusKm + q - 2 * a)), b);
 }
 
-/** Seconds from a distance on the way in to periapsis; null when the periapsis is farther out. */
+/**
+ * Seconds from one distance on the way in to a smaller one, by the hyperbolic Kepler equation.
+ *
+ * @param hyperbola    the encounter
+ * @param fromRadiusKm distance at the start, km
+ * @param toRadiusKm   distance at the end, km
+ * @param gm           gravitational parameter of the body, km^3/s^2
+ * @returns            null when the periapsis is farther out than one of the two
+ */
+export function travelTime(
+  hyperbola: Hyperbola,
+  fromRadiusKm: number,
+  toRadiusKm: number,
+  gm: number,
+): number | null {
+  const from = timeToPeriapsisFrom(hyperbola, fromRadiusKm, gm);
+  const to = timeToPeriapsisFrom(hyperbola, toRadiusKm, gm);
+  return from === null || to === null ? null : from - to;
+}
+
+/**
+ * Seconds from a distance on the way in to periapsis.
+ *
+ * @param hyperbola the encounter
+ * @param radiusKm  distance at the start, km
+ * @param gm        gravitational parameter of the body, km^3/s^2
+ * @returns         null when the periapsis is farther out
+ */
 export function timeToPeriapsisFrom(
   hyperbola: Hyperbola,
   radiusKm: number,

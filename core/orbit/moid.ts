@@ -54,7 +54,8 @@ function curveOf(orbit: Elements, reachKm: number): Curve {
  *
  * @param a elements of the first orbit, any conic
  * @param b elements of the second, an ellipse
- * @returns distance, km, and the true anomalies on both, radians
+ * @returns distance, km, and the true anomalies on both, radians, [−π, π]
+ * @throws  RangeError when the second orbit is open
  * The first orbit is looked at out to three times the aphelion of the second (beyond, no point can
  * be nearer than its periapsis is). A grid over both anomalies gives the local minima of the
  * distance; each is refined by a damped Newton iteration on half the squared distance, which also
@@ -63,6 +64,9 @@ function curveOf(orbit: Elements, reachKm: number): Curve {
  * Source: the definition; Levenberg (1944) and Marquardt (1963) for the damping.
  */
 export function moid(a: Elements, b: Elements): Moid {
+  if (!(b.eccentricity < 1)) {
+    throw new RangeError(`moid: the second orbit has e = ${b.eccentricity}; expected an ellipse`);
+  }
   const aphelion = b.semiLatusRectumKm / (1 - b.eccentricity);
   const first = curveOf(a, 3 * aphelion + 2 * a.periapsisKm);
   const second = curveOf(b, Number.POSITIVE_INFINITY);

@@ -47,6 +47,14 @@ export function formatDuration(seconds: number): string {
   return `${formatNumber(s / 86400, 1)} days`;
 }
 
+/** A probability as a person says it: "1 in 2 300", "0.34", "below 1 in a million million". */
+export function formatProbability(p: number): string {
+  if (p < 1e-12) return 'below 1 in a million million';
+  if (p > 0.1) return formatNumber(p, 2);
+  const digits = 10 ** Math.floor(Math.log10(1 / p) - 1);
+  return `1 in ${formatNumber(Math.round(1 / p / digits) * digits, 0)}`;
+}
+
 const MONTHS = [
   'January',
   'February',

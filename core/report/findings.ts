@@ -8,6 +8,7 @@ import {
   formatMoment,
   formatNumber,
   formatPlace,
+  formatProbability,
   formatSpeed,
 } from './figures';
 import type { Approach, Crossing, Finding, Report } from './report';
@@ -102,7 +103,7 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
         ]),
     moidFinding(draft),
     othersFinding(draft, main),
-    certaintyFinding(draft),
+    certaintyFinding(main),
     assumptionsFinding(draft),
   ].filter((item) => item !== null);
   return {
@@ -167,13 +168,17 @@ function answerOf(approach: Approach, moon: Approach | null): Finding {
     body === 'Earth' && distanceKm < 50000
       ? `, ${formatKm(distanceKm - EARTH_RADIUS_KM)} above the surface`
       : '';
+  const give =
+    approach.uncertainty === undefined
+      ? ''
+      : ` ±\u2009${formatDuration(approach.uncertainty.sigmaTimeS)} (1\u2009σ)`;
   const moonToo =
     moon === null || moon.distanceRadii > NEAR_MOON_RADII
       ? ''
       : ` It comes within ${formatKm(moon.distanceKm)} of the Moon’s centre, ${radii(moon)}, on ${formatMoment(moon.tdbSeconds)}.`;
   return finding(
     'answer',
-    `Passes ${formatKm(distanceKm)} from ${CENTRES[body]}, ${radii(approach)}${height}, on ${formatMoment(tdbSeconds)}.${moonToo}`,
+    `Passes ${formatKm(distanceKm)} from ${CENTRES[body]}, ${radii(approach)}${height}, on ${formatMoment(tdbSeconds)}${give}.${moonToo}`,
     figures,
     N_BODY,
     tdbSeconds,
@@ -448,19 +453,64 @@ function othersFinding(draft: FindingsDraft, main: Approach | null): Finding | n
   );
 }
 
-function certaintyFinding(draft: FindingsDraft): Finding {
-  const given = draft.case.asRead.fields.some((field) => field.field === 'covariance');
+const FIRST_ORDER = {
+  model:
+    'covariance of the case carried to the approach by the variational equations (first order)',
+  formula: 'P = Φ P₀ Φᵀ at the moving time of closest approach; Gaussian of B over the impact disc',
+  source: 'Milani & Gronchi 2010; Montenbruck & Gill 2000',
+};
+
+function certaintyFinding(main: Approach | null): Finding {
+  const given = main?.uncertainty;
+  if (main === null || given === undefined) {
+    return finding(
+      'certainty',
+      'No covariance was given: these are figures of the nominal orbit alone, and how sure they are is not known here.',
+      [],
+      {
+        model: 'one trajectory, from the state as given',
+        formula: 'none',
+        source: 'digits show how the model is computed, not how well the orbit is known',
+      },
+    );
+  }
+  const [low, high] = given.distance3SigmaKm;
+  const probability = main.impactProbability?.firstOrder;
+  const hit =
+    probability === undefined
+      ? ''
+      : ` The probability of impact is ${formatProbability(probability)} at first order.`;
   return finding(
     'certainty',
-    given
-      ? 'These are figures of the nominal orbit: the covariance was read and is kept with the case, but the figures do not carry its uncertainty yet.'
-      : 'No covariance was given: these are figures of the nominal orbit alone, and how sure they are is not known here.',
-    [],
-    {
-      model: 'one trajectory, from the state as given',
-      formula: 'none',
-      source: 'digits show how the model is computed, not how well the orbit is known',
-    },
+    `By the covariance given, at first order (1\u2009σ): distance ±\u2009${formatKm(given.sigmaDistanceKm)}, time ±\u2009${formatDuration(given.sigmaTimeS)}. The 3-σ range of the distance is ${formatKm(low)} to ${formatKm(high)}.${hit}`,
+    [
+      km('σ of distance', given.sigmaDistanceKm),
+      {
+        label: 'σ of time',
+        value: given.sigmaTimeS,
+        unit: 's',
+        text: formatNumber(given.sigmaTimeS, 1),
+      },
+      kmS('σ of speed', given.sigmaSpeedKmS),
+      ...(given.ellipse === null
+        ? []
+        : [
+            km('1 σ on the target plane, major', given.ellipse.semiMajorKm),
+            km('1 σ on the target plane, minor', given.ellipse.semiMinorKm),
+          ]),
+      ...(probability === undefined
+        ? []
+        : [
+            {
+              label: 'probability of impact, first order',
+              value: probability,
+              unit: '',
+              text: formatProbability(probability),
+            },
+          ]),
+    ],
+    FIRST_ORDER,
+    main.tdbSeconds,
   );
 }
 

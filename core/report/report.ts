@@ -97,6 +97,29 @@ const surfaceImpact = v.object({
   note: v.string(),
 });
 
+/** First-order uncertainty, from the covariance of the case by the variational equations. */
+const uncertainty = v.object({
+  sigmaDistanceKm: finite,
+  sigmaTimeS: finite,
+  sigmaSpeedKmS: finite,
+  /** Never below zero. */
+  distance3SigmaKm: v.tuple([finite, finite]),
+  /** 1 σ, on the target plane; null where the object is bound. */
+  ellipse: v.nullable(
+    v.object({
+      semiMajorKm: finite,
+      semiMinorKm: finite,
+      /** Of the major axis, from T towards R. */
+      angleTrDeg: finite,
+      /** Of the major axis, from ξ towards ζ. */
+      angleXiZetaDeg: finite,
+      /** Of B·T and B·R, km²: TT, TR, RR. */
+      covarianceKm2: triple,
+    }),
+  ),
+  stretchingEarthRadiiPerSigma: v.nullable(finite),
+});
+
 const approach = v.object({
   body: bodyName,
   ...instant,
@@ -114,6 +137,9 @@ const approach = v.object({
   crossings: v.array(crossing),
   entry: v.optional(entry),
   surfaceImpact: v.optional(surfaceImpact),
+  uncertainty: v.optional(uncertainty),
+  /** Gaussian of the target plane over the disc of the impact radius. */
+  impactProbability: v.optional(v.object({ firstOrder: finite })),
   /** Heliocentric elements before and after the pass, where the body is the Earth and inside its sphere of influence. */
   orbitBefore: v.optional(elements),
   orbitAfter: v.optional(elements),
@@ -273,6 +299,7 @@ export type Approach = v.InferOutput<typeof approach>;
 export type Crossing = v.InferOutput<typeof crossing>;
 export type Entry = v.InferOutput<typeof entry>;
 export type SurfaceImpact = v.InferOutput<typeof surfaceImpact>;
+export type ApproachUncertainty = v.InferOutput<typeof uncertainty>;
 export type Finding = v.InferOutput<typeof finding>;
 export type ClassicalResult = v.InferOutput<typeof classical>;
 export type Comparison = v.InferOutput<typeof comparison>;

@@ -1,12 +1,15 @@
-import { AU_KM, BODY_RADIUS_KM, DEG_TO_RAD, SECONDS_PER_DAY } from '../constants';
+import { AU_KM, BODY_RADIUS_KM, DEG_TO_RAD, EARTH_RADIUS_KM, SECONDS_PER_DAY } from '../constants';
 import type { ApproachRecord } from '../encounter/approach';
 import type { EncounterEvent } from '../encounter/scan';
 import type { EntryPoint } from '../encounter/surface';
+import type { TargetPlane } from '../encounter/target-plane';
+import { add, dot, scale, type Vec3 } from '../math/vector';
 import type { ClassicalEncounter } from '../orbit/classical';
 import type { Elements } from '../orbit/elements';
 import type { Hyperbola } from '../orbit/hyperbola';
 import { jdFromTdbSeconds } from '../time/convert';
 import { formatIso } from '../time/format';
+import type { FirstOrder } from '../uncertainty/target-ellipse';
 import type {
   Approach,
   ClassicalResult,
@@ -101,7 +104,48 @@ const SURFACE_NOTES: Partial<Record<ApproachRecord['body'], string>> = {
   Moon: 'Selenographic point (mean Earth/polar axis) on a sphere of 1 737.4 km; relief is not modelled.',
 };
 
-export function approachSection(record: ApproachRecord): Approach {
+/** An approach's first-order uncertainty and probability of impact, where the case has a covariance. */
+export interface RecordUncertainty {
+  firstOrder: FirstOrder;
+  /** Null where there is no target plane. */
+  impactProbability: number | null;
+}
+
+function uncertaintySection(
+  { firstOrder, impactProbability }: RecordUncertainty,
+  plane: TargetPlane | null,
+): Pick<Approach, 'uncertainty' | 'impactProbability'> {
+  const { ellipse, range } = firstOrder;
+  const axis = (a: Vec3, b: Vec3, angle: number): Vec3 =>
+    add(scale(a, Math.cos(angle)), scale(b, Math.sin(angle)));
+  const major =
+    plane === null || ellipse === null ? null : axis(plane.t, plane.r, ellipse.angleRad);
+  return {
+    uncertainty: {
+      sigmaDistanceKm: firstOrder.sigmaDistanceKm,
+      sigmaTimeS: firstOrder.sigmaTimeS,
+      sigmaSpeedKmS: firstOrder.sigmaSpeedKmS,
+      distance3SigmaKm: [range[0], range[1]],
+      ellipse:
+        plane === null || ellipse === null || major === null
+          ? null
+          : {
+              semiMajorKm: ellipse.semiMajorKm,
+              semiMinorKm: ellipse.semiMinorKm,
+              angleTrDeg: deg(ellipse.angleRad),
+              angleXiZetaDeg: deg(Math.atan(dot(major, plane.zeta) / dot(major, plane.xi))),
+              covarianceKm2: [...ellipse.covariance],
+            },
+      stretchingEarthRadiiPerSigma: ellipse === null ? null : ellipse.semiMajorKm / EARTH_RADIUS_KM,
+    },
+    ...(impactProbability === null ? {} : { impactProbability: { firstOrder: impactProbability } }),
+  };
+}
+
+export function approachSection(
+  record: ApproachRecord,
+  uncertainty: RecordUncertainty | null,
+): Approach {
   const { hyperbola, plane, entry, surface } = record;
   return {
     body: record.body,
@@ -140,6 +184,7 @@ export function approachSection(record: ApproachRecord): Approach {
             note: SURFACE_NOTES[record.body] ?? '',
           },
         }),
+    ...(uncertainty === null ? {} : uncertaintySection(uncertainty, plane)),
   };
 }
 

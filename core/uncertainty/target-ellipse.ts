@@ -22,7 +22,9 @@ export interface FirstOrder {
 
 /** An approach with what its uncertainty needs. */
 export interface ApproachState {
-  /** Relative to the body at closest approach (or at the entry sphere), km, km/s, ICRF. */
+  /** At closest approach, or (for an impact) on a sphere that it passes on the way in. */
+  kind: 'closest' | 'sphere';
+  /** Relative to the body, km, km/s, ICRF. */
   r: Vec3;
   v: Vec3;
   /** Acceleration relative to the body, km/s². */
@@ -47,35 +49,48 @@ export interface ApproachState {
  */
 export function firstOrderOf(state: ApproachState, covariance: Float64Array): FirstOrder {
   const { r, v, a } = state;
-  // r·v = 0 moves with its own time: δt = −(v·δr + r·δv) / (v² + r·a).
-  const rate = dot(v, v) + dot(r, a);
-  const time = Float64Array.from([...scale(v, -1 / rate), ...scale(r, -1 / rate)]);
   const out = unit(r);
   const ahead = unit(v);
-  const along = dot(ahead, a);
-  const distance = Float64Array.from([...out, 0, 0, 0]);
-  const speed = Float64Array.from([0, 0, 0, ...ahead]).map((x, i) => x + along * time[i]);
+  const b = targetPlaneJacobian(state);
   const jacobian = new Float64Array(18);
-  jacobian.set(distance);
-  jacobian.set(time, 6);
-  jacobian.set(speed, 12);
+  if (state.kind === 'closest') {
+    // r·v = 0 moves with its own time: δt = −(v·δr + r·δv) / (v² + r·a).
+    const rate = -1 / (dot(v, v) + dot(r, a));
+    jacobian.set([...out, 0, 0, 0]);
+    jacobian.set([...scale(v, rate), ...scale(r, rate)], 6);
+  } else {
+    // |r| = R moves with its own time: δt = −(r·δr) / (r·v); the distance is the periapsis of |B|.
+    const size = Math.hypot(state.bDotTKm, state.bDotRKm);
+    const slope = size / Math.hypot(size, state.gm / excessSpeed2(state));
+    const [t, s] = [state.bDotTKm / size, state.bDotRKm / size];
+    for (let k = 0; k < 6; k++) jacobian[k] = slope * (t * b[k] + s * b[6 + k]);
+    jacobian.set([...scale(out, -1 / dot(out, v)), 0, 0, 0], 6);
+  }
+  const along = dot(ahead, a);
+  for (let k = 0; k < 6; k++)
+    jacobian[12 + k] = (k < 3 ? 0 : ahead[k - 3]) + along * jacobian[6 + k];
   const own = carried(jacobian, covariance, 6);
   const sigma = (i: number): number => Math.sqrt(Math.max(0, own[i * 4]));
-  const ellipse = state.axes === null ? null : ellipseOf(state, covariance);
+  const ellipse = state.axes === null ? null : ellipseOf(carried(b, covariance, 6));
   return {
     sigmaDistanceKm: sigma(0),
     sigmaTimeS: sigma(1),
     sigmaSpeedKmS: sigma(2),
     ellipse,
     range:
-      ellipse === null
+      ellipse === null || state.distanceKm > HYPERBOLIC_KM
         ? [Math.max(0, state.distanceKm - 3 * sigma(0)), state.distanceKm + 3 * sigma(0)]
         : rangeOf(state, ellipse.covariance),
   };
 }
 
-function ellipseOf(state: ApproachState, covariance: Float64Array): FirstOrder['ellipse'] {
-  const p = carried(targetPlaneJacobian(state), covariance, 6);
+/** Farther out the Sun bends the path as much as the body: the straight range is the better one, km. */
+const HYPERBOLIC_KM = 1e6;
+
+const excessSpeed2 = (state: ApproachState): number =>
+  dot(state.v, state.v) - (2 * state.gm) / norm(state.r);
+
+function ellipseOf(p: Float64Array): FirstOrder['ellipse'] {
   const { values, vectors } = eigenSymmetric(p, 2);
   const angle = Math.atan2(vectors[1], vectors[0]);
   const half = Math.PI / 2;
@@ -142,8 +157,7 @@ function rangeOf(state: ApproachState, [tt, tr, rr]: [number, number, number]): 
       : (b[0] * vectors[i * 2] + b[1] * vectors[i * 2 + 1]) / size;
   });
   const inside = Math.hypot(centred[0], centred[1]) < 1;
-  const speed2 = dot(state.v, state.v) - (2 * state.gm) / norm(state.r);
-  const a = state.gm / speed2;
+  const a = state.gm / excessSpeed2(state);
   const periapsis = (size: number): number => (size * size) / (Math.hypot(a, size) + a);
   return [inside ? 0 : periapsis(least), periapsis(most)];
 }
