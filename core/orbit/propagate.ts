@@ -95,7 +95,8 @@ function onClosedOrbit(r: Vec3, v: Vec3, gm: number, alpha: number, dtS: number)
   const period = (2 * Math.PI * gm) / alpha ** 1.5;
   const turns = Math.round(dt / period);
   if (turns !== 0) dt -= turns * period;
-  if (dt === 0) return { r, v };
+  // Below this nothing moves, and the products of the search would underflow.
+  if (Math.abs(dt) < 1e-100) return { r, v };
   const forward = dt > 0 ? 1 : -1;
   // s grows at the rate 1/r; a whole turn is 2π/√α, and dt is at most half a period.
   const turn = (2 * Math.PI) / Math.sqrt(alpha);

@@ -4,8 +4,6 @@ import type { Vec3 } from '../../core/math/vector';
 import { elementsFromState, stateFromElements } from '../../core/orbit/elements';
 import { hyperbolaFromState, speedAtRadius } from '../../core/orbit/hyperbola';
 import {
-  eccentricAnomaly,
-  hyperbolicAnomaly,
   meanMotion,
   trueAnomalyFromMean,
   trueAnomalyFromTimeSincePeriapsis,
@@ -21,70 +19,9 @@ import { propagateTwoBody } from '../../core/orbit/propagate';
 const deg = (radians: number): number => radians / DEG_TO_RAD;
 
 describe('examples of Vallado, Fundamentals of Astrodynamics (from memory)', () => {
-  const GM = 398600.4418;
-
-  it('2-1: M = 235.4°, e = 0.4 gives E = 220.512074°', () => {
-    const e = deg(eccentricAnomaly(235.4 * DEG_TO_RAD, 0.4));
-    expect(e + 360).toBeCloseTo(220.512074, 5);
-  });
-
   it('2-2: 53.7874 min after periapsis of a parabola of p = 25 512 km, tan(ν/2) = 0.81775', () => {
-    const anomaly = trueAnomalyFromTimeSincePeriapsis(53.7874 * 60, 25512 / 2, 1, GM);
+    const anomaly = trueAnomalyFromTimeSincePeriapsis(53.7874 * 60, 25512 / 2, 1, 398600.4418);
     expect(Math.tan(anomaly / 2)).toBeCloseTo(0.81775, 4);
-  });
-
-  it('2-3: M = 235.4°, e = 2.4 gives H = 1.601376', () => {
-    expect(hyperbolicAnomaly(235.4 * DEG_TO_RAD, 2.4)).toBeCloseTo(1.601376, 5);
-  });
-
-  it('2-4: 40 min of an Earth orbit', () => {
-    const { r, v } = propagateTwoBody(
-      [1131.34, -2282.343, 6672.423],
-      [-5.64305, 4.30333, 2.42879],
-      GM,
-      2400,
-    );
-    // 5e-3 km and 5e-6 km/s: the printed digits, and what those of the given state move in 40 min.
-    const expected = [-4219.7527, 4363.0292, -3958.7666, 3.689866, -1.916735, -6.112511];
-    for (let k = 0; k < 3; k++) {
-      expect(Math.abs(r[k] - expected[k])).toBeLessThan(5e-3);
-      expect(Math.abs(v[k] - expected[k + 3])).toBeLessThan(5e-6);
-    }
-  });
-
-  it('2-5: elements of a state', () => {
-    const e = elementsFromState(
-      [6524.834, 6862.875, 6448.296],
-      [4.901327, 5.533756, -1.976341],
-      GM,
-    );
-    expect(Math.abs(e.semiLatusRectumKm - 11067.79)).toBeLessThan(0.05);
-    expect(Math.abs((e.semiMajorAxisKm ?? 0) - 36127.343)).toBeLessThan(0.1);
-    expect(e.eccentricity).toBeCloseTo(0.832853, 5);
-    expect(deg(e.inclinationRad)).toBeCloseTo(87.87, 2);
-    expect(deg(e.nodeRad)).toBeCloseTo(227.898, 2);
-    expect(deg(e.argumentOfPeriapsisRad)).toBeCloseTo(53.38, 1);
-    expect(deg(e.trueAnomalyRad)).toBeCloseTo(92.335, 2);
-  });
-
-  it('2-6: the state of these elements, which are printed to two decimals', () => {
-    const { r, v } = stateFromElements(
-      {
-        semiLatusRectumKm: 11067.79,
-        eccentricity: 0.83285,
-        inclinationRad: 87.87 * DEG_TO_RAD,
-        nodeRad: 227.89 * DEG_TO_RAD,
-        argumentOfPeriapsisRad: 53.38 * DEG_TO_RAD,
-        trueAnomalyRad: 92.335 * DEG_TO_RAD,
-      },
-      GM,
-    );
-    // 0.1 km: the last printed digit of p and e at this distance.
-    const expected = [6525.344, 6861.535, 6449.125, 4.902276, 5.533124, -1.975709];
-    for (let k = 0; k < 3; k++) {
-      expect(Math.abs(r[k] - expected[k])).toBeLessThan(0.1);
-      expect(Math.abs(v[k] - expected[k + 3])).toBeLessThan(1e-4);
-    }
   });
 });
 
