@@ -1,0 +1,217 @@
+import type { SceneName } from '../plate/scene-source';
+import { dot, ECLIPTIC_POLE_ICRF, scale, subtract, type Vec3, vec3 } from '../worker/core-geometry';
+import { CurvePoints, decimate } from './curve';
+import type { Encounter } from './encounter';
+import { distance, offset } from './figures';
+import { label, objectMark, ring, tick } from './marks';
+import { tickOffsets } from './path-ticks';
+import type { PicturePoint } from './projection';
+import type { Moment, Sheet } from './sheet';
+import {
+  OBJECT_GEOCENTRIC,
+  OBJECT_HELIOCENTRIC,
+  type TrajectoryCurve,
+  trajectoryCurve,
+  UNPERTURBED_GEOCENTRIC,
+  UNPERTURBED_HELIOCENTRIC,
+} from './trajectory-curve';
+
+/** The object's path in a scene: where it has been, where it will be, and without the Earth's pull. */
+
+const MOST_TICKS = 9;
+const LEAST_PASS_PX = 14;
+/** Halvings that find where the path leaves the picture. */
+const EDGE_STEPS = 10;
+/** Marks nearer than this to the pass or the object are left out, px. */
+const TICK_ROOM_PX = 16;
+/** The unperturbed path is named where it stands this clear of the n-body path, px. */
+const APART_PX = 26;
+
+const points = new CurvePoints();
+const unperturbedPoints = new CurvePoints();
+
+export function drawPath(sheet: Sheet, moment: Moment, scene: SceneName): void {
+  const { trajectory, sample, encounter } = moment;
+  const { pen, inks, projector } = sheet;
+  const own = trajectoryCurve(
+    trajectory,
+    scene === 'earth' ? OBJECT_GEOCENTRIC : OBJECT_HELIOCENTRIC,
+  );
+  if (moment.showUnperturbed) drawUnperturbed(sheet, moment, scene, own);
+  decimate(own, projector, points);
+  const now = own.parameterAt(sample[0]);
+  const split = splitAt(own, points, now);
+  pen.line(split.before, split.before.length / 3, inks.behind);
+  pen.line(split.after, split.after.length / 3, inks.ahead);
+  drawTicks(sheet, moment, scene, own);
+  if (scene === 'earth') markPass(sheet, own, encounter);
+}
+
+/** The pass on the path, once it stands clear of the Earth's middle. */
+function markPass(sheet: Sheet, own: TrajectoryCurve, encounter: Encounter): void {
+  const { inks, projector } = sheet;
+  const { passKm } = encounter;
+  if (passKm === null || passKm * projector.pxPerKm < LEAST_PASS_PX) return;
+  const point = pointOf(sheet, own, encounter.tdbSeconds);
+  if (point === null) return;
+  ring(sheet, point, 3.2, inks.palette.object);
+  label(sheet, point, {
+    id: 'pass',
+    text: `closest, ${distance(passKm)}`,
+    gap: 8,
+    style: 'note',
+    colour: inks.palette.object,
+    priority: 60,
+  });
+}
+
+/** The points before and after a parameter, both with the curve's own point there. */
+export function splitAt(
+  curve: TrajectoryCurve,
+  all: CurvePoints,
+  parameter: number,
+): { before: Float64Array; after: Float64Array } {
+  let k = 0;
+  while (k < all.count && all.parameters[k] < parameter) k += 1;
+  const here = new Float64Array(3);
+  curve.at(parameter, here, 0);
+  const before = new Float64Array(3 * (k + 1));
+  before.set(all.xyz.subarray(0, 3 * k));
+  before.set(here, 3 * k);
+  const after = new Float64Array(3 * (all.count - k + 1));
+  after.set(here);
+  after.set(all.xyz.subarray(3 * k, 3 * all.count), 3);
+  return { before, after };
+}
+
+function pointOf(sheet: Sheet, curve: TrajectoryCurve, tdbSeconds: number): PicturePoint | null {
+  const here = new Float64Array(3);
+  curve.at(curve.parameterAt(tdbSeconds), here, 0);
+  return visiblePoint(sheet, vec3(here));
+}
+
+/** The picture of a point, null when it is off it or behind a globe. */
+export function visiblePoint(sheet: Sheet, p: Vec3): PicturePoint | null {
+  const { projector, pen } = sheet;
+  const point = projector.project(p);
+  if (point === null || !projector.shows(point)) return null;
+  const fromEye = subtract(p, projector.eye);
+  return pen.globes.some((globe) => globe.hides(fromEye)) ? null : point;
+}
+
+function drawUnperturbed(
+  sheet: Sheet,
+  moment: Moment,
+  scene: SceneName,
+  own: TrajectoryCurve,
+): void {
+  const { pen, inks, projector } = sheet;
+  const terms = scene === 'earth' ? UNPERTURBED_GEOCENTRIC : UNPERTURBED_HELIOCENTRIC;
+  const curve = trajectoryCurve(moment.trajectory, terms);
+  const flown = unperturbedPoints;
+  decimate(curve, projector, flown);
+  pen.line(flown.xyz, flown.count, inks.unperturbed);
+  // Named in the middle of the stretch that is seen apart from the n-body path.
+  const apart: PicturePoint[] = [];
+  const here = new Float64Array(3);
+  for (let i = 0; i < flown.count; i++) {
+    const point = visiblePoint(sheet, vec3(flown.xyz, 3 * i));
+    if (point === null) continue;
+    own.at(flown.parameters[i], here, 0);
+    const twin = projector.project(vec3(here));
+    if (twin === null || Math.hypot(twin.x - point.x, twin.y - point.y) > APART_PX) {
+      apart.push(point);
+    }
+  }
+  if (apart.length === 0) return;
+  label(sheet, apart[apart.length >> 1], {
+    id: 'unperturbed',
+    text: 'unperturbed',
+    gap: 6,
+    style: 'note',
+    colour: inks.palette.object,
+    priority: 30,
+  });
+}
+
+function drawTicks(sheet: Sheet, moment: Moment, scene: SceneName, own: TrajectoryCurve): void {
+  const { inks } = sheet;
+  const at = moment.encounter.tdbSeconds;
+  const seen = seenOffsets(sheet, own, at);
+  if (seen === null) return;
+  const here = new Float64Array(3);
+  const beside = new Float64Array(3);
+  let last: PicturePoint | null = pointOf(sheet, own, at);
+  for (const seconds of tickOffsets(seen[0], seen[1], MOST_TICKS)) {
+    const parameter = own.parameterAt(at + seconds);
+    own.at(parameter, here, 0);
+    const p = vec3(here);
+    const point = visiblePoint(sheet, p);
+    if (scene === 'sun' && point !== null) dropLine(sheet, p);
+    if (point === null) continue;
+    own.at(Math.min(own.to, parameter + 1e-3), beside, 0);
+    tick(sheet, point, subtract(vec3(beside), p), 3.5, inks.objectHair);
+    if (last !== null && Math.hypot(point.x - last.x, point.y - last.y) < TICK_ROOM_PX) continue;
+    last = point;
+    label(sheet, point, {
+      id: `tick ${seconds}`,
+      text: offset(seconds),
+      gap: 6,
+      style: 'figure',
+      colour: inks.palette.inkSoft,
+      priority: 20,
+    });
+  }
+}
+
+/** Offsets from the pass between which the path is on the picture. */
+function seenOffsets(sheet: Sheet, own: TrajectoryCurve, at: number): [number, number] | null {
+  const here = new Float64Array(3);
+  const isSeen = (parameter: number): boolean => {
+    own.at(parameter, here, 0);
+    const point = sheet.projector.project(vec3(here));
+    return point !== null && sheet.projector.shows(point);
+  };
+  const seen = [...points.parameters.subarray(0, points.count)].filter(isSeen);
+  if (seen.length === 0) return null;
+  const edge = (inside: number, neighbour: number): number => {
+    let [on, off] = [inside, neighbour];
+    for (let i = 0; i < EDGE_STEPS && !isSeen(off); i++) {
+      const middle = (on + off) / 2;
+      if (isSeen(middle)) on = middle;
+      else off = middle;
+    }
+    return own.timeAt(on) - at;
+  };
+  const first = points.parameters.indexOf(seen[0]);
+  const last = points.parameters.indexOf(seen[seen.length - 1]);
+  return [
+    edge(seen[0], points.parameters[Math.max(0, first - 1)]),
+    edge(seen[seen.length - 1], points.parameters[Math.min(points.count - 1, last + 1)]),
+  ];
+}
+
+/** A plumb line to the plane of the ecliptic. */
+export function dropLine(sheet: Sheet, p: Vec3, stroke = sheet.inks.grid): void {
+  const height = dot(p, ECLIPTIC_POLE_ICRF);
+  sheet.pen.segmentLine(p, subtract(p, scale(ECLIPTIC_POLE_ICRF, height)), stroke);
+}
+
+/** The object's marker and name at a place of the scene. */
+export function drawObject(sheet: Sheet, p: Vec3, name: string): void {
+  const { projector, pen, inks } = sheet;
+  const point = projector.project(p);
+  if (point === null) return;
+  const fromEye = subtract(p, projector.eye);
+  const hidden = pen.globes.some((globe) => globe.hides(fromEye));
+  objectMark(sheet, point, hidden);
+  label(sheet, point, {
+    id: 'object',
+    text: name,
+    gap: 11,
+    style: 'name',
+    colour: inks.palette.object,
+    priority: 100,
+    must: true,
+  });
+}

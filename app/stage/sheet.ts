@@ -1,0 +1,34 @@
+import type { Report } from '../../core/report/report';
+import type { NamedDistances } from '../store/store';
+import type { Trajectory } from '../worker/trajectory';
+import type { Encounter } from './encounter';
+import type { Inks } from './inks';
+import type { Box, Label } from './labels';
+import type { Pen } from './pen';
+import type { Projector } from './projection';
+
+/** What a scene is drawn on: the pen for lines, the overlay for marks, and the lettering to come. */
+export interface Sheet {
+  readonly pen: Pen;
+  readonly projector: Projector;
+  /** The overlay, in px. */
+  readonly context: CanvasRenderingContext2D;
+  readonly inks: Inks;
+  /** Device pixels per px. */
+  readonly pixelRatio: number;
+  readonly labels: Label[];
+  /** Boxes that the lettering keeps clear of. */
+  readonly taken: Box[];
+}
+
+/** What a scene shows: the streamed states at one moment and what is known of the case. */
+export interface Moment {
+  /** Two samples at least. */
+  readonly trajectory: Trajectory;
+  readonly sample: Float64Array;
+  /** Of this trajectory. */
+  readonly report: Report | null;
+  readonly encounter: Encounter;
+  readonly namedDistances: NamedDistances;
+  readonly showUnperturbed: boolean;
+}
