@@ -37,6 +37,7 @@ export function StagePlace() {
   const { store } = useDesk();
   const layout = useDeskStore((state) => state.stageLayout);
   const principal = useDeskStore((state) => principalOf(state.report));
+  const hasSettled = useFirstReading();
   const [enlarged, setEnlarged] = useState<PlateName | null>(null);
   const charts = principal === null ? [] : CHARTS.filter((chart) => chart.fits(principal));
   const large = charts.find((chart) => chart.name === enlarged) ?? null;
@@ -73,9 +74,7 @@ export function StagePlace() {
       </header>
       <div className="stage-place-scenes" hidden={large !== null}>
         <ChunkBoundary what="The scenes">
-          <Suspense fallback={<p className="stage-place-wait">The scenes are being drawn.</p>}>
-            <Stage />
-          </Suspense>
+          <Suspense fallback={<Waiting />}>{hasSettled ? <Stage /> : <Waiting />}</Suspense>
         </ChunkBoundary>
       </div>
       {large !== null && (
@@ -107,6 +106,21 @@ export function StagePlace() {
       )}
     </section>
   );
+}
+
+function Waiting() {
+  return <p className="stage-place-wait">The scenes are being drawn.</p>;
+}
+
+/**
+ * True once the first case has been read, or there is none to wait for: the sheet is usable before
+ * the 3-D chunk takes the thread to set itself up.
+ */
+function useFirstReading(): boolean {
+  const isRead = useDeskStore(({ reading, run }) => reading !== null || run.status === 'failed');
+  const [was, setWas] = useState(isRead);
+  if (isRead && !was) setWas(true);
+  return was;
 }
 
 function Chart({ name, word }: { name: PlateName; word: string }) {
