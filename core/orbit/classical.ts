@@ -66,8 +66,10 @@ const TIME_TOLERANCE_S = 1e-3;
  * The classical chain: two-body orbits about the Sun, sphere of influence, geocentric hyperbola.
  *
  * @param input states at the epoch and the boundaries
- * @returns     the chain's result; parts that do not come about are null. An object inside the sphere
- *              at the epoch takes its geocentric state there, and the entry by running back.
+ * @returns     the chain's result; parts that do not come about are null. An object that is inside
+ *              the sphere at the epoch, on the passage of its closest approach, takes its geocentric
+ *              state there and the entry by running that hyperbola back; bound to the Earth, it
+ *              counts as entering at the epoch.
  * @throws      DegenerateOrbit, KeplerFailure for states with no orbit
  * Accuracy: that of its assumptions; it is the first answer and the cross-check of the n-body one.
  * Source: patched conics, Bate, Mueller & White, Fundamentals of Astrodynamics (1971), ch. 7 and 8.

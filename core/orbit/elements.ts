@@ -57,7 +57,8 @@ function positive(angle: number): number {
  *           node is set to 0 (along x). Circular: the argument of periapsis is set to 0 and the true
  *           anomaly counts from the node.
  * @throws   DegenerateOrbit for rectilinear motion (|r × v| below 1e-12 |r||v|)
- * Accuracy: round trip ROUNDTRIP
+ * Accuracy: round trip within 1e-12 of the state for 0 ≤ e ≤ 10 out to 300 semi-latus recta (check).
+ *           Farther out a true anomaly no longer holds the distance: 2e-16 e r/p of it per rounding.
  * Source: Vallado, Fundamentals of Astrodynamics (2013), algorithm 9; e and 1/a from the energy.
  */
 export function elementsFromState(r: Vec3, v: Vec3, gm: number): Elements {

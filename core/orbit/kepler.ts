@@ -3,9 +3,23 @@
  *
  * Both equations are written so that nothing cancels near the parabola and the periapsis:
  * (1 − e)E + e(E − sin E) = M and (e − 1)H + e(sinh H − H) = M, with series for the brackets.
+ *
+ * Largest errors against 60-digit arithmetic, |M| from 1e-12 to 1e4 (tests/checks/orbit-exact):
+ *
+ *     e                    anomaly, roundings   true anomaly, roundings   true anomaly, rad
+ *     0 to 0.9                   1.0                    2.0                  2.8e-13
+ *     0.97 to 0.999              1.3                    1.4                  4.4e-14
+ *     1 − 1e-5 to 1 − 1e-16      1.3                    1.4                  4.4e-16
+ *     1                           –                     1.6                  4.4e-16
+ *     1 + 2e-16 to 1 + 1e-5      1.3                    1.4                  2.2e-16
+ *     1.001 to 1.1               1.4                    1.5                  2.2e-16
+ *     1.5 to 10                  1.6                    2.1                  4.4e-16
+ *
+ * A rounding is half a unit in the last place of the answer and of M together; the third column is
+ * the reduction of M by up to 1600 turns.
  */
 
-/** Newton steps before an iteration gives up; the measured most over the table's domain is 11. */
+/** Newton steps before an iteration gives up; it takes 5 at most over the table's domain. */
 const MOST_STEPS = 60;
 
 /** Newton's method squares the relative error: after a step this small the next is below rounding. */
@@ -46,7 +60,7 @@ function wrapped(angle: number): number {
  * @param eccentricity 0 ≤ e < 1
  * @returns            eccentric anomaly, radians, in [−π, π] for the reduced mean anomaly
  * @throws             RangeError outside the domain
- * Accuracy: residual of the equation within 4 roundings of M for 0 ≤ e < 1.
+ * Accuracy: the table above.
  * Source: Kepler's equation; Newton's method kept in a bracket (Press et al. 2007, 9.4).
  */
 export function eccentricAnomaly(meanAnomaly: number, eccentricity: number): number {
@@ -81,22 +95,29 @@ export function eccentricAnomaly(meanAnomaly: number, eccentricity: number): num
  *
  * @param meanAnomaly  radians, any sign
  * @param eccentricity e > 1
- * @param above        e − 1, where the caller knows it better than e holds it (near the parabola)
  * @returns            hyperbolic anomaly H of e sinh H − H = M
  * @throws             RangeError outside the domain
  * Accuracy: the table above.
+ */
+export function hyperbolicAnomaly(meanAnomaly: number, eccentricity: number): number {
+  if (!(eccentricity > 1) || !Number.isFinite(meanAnomaly)) {
+    throw new RangeError(
+      `hyperbolicAnomaly: e = ${eccentricity}, M = ${meanAnomaly}; expected e > 1`,
+    );
+  }
+  return solveHyperbola(meanAnomaly, eccentricity, eccentricity - 1);
+}
+
+/**
+ * Root H of (e − 1)H + e(sinh H − H) = M, for a caller that knows e − 1 better than e holds it.
+ *
+ * @param meanAnomaly radians, finite
+ * @param e           eccentricity, 1 or more
+ * @param above       e − 1; 0 for a straight line
  * Source: Newton's method from an upper bound of the root, where the equation is convex. Both
  * bounds follow from sinh H − H ≥ H³/6.
  */
-export function hyperbolicAnomaly(
-  meanAnomaly: number,
-  eccentricity: number,
-  above = eccentricity - 1,
-): number {
-  const e = eccentricity;
-  if (!(above > 0) || !Number.isFinite(meanAnomaly)) {
-    throw new RangeError(`hyperbolicAnomaly: e = ${e}, M = ${meanAnomaly}; expected e > 1`);
-  }
+export function solveHyperbola(meanAnomaly: number, e: number, above: number): number {
   const m = Math.abs(meanAnomaly);
   const cubic = cubicStart(above, e / 6, m);
   let x = Math.min(cubic, Math.asinh((m + cubic) / e));
