@@ -1,3 +1,5 @@
+import { benchPage } from './page';
 import { benchPropagation } from './propagation';
 
 await benchPropagation();
+await benchPage();
