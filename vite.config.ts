@@ -1,10 +1,18 @@
 import react from '@vitejs/plugin-react';
 import { defineConfig } from 'vitest/config';
 
+/** While developing, Vite puts styles into the page itself; the built page's policy allows none. */
+const stylesWhileDeveloping = {
+  name: 'styles-while-developing',
+  apply: 'serve' as const,
+  transformIndexHtml: (html: string) =>
+    html.replace("style-src 'self'", "style-src 'self' 'unsafe-inline'"),
+};
+
 export default defineConfig({
-  plugins: [react()],
+  plugins: [react(), stylesWhileDeveloping],
   base: './',
-  build: { target: 'es2023', sourcemap: false, assetsInlineLimit: 0 },
+  build: { target: 'es2023', sourcemap: false, assetsInlineLimit: 0, chunkSizeWarningLimit: 1000 },
   worker: { format: 'es' },
   server: { port: 5173 },
   preview: { port: 4173 },

@@ -6,6 +6,8 @@ import { chromium, type Page } from 'playwright-core';
 import { build, preview } from 'vite';
 import { findChromium } from '../../.ci/chromium.mjs';
 import { DEMOS } from '../../app/desk/demos';
+import { writeCaseFile } from '../../core/case/case-file';
+import { readCase } from '../../core/case/read';
 import { smallBodyRecord } from '../helpers/record';
 import { middle, print } from './print';
 
@@ -129,11 +131,11 @@ async function paste(page: Page, text: string): Promise<number> {
   );
 }
 
-/** The open record's elements as a person would paste them, searched to 2029. */
+/** The open record's elements as a case file that asks for the span to 2029. */
 function publishedText(i: number): string {
   const of = (label: string): string =>
     smallBodyRecord.orbit.elements.find((item) => item.label === label)?.value ?? '';
-  return `heliocentric ecliptic J2000, case ${'abcdefgh'[i]}
+  const text = `heliocentric ecliptic J2000, case ${'abcdefgh'[i]}
 Epoch JD ${smallBodyRecord.orbit.epoch} TDB
 q = ${of('q')} au
 e = ${of('e')}
@@ -142,4 +144,8 @@ node = ${of('node')}
 argp = ${of('peri')}
 Tp = JD ${of('tp')}
 `;
+  const choices = { spanTo: '2029-06-01' };
+  const { case: orbit } = readCase(text, choices);
+  if (orbit === null) throw new Error('the record does not read');
+  return writeCaseFile(orbit, { text, choices, clockTdbSeconds: null, plateFindings: [] });
 }

@@ -5,7 +5,19 @@ import { createForceModel } from '../../../core/dynamics/force-model';
 import { createPropagator } from '../../../core/dynamics/propagate';
 import type { TargetBody } from '../../../core/encounter/targets';
 import { createEphemeris, type Ephemeris, loadEphemeris } from '../../../core/ephemeris';
-import { cross, norm, scale, unit, type Vec3 } from '../../../core/math/vector';
+import { celestialToTerrestrial, earthOrientation } from '../../../core/frames/earth-orientation';
+import { itrfFromGeodetic } from '../../../core/frames/geodetic';
+import { moonBodyFixed } from '../../../core/frames/moon-orientation';
+import {
+  cross,
+  dot,
+  norm,
+  rotate,
+  rotateBack,
+  scale,
+  unit,
+  type Vec3,
+} from '../../../core/math/vector';
 import { epochFromTdbSeconds } from '../../../core/time/convert';
 import { assessCase, caseOf, fetchPacked } from '../../helpers/assess';
 
@@ -142,6 +154,68 @@ describe('the search for close approaches', () => {
     const period = (2 * Math.PI * Math.sqrt(a ** 3 / 398600.4354)) / DAY;
     expect(perigees).toHaveLength(1 + Math.floor(15 / period));
     for (const item of perigees) expect(item.excessSpeedKmS).toBeNull();
+  });
+});
+
+describe('an impact', () => {
+  /** A state on a surface, moving inwards at some angle. */
+  async function strike(body: 'Earth' | 'Moon', r: Vec3, v: Vec3, at: number) {
+    const s = stateBefore(body, r, v, at, 3 * DAY);
+    const { report } = await assessCase(
+      caseOf({
+        epoch: epochFromTdbSeconds(at - 3 * DAY, 'TDB'),
+        axes: 'ICRF',
+        state: {
+          kind: 'cartesian',
+          positionKm: [s[0], s[1], s[2]],
+          velocityKmS: [s[3], s[4], s[5]],
+        },
+      }),
+    );
+    const found = report.approaches[report.principal ?? -1];
+    return { report, found };
+  }
+
+  it('on the Moon has its instant, place and angle, and ends the trajectory', async () => {
+    const at = 1.02e9;
+    const side = unit([0.3, -0.8, 0.4]);
+    const r = scale(side, 1737.4);
+    const v = scale(unit([-0.9, 0.5, -0.2]), 14);
+    const { report, found } = await strike('Moon', r, v, at);
+    expect([found.body, found.outcome, found.osculatingAt]).toEqual(['Moon', 'impact', 'surface']);
+    const spot = found.surfaceImpact;
+    expect(Math.abs((spot?.tdbSeconds ?? 0) - at)).toBeLessThan(1e-3);
+    expect(spot?.speedKmS).toBeCloseTo(14, 6);
+    const sine = dot(unit(r), unit(v));
+    expect(spot?.flightPathAngleDeg).toBeCloseTo((Math.asin(sine) * 180) / Math.PI, 4);
+    // The place as a direction of the Moon's own axes.
+    const axes = moonBodyFixed(at);
+    const own = rotate(axes, side);
+    expect(spot?.latitudeDeg).toBeCloseTo((Math.asin(own[2]) * 180) / Math.PI, 4);
+    expect(spot?.longitudeDeg).toBeCloseTo((Math.atan2(own[1], own[0]) * 180) / Math.PI, 4);
+    expect(report.model.trajectoryEnds).toMatch(/Moon/);
+    expect(report.findings[0].text).toMatch(/strikes the Moon/);
+  });
+
+  it('on the Earth is at the geodetic place it was built from, below its entry interface', async () => {
+    const at = 1.03e9;
+    const place = { latitudeRad: -0.4, longitudeRad: 2.1, altitudeKm: 0 };
+    const r = rotateBack(celestialToTerrestrial(earthOrientation(at)), itrfFromGeodetic(place));
+    const v = scale(unit([-r[0] + 2000, -r[1], -r[2] + 1500]), 17);
+    const { report, found } = await strike('Earth', r, v, at);
+    expect([found.body, found.outcome, found.osculatingAt]).toEqual([
+      'Earth',
+      'impact',
+      'entry-sphere',
+    ]);
+    const spot = found.surfaceImpact;
+    expect(Math.abs((spot?.tdbSeconds ?? 0) - at)).toBeLessThan(1e-3);
+    expect(spot?.latitudeDeg).toBeCloseTo((-0.4 * 180) / Math.PI, 5);
+    expect(spot?.longitudeDeg).toBeCloseTo((2.1 * 180) / Math.PI, 5);
+    expect(found.entry?.altitudeKm).toBeCloseTo(100, 6);
+    expect(found.entry?.tdbSeconds).toBeLessThan(at);
+    const after = report.approaches.filter((item) => item.tdbSeconds > at + 3600);
+    expect(after).toEqual([]);
   });
 });
 
