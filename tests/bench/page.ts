@@ -30,6 +30,8 @@ export async function benchPage(): Promise<void> {
   try {
     const context = await browser.newContext({ viewport: { width: 1280, height: 720 } });
     const page = await context.newPage();
+    // What the runner's compiler leaves in functions that are sent to the page.
+    await page.addInitScript('globalThis.__name = (f) => f;');
     await page.addInitScript(() => {
       const seen = globalThis as unknown as { longTasks: number[] };
       seen.longTasks = [];
