@@ -76,6 +76,7 @@ function attempt(text: string, format: NumberFormat): RawCase {
     .slice(0, MOST_LINES)
     .map((original, i) => ({ number: i + 1, text: original, original }));
   raw.invented = /\binvented\b/i.test(text);
+  takeLabelledName(lines, raw);
   takeLabels(lines, raw, format, 'before-epoch');
   takeEpoch(lines, raw);
   takeWords(lines, raw);
@@ -410,18 +411,23 @@ function takeNumbers(lines: Line[], raw: RawCase, format: NumberFormat): void {
   }
 }
 
-/** A name: labelled, or the first line when it is words. */
-function takeName(lines: Line[], raw: RawCase): void {
+/** A labelled name; its line says nothing else. */
+function takeLabelledName(lines: Line[], raw: RawCase): void {
   for (const line of lines) {
     const match =
       /^\s*[#*!%;]*\s*(?:object|name|target|designation|body)\s*(?:name)?\s*[:=]\s*(.+?)\s*$/i.exec(
         line.original,
       );
-    if (match !== null) {
-      raw.fields.set('name', { text: match[1], unit: null, line: line.number, note: null });
-      return;
-    }
+    if (match === null) continue;
+    raw.fields.set('name', { text: match[1], unit: null, line: line.number, note: null });
+    blank(line, 0, line.text.length);
+    return;
   }
+}
+
+/** Without a label: the first line, when it is words. */
+function takeName(lines: Line[], raw: RawCase): void {
+  if (raw.fields.has('name')) return;
   const first = lines.find((line) => line.original.trim() !== '');
   if (first === undefined || /[=:]/.test(first.original)) return;
   const left = first.text.replace(/\s+/g, ' ').trim();

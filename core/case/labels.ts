@@ -12,8 +12,8 @@ export interface Label {
 
 /** A unit in brackets, then "=" or ":". */
 const SIGN = String.raw`\s*(?:[\[(][^\])]{0,12}[\])])?\s*[:=]\s*`;
-/** A label at the start of a line, or behind a comma, may stand without a sign. */
-const BARE = String.raw`(?<=^[\s#*]*|[,;\t]\s*)`;
+/** At the start of a line, behind a comma or in a column of its own a label may stand without a sign. */
+const BARE = String.raw`(?<=^[\s#*|]*|[,;\t|]\s*|\s{2})`;
 
 function label(
   field: FieldName | null,
@@ -24,8 +24,8 @@ function label(
     flags = 'giu',
   }: { bare?: boolean; kind?: Label['kind']; flags?: string } = {},
 ): Label {
-  const signed = String.raw`(?<![\p{L}\d_.])(?:${words})${SIGN}`;
-  const unsigned = String.raw`${BARE}(?:${words})\s*(?:[\[(][^\])]{0,12}[\])])?\s+(?=[+\-\u2212.\d])`;
+  const signed = String.raw`(?<![\p{L}\d_.])(?:${words})\.?${SIGN}`;
+  const unsigned = String.raw`${BARE}(?:${words})\.?\s*(?:[\[(][^\])]{0,12}[\])])?\s+(?=[+\-\u2212.\d])`;
   return {
     field,
     kind,

@@ -56,6 +56,8 @@ describe('six numbers', () => {
     'with commas that group': `${EPOCH}\n-10,919,757.4638 -103,043,558.9999 -70,662,679.3512\n29.4661585877 -11.8193145026 -2.464415455`,
     'with thin spaces that group': `${EPOCH}\n-10\u2009919\u2009757.4638 -103\u2009043\u2009558.9999 -70\u2009662\u2009679.3512\n29.4661585877 -11.8193145026 -2.464415455`,
     'with apostrophes that group': `${EPOCH}\n-10'919'757.4638 -103'043'558.9999 -70'662'679.3512\n29.4661585877 -11.8193145026 -2.464415455`,
+    'as a table with bars': `| Epoch | 2032 May 12.53 TDB |\n| X | ${X[0]} km |\n| Y | ${X[1]} km |\n| Z | ${X[2]} km |\n| VX | ${V[0]} km/s |\n| VY | ${V[1]} km/s |\n| VZ | ${V[2]} km/s |`,
+    'with a name that holds a number': `Object: Invented 7\nPosition (km): ${X.join(' ')}\nVelocity (km/s): ${V.join(' ')}\nEpoch (TDB): 2032-05-12T12:43:12`,
     'with tabs': `${EPOCH}\n${[...X, ...V].join('\t')}`,
     'with comments and a header': `# a state\n${EPOCH}\nheliocentric, ICRF, km, km/s\n${[...X, ...V].join(' ')}`,
   };
@@ -199,6 +201,15 @@ node = 204.446 argp = 126.402 M = 180.43`;
     });
     if (state.kind === 'elements')
       expect(state.periapsisKm / AU_KM).toBeCloseTo(0.7460724295867941, 14);
+  });
+
+  it('are read in two columns with short labels', () => {
+    const text =
+      'Epoch 2460000.5\nM 138.82534\nn 1.5   Peri. 357.0\na 1.2   Node 117.3\ne 0.617 Incl. 3.61';
+    expect(caseOf(text).state).toMatchObject({
+      inclinationDeg: 3.61,
+      argumentOfPeriapsisDeg: 357,
+    });
   });
 
   it('are assumed on the ecliptic when the text does not say', () => {
