@@ -11,6 +11,7 @@ export function SceneObjects(props: { painter: Painter; beforeFrame(): void }) {
         <primitive key={mesh.id} object={mesh} />
       ))}
       <primitive object={painter.lines.mesh} />
+      <primitive object={painter.stamps.mesh} />
     </>
   );
 }

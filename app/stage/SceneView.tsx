@@ -4,7 +4,6 @@ import { useDesk, useDeskStore } from '../store/context';
 import type { NamedDistances, Station } from '../store/store';
 import { usePalette } from '../theme/palette';
 import { type Drawing, SceneEngine } from './engine';
-import { forgetWidths } from './lettering';
 import { Readings } from './Readings';
 import { offerPictures } from './scene-picture';
 import { STATIONS } from './stations';
@@ -22,33 +21,24 @@ export function SceneView({ scene, hidden }: { scene: SceneName; hidden: boolean
   const station = useDeskStore((state) => state[STATION_FIELD[scene]]);
   const [drawing, setDrawing] = useState<Drawing>('drawn');
   const view = useRef<HTMLDivElement>(null);
-  const overlay = useRef<HTMLCanvasElement>(null);
+  const plate = useRef<HTMLDivElement>(null);
   const words = useRef<HTMLDivElement>(null);
   const engine = useRef<SceneEngine | null>(null);
   const firstPalette = useRef(palette);
   const description = useDescription(scene, station);
 
   useEffect(() => {
-    const context = overlay.current?.getContext('2d') ?? null;
-    if (view.current === null || context === null) return;
-    const own = new SceneEngine(
-      scene,
-      desk,
-      view.current,
-      context,
-      firstPalette.current,
-      setDrawing,
-    );
+    if (plate.current === null) return;
+    const own = new SceneEngine(scene, desk, plate.current, firstPalette.current, setDrawing);
     engine.current = own;
     const stopPictures = offerPictures(scene, own);
-    const observer = new ResizeObserver(() => measure(own, view.current, words.current));
-    observer.observe(view.current);
+    const observer = new ResizeObserver(() => measure(own, plate.current, words.current));
+    observer.observe(plate.current);
     if (words.current !== null) observer.observe(words.current);
     let gone = false;
     void document.fonts.ready.then(() => {
       if (gone) return;
-      forgetWidths();
-      own.invalidate();
+      own.rewrite();
     });
     return () => {
       gone = true;
@@ -92,7 +82,7 @@ export function SceneView({ scene, hidden }: { scene: SceneName; hidden: boolean
           if (pressKey(event.key, engine.current)) event.preventDefault();
         }}
       >
-        <canvas ref={overlay} className="scene-canvas" />
+        <div ref={plate} className="scene-plate" />
         {drawing !== 'drawn' && (
           <p className="scene-undrawn" role="status">
             {UNDRAWN[drawing]}

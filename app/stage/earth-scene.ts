@@ -88,7 +88,7 @@ function drawEarth(
   const centre = projector.project(CENTRE);
   if (!ink.mesh.visible) {
     if (centre === null || earthPx >= LEAST_GLOBE_PX) return;
-    disc(sheet, centre, LEAST_DISC_PX, inks.palette.earth);
+    disc(sheet, centre, LEAST_DISC_PX, inks.rgb.earth);
     nameEarth(sheet, LEAST_DISC_PX);
     return;
   }
@@ -126,7 +126,7 @@ function nameEarth(sheet: Sheet, earthPx: number): void {
     text: 'Earth',
     gap: earthPx + 5,
     style: 'name',
-    colour: sheet.inks.palette.earth,
+    colour: sheet.inks.rgb.earth,
     priority: 50,
   });
 }
@@ -158,7 +158,7 @@ function drawAxis(sheet: Sheet, axes: Mat3): void {
         text: 'N',
         gap: 2,
         style: 'name',
-        colour: inks.palette.earth,
+        colour: inks.rgb.earth,
         priority: 45,
       });
     }
@@ -186,13 +186,13 @@ function drawMoon(sheet: Sheet, moment: Moment, toSun: Vec3, ink: GlobeInk): voi
   }
   const seen = visiblePoint(sheet, scale(place, 1 - (1.01 * MOON_KM) / norm(place)));
   if (point === null || seen === null) return;
-  if (!ink.mesh.visible) disc(sheet, point, LEAST_DISC_PX, inks.palette.moon);
+  if (!ink.mesh.visible) disc(sheet, point, LEAST_DISC_PX, inks.rgb.moon);
   label(sheet, point, {
     id: 'moon',
     text: 'Moon',
     gap: Math.max(LEAST_DISC_PX, radiusPx) + 5,
     style: 'name',
-    colour: inks.palette.moon,
+    colour: inks.rgb.moon,
     priority: 70,
   });
 }
@@ -215,5 +215,5 @@ function drawGroundPoint(sheet: Sheet, moment: Moment, axes: Mat3, earthPx: numb
   // A hair above the ground, so that the ground itself does not hide it.
   const point = visiblePoint(sheet, scale(foot, 1 + 1e-6));
   if (point === null) return;
-  ring(sheet, point, 2.6, inks.palette.object);
+  ring(sheet, point, 2.6, inks.rgb.object);
 }

@@ -54,7 +54,6 @@ export class SceneEngine {
     private readonly scene: SceneName,
     private readonly desk: DeskContext,
     host: HTMLElement,
-    private readonly overlay: CanvasRenderingContext2D,
     palette: Palette,
     private readonly onDrawing: (drawing: Drawing) => void,
   ) {
@@ -92,7 +91,6 @@ export class SceneEngine {
     const lost = (event: Event) => {
       event.preventDefault();
       this.onDrawing('lost');
-      this.clearOverlay();
     };
     const restored = () => {
       this.onDrawing('drawn');
@@ -115,6 +113,12 @@ export class SceneEngine {
     this.root?.unmount();
     this.painter.dispose();
     this.canvas.remove();
+  }
+
+  /** The page's type has arrived. */
+  rewrite(): void {
+    this.painter.stamps.lettering.clear();
+    this.invalidate();
   }
 
   invalidate(): void {
@@ -175,35 +179,26 @@ export class SceneEngine {
     const { state } = this;
     const moment = this.pictureMoments.at(tdbSeconds);
     const out = document.createElement('canvas');
-    const overlay = document.createElement('canvas');
-    for (const canvas of [out, overlay]) {
-      canvas.width = widthPx;
-      canvas.height = heightPx;
-    }
+    out.width = widthPx;
+    out.height = heightPx;
     const context = out.getContext('2d');
-    const over = overlay.getContext('2d');
-    if (state === null || moment === null || context === null || over === null) return null;
+    if (state === null || moment === null || context === null) return null;
     const { gl, scene, camera } = state;
     if (gl.getContext().isContextLost()) return null;
     const ratio = Math.max(1, Math.min(widthPx, heightPx) / PICTURE_SIDE_PX);
     gl.setPixelRatio(1);
     gl.setSize(widthPx, heightPx, false);
     gl.setClearColor(palette.ground);
-    this.painter.draw(
-      moment,
-      {
-        widthPx: widthPx / ratio,
-        heightPx: heightPx / ratio,
-        pixelRatio: ratio,
-        palette,
-        camera: stationCamera(this.scene, station, moment.encounter, moment.sample),
-        taken: [],
-      },
-      over,
-    );
+    this.painter.draw(moment, {
+      widthPx: widthPx / ratio,
+      heightPx: heightPx / ratio,
+      pixelRatio: ratio,
+      palette,
+      camera: stationCamera(this.scene, station, moment.encounter, moment.sample),
+      taken: [],
+    });
     gl.render(scene, camera);
     context.drawImage(gl.domElement, 0, 0, widthPx, heightPx);
-    context.drawImage(overlay, 0, 0);
     gl.setPixelRatio(this.ratio.value);
     gl.setSize(Math.max(1, this.widthPx), Math.max(1, this.heightPx), false);
     this.applyPalette();
@@ -214,11 +209,8 @@ export class SceneEngine {
   }
 
   private applySize(): void {
-    const { state, widthPx, heightPx, overlay } = this;
+    const { state, widthPx, heightPx } = this;
     if (state === null || widthPx === 0 || heightPx === 0) return;
-    const fineness = displayRatio();
-    overlay.canvas.width = Math.round(widthPx * fineness);
-    overlay.canvas.height = Math.round(heightPx * fineness);
     state.setDpr(this.ratio.value);
     state.setSize(widthPx, heightPx);
     this.invalidate();
@@ -229,30 +221,20 @@ export class SceneEngine {
     this.invalidate();
   }
 
-  private clearOverlay(): void {
-    const { canvas } = this.overlay;
-    this.overlay.setTransform(1, 0, 0, 1, 0, 0);
-    this.overlay.clearRect(0, 0, canvas.width, canvas.height);
-  }
-
   private frame(): void {
     const { widthPx, heightPx } = this;
     if (widthPx === 0 || heightPx === 0) return;
     const now = performance.now();
     const moment = this.moments.at(this.desk.clock.tdbSeconds);
     this.reframe(moment, now);
-    this.painter.draw(
-      moment,
-      {
-        widthPx,
-        heightPx,
-        pixelRatio: this.ratio.value,
-        palette: this.palette,
-        camera: this.cameraOf(moment, now),
-        taken: this.taken,
-      },
-      this.overlay,
-    );
+    this.painter.draw(moment, {
+      widthPx,
+      heightPx,
+      pixelRatio: this.ratio.value,
+      palette: this.palette,
+      camera: this.cameraOf(moment, now),
+      taken: this.taken,
+    });
     if (this.rig.moving) this.invalidate();
     if (this.ratio.frame(now)) this.state?.setDpr(this.ratio.value);
   }

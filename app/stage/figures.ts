@@ -36,17 +36,18 @@ export function place(latitudeDeg: number, longitudeDeg: number): string {
   return `${latitude} ${Math.abs(longitudeDeg).toFixed(2)}° ${longitudeDeg < 0 ? 'W' : 'E'}`;
 }
 
-const NBSP = '\u00a0';
+const MINUS = '\u2212';
+const HALF_HOUR_S = 1800;
+const DAY_S = 86400;
 
-/** Time from the pass: "−3 d", "+12 h", "+5 min". */
-export function offset(seconds: number): string {
-  const size = Math.abs(seconds);
-  const sign = seconds < 0 ? '\u2212' : '+';
-  if (size >= 86400) return `${sign}${round(size / 86400)}${NBSP}d`;
-  if (size >= 3600) return `${sign}${round(size / 3600)}${NBSP}h`;
-  return `${sign}${round(size / 60)}${NBSP}min`;
-}
-
-function round(value: number): string {
-  return String(Math.round(value * 10) / 10);
+/**
+ * Time from the pass, "−3 d", "+36 h", "+20 min", in the unit of the step it is counted in.
+ *
+ * @param stepS  spacing of the marks, s
+ */
+export function offset(seconds: number, stepS: number): string {
+  const sign = seconds < 0 ? MINUS : '+';
+  const [unitS, unit] =
+    stepS < HALF_HOUR_S ? [60, 'min'] : stepS < DAY_S ? [3600, 'h'] : [DAY_S, 'd'];
+  return `${sign}${withUnit(String(Math.abs(seconds) / unitS), unit)}`;
 }

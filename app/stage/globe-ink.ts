@@ -2,6 +2,7 @@ import {
   BufferAttribute,
   BufferGeometry,
   CanvasTexture,
+  DoubleSide,
   GLSL3,
   LinearFilter,
   LinearMipmapLinearFilter,
@@ -70,7 +71,7 @@ void main() {
   float turns = depth * hatches;
   float away = abs(fract(turns) - 0.5) / max(fwidth(turns), 1e-6) / pixelRatio;
   float night = clamp(depth * 12.0, 0.0, 1.0);
-  float half_ = 0.3 + 0.35 * clamp(depth, 0.0, 1.0);
+  float half_ = 0.24 + 0.3 * clamp(depth, 0.0, 1.0);
   float line = clamp((half_ - away) * pixelRatio + 0.5, 0.0, 1.0) * hatchStrength;
   vec3 colour = mix(day, landDay, level);
   colour = mix(colour, ink, night * (0.1 + 0.5 * line));
@@ -78,7 +79,7 @@ void main() {
 }`;
 
 /** Spacing of the hatching, px, at the middle of a globe: within a factor of two of this. */
-const HATCH_PX = 5;
+const HATCH_PX = 4;
 /** Below this radius the hatching is only a tint, px. */
 const HATCHED_FROM_PX = 12;
 
@@ -123,6 +124,9 @@ export class GlobeInk {
         pixelRatio: { value: 1 },
       },
       transparent: true,
+      // Pixels count downwards, which turns every face over.
+      side: DoubleSide,
+      forceSinglePass: true,
       depthTest: false,
       depthWrite: false,
     });

@@ -38,6 +38,8 @@ export interface Inks {
   readonly geosynchronous: Stroke;
   readonly interface: Stroke;
   readonly arrow: Stroke;
+  readonly sunRay: Stroke;
+  readonly scale: Stroke;
 }
 
 const made = new Map<Palette, Inks>();
@@ -85,5 +87,7 @@ function makeInks(palette: Palette): Inks {
     geosynchronous: solid(rgb.inkSoft, 0.9, 0.9),
     interface: dashed(rgb.earth, 0.9, 3, 2.5, 0.9),
     arrow: solid(rgb.inkSoft, 1),
+    sunRay: solid(rgb.sun, 1.1),
+    scale: solid(rgb.ink, 1),
   };
 }

@@ -1,4 +1,5 @@
 import { FONT_FIGURES, FONT_TEXT } from '../theme/tokens';
+import type { Rgb } from './inks';
 
 /** The lettering of a scene: placed so that no two labels cross, with a memory against flicker. */
 
@@ -14,9 +15,11 @@ export interface Label {
   /** Clear distance from there, px. */
   readonly gap: number;
   readonly style: LabelStyle;
-  readonly colour: string;
+  readonly colour: Rgb;
   /** The higher is placed first; one that finds no room is left out. */
   readonly priority: number;
+  /** Where it had best stand from its point, any length; to the right when left out. */
+  readonly prefer?: readonly [number, number];
   /** Keep it even where it crosses another. */
   readonly must?: boolean;
 }
@@ -32,10 +35,16 @@ export interface PlacedLabel extends Label {
   readonly box: Box;
 }
 
-export const LABEL_FONTS: Readonly<Record<LabelStyle, string>> = {
-  name: `600 10px ${FONT_TEXT}`,
-  note: `italic 400 11.5px ${FONT_TEXT}`,
-  figure: `400 10.5px ${FONT_FIGURES}`,
+interface LabelFont {
+  readonly weight: string;
+  readonly sizePx: number;
+  readonly family: string;
+}
+
+export const LABEL_FONTS: Readonly<Record<LabelStyle, LabelFont>> = {
+  name: { weight: '600', sizePx: 10, family: FONT_TEXT },
+  note: { weight: 'italic 400', sizePx: 11.5, family: FONT_TEXT },
+  figure: { weight: '400', sizePx: 10.5, family: FONT_FIGURES },
 };
 /** Names are set in spaced capitals. */
 export const NAME_SPACING_PX = 1;
@@ -50,14 +59,27 @@ const SIDES: readonly (readonly [number, number])[] = [
   [-1, 0],
   [0, -1],
   [0, 1],
-  [0.8, -0.8],
-  [-0.8, -0.8],
-  [0.8, 0.8],
-  [-0.8, 0.8],
+  [0.8, -1.2],
+  [-0.8, -1.2],
+  [0.8, 1.2],
+  [-0.8, 1.2],
 ];
 
 export function overlaps(a: Box, b: Box): boolean {
   return a.left < b.right && b.left < a.right && a.top < b.bottom && b.top < a.bottom;
+}
+
+/** Numbers of the sides in the order in which they are tried. */
+function sidesOf(label: Label, last: number | undefined): number[] {
+  const order = [...SIDES.keys()];
+  const { prefer } = label;
+  if (prefer !== undefined) {
+    const liking = (side: number) => SIDES[side][0] * prefer[0] + SIDES[side][1] * prefer[1];
+    order.sort((a, b) => liking(b) - liking(a));
+    // Across the line it belongs to, on one hand or the other, before anything along it.
+    order.splice(1, 0, ...order.splice(order.length - 1, 1));
+  }
+  return last === undefined ? order : [last, ...order];
 }
 
 /** The place of a label on one of its sides. */
@@ -99,7 +121,7 @@ export function placeLabels(
       box.right <= picture.widthPx - EDGE_PX &&
       box.bottom <= picture.heightPx - EDGE_PX;
     const last = memory.get(label.id);
-    const order = last === undefined ? [...SIDES.keys()] : [last, ...SIDES.keys()];
+    const order = sidesOf(label, last);
     const fits = (side: number) => {
       const box = labelBox(label, width, SIDES[side]);
       return inside(box) && !boxes.some((other) => overlaps(box, other));

@@ -1,6 +1,7 @@
 import {
   BufferAttribute,
   BufferGeometry,
+  DoubleSide,
   DynamicDrawUsage,
   GLSL3,
   Mesh,
@@ -72,6 +73,8 @@ export class LineBuffer {
     fragmentShader: FRAGMENT,
     uniforms: { size: { value: new Vector2(1, 1) }, pixelRatio: { value: 1 } },
     transparent: true,
+    side: DoubleSide,
+    forceSinglePass: true,
     depthTest: false,
     depthWrite: false,
   });

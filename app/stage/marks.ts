@@ -1,4 +1,5 @@
 import { dot, type Vec3 } from '../worker/core-geometry';
+import type { Rgb } from './inks';
 import type { Label } from './labels';
 import type { Stroke } from './line-buffer';
 import type { PicturePoint } from './projection';
@@ -6,7 +7,11 @@ import type { Sheet } from './sheet';
 
 /** Marks of a fixed size on the picture: bodies, the object, arrows, ticks, the scale. */
 
-const FULL_TURN = 2 * Math.PI;
+/** A larger disc may be written on, px. */
+const LARGE_PX = 40;
+const MOST_RAYED_PX = 12;
+const RAYS = 16;
+const LOZENGE_PX = 6.5;
 
 /** Keeps the lettering off a mark. */
 export function keepClear(sheet: Sheet, point: PicturePoint, radiusPx: number): void {
@@ -27,96 +32,83 @@ export function label(
 }
 
 /** A body: a disc to scale, or of the least size that can be seen. */
-export function disc(
-  sheet: Sheet,
-  point: PicturePoint,
-  radiusPx: number,
-  fill: string,
-  edge = fill,
-): void {
-  const { context, projector } = sheet;
-  if (!projector.shows(point, radiusPx)) return;
-  context.beginPath();
-  context.arc(point.x, point.y, radiusPx, 0, FULL_TURN);
-  context.fillStyle = fill;
-  context.fill();
-  context.strokeStyle = edge;
-  context.lineWidth = 1;
-  context.stroke();
-  if (radiusPx < 40) keepClear(sheet, point, radiusPx);
+export function disc(sheet: Sheet, point: PicturePoint, radiusPx: number, colour: Rgb): void {
+  if (!sheet.projector.shows(point, radiusPx)) return;
+  sheet.stamps.disc({
+    ...point,
+    halfWidthPx: radiusPx,
+    halfHeightPx: radiusPx,
+    fill: colour,
+    edge: colour,
+    edgePx: 0,
+    haloPx: 1,
+  });
+  if (radiusPx < LARGE_PX) keepClear(sheet, point, radiusPx);
 }
 
 /** The Sun: a disc with short rays. */
 export function sunMark(sheet: Sheet, point: PicturePoint, radiusPx: number): void {
-  const { context, inks } = sheet;
-  disc(sheet, point, radiusPx, inks.palette.sun);
-  if (radiusPx > 12) return;
-  context.beginPath();
-  for (let i = 0; i < 16; i++) {
-    const angle = (i * FULL_TURN) / 16;
-    const reach = i % 2 === 0 ? 6.5 : 4;
+  const { inks, pen } = sheet;
+  disc(sheet, point, radiusPx, inks.rgb.sun);
+  if (radiusPx > MOST_RAYED_PX) return;
+  for (let i = 0; i < RAYS; i++) {
+    const angle = (i * 2 * Math.PI) / RAYS;
     const [c, s] = [Math.cos(angle), Math.sin(angle)];
-    context.moveTo(point.x + c * (radiusPx + 2.5), point.y + s * (radiusPx + 2.5));
-    context.lineTo(point.x + c * (radiusPx + reach), point.y + s * (radiusPx + reach));
+    const ends = [radiusPx + 2.5, radiusPx + (i % 2 === 0 ? 6.5 : 4.2)];
+    pen.flat(
+      ends.map((reach) => ({ x: point.x + c * reach, y: point.y + s * reach })),
+      inks.sunRay,
+    );
   }
-  context.strokeStyle = inks.palette.sun;
-  context.lineWidth = 1.1;
-  context.stroke();
   keepClear(sheet, point, radiusPx + 7);
 }
 
-const LOZENGE_PX = 6.5;
-
 /** The object: a lozenge; hollow when a globe stands before it. */
 export function objectMark(sheet: Sheet, point: PicturePoint, hidden: boolean): void {
-  const { context, inks, projector } = sheet;
+  const { inks, projector, stamps } = sheet;
   if (!projector.shows(point, LOZENGE_PX)) return;
-  const { x, y } = point;
-  context.beginPath();
-  context.moveTo(x, y - LOZENGE_PX);
-  context.lineTo(x + LOZENGE_PX * 0.78, y);
-  context.lineTo(x, y + LOZENGE_PX);
-  context.lineTo(x - LOZENGE_PX * 0.78, y);
-  context.closePath();
-  context.lineJoin = 'miter';
-  context.lineWidth = 3;
-  context.strokeStyle = inks.palette.ground;
-  context.stroke();
-  context.lineWidth = 1.4;
-  context.strokeStyle = inks.palette.object;
-  context.fillStyle = hidden ? inks.palette.ground : inks.palette.object;
-  context.fill();
-  context.stroke();
+  stamps.lozenge({
+    ...point,
+    halfWidthPx: LOZENGE_PX * 0.78,
+    halfHeightPx: LOZENGE_PX,
+    fill: hidden ? inks.rgb.ground : inks.rgb.object,
+    edge: inks.rgb.object,
+    edgePx: 1.3,
+    haloPx: 1.2,
+  });
   keepClear(sheet, point, LOZENGE_PX);
 }
 
 /** A small ring: a place on a path or on the ground. */
-export function ring(sheet: Sheet, point: PicturePoint, radiusPx: number, colour: string): void {
-  const { context, inks, projector } = sheet;
+export function ring(sheet: Sheet, point: PicturePoint, radiusPx: number, colour: Rgb): void {
+  const { inks, projector, stamps } = sheet;
   if (!projector.shows(point, radiusPx)) return;
-  context.beginPath();
-  context.arc(point.x, point.y, radiusPx, 0, FULL_TURN);
-  context.fillStyle = inks.palette.ground;
-  context.fill();
-  context.lineWidth = 1.3;
-  context.strokeStyle = colour;
-  context.stroke();
+  stamps.disc({
+    ...point,
+    halfWidthPx: radiusPx,
+    halfHeightPx: radiusPx,
+    fill: inks.rgb.ground,
+    edge: colour,
+    edgePx: 1.3,
+    haloPx: 0,
+  });
   keepClear(sheet, point, radiusPx + 1);
 }
 
-/** A short stroke across a path at a point, given the path's direction in the scene. */
+/** A short stroke across a path at a point, given the path's direction in the scene; gives the
+ * direction of the stroke on the picture. */
 export function tick(
   sheet: Sheet,
   point: PicturePoint,
   along: Vec3,
   halfPx: number,
   stroke: Stroke,
-): void {
+): readonly [number, number] {
   const { right, up } = sheet.projector;
   const dx = dot(along, right);
   const dy = -dot(along, up);
   const length = Math.hypot(dx, dy);
-  if (!(length > 0)) return;
+  if (!(length > 0)) return [1, 0];
   const nx = (-dy / length) * halfPx;
   const ny = (dx / length) * halfPx;
   sheet.pen.flat(
@@ -126,6 +118,7 @@ export function tick(
     ],
     stroke,
   );
+  return [nx, ny];
 }
 
 const ARROW_PX = 26;
@@ -159,12 +152,13 @@ export function farArrow(sheet: Sheet, direction: Vec3, name: string, stroke: St
   );
   const middle = at(reach - ARROW_PX / 2, 0);
   keepClear(sheet, { ...middle, depthKm: 0 }, 5);
-  label(sheet, at(reach - ARROW_PX / 2, 0), {
+  label(sheet, middle, {
     id: `far ${name}`,
+    prefer: Math.abs(ux) > Math.abs(uy) ? [0, -1] : [ux >= 0 ? -1 : 1, 0],
     text: name,
     gap: 8,
     style: 'note',
-    colour: inks.palette.inkSoft,
+    colour: inks.rgb.inkSoft,
     priority: 40,
   });
 }

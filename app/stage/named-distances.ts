@@ -92,7 +92,7 @@ export function nameRing(sheet: Sheet, edge: Curve, entry: { id: string; text: s
       ...entry,
       gap: 3,
       style: 'note',
-      colour: inks.palette.inkSoft,
+      colour: inks.rgb.inkSoft,
       priority: 35,
     });
     return;

@@ -4,7 +4,7 @@ import { CurvePoints, decimate } from './curve';
 import type { Encounter } from './encounter';
 import { distance, offset } from './figures';
 import { label, objectMark, ring, tick } from './marks';
-import { tickOffsets } from './path-ticks';
+import { tickOffsets, tickStep } from './path-ticks';
 import type { PicturePoint } from './projection';
 import type { Moment, Sheet } from './sheet';
 import {
@@ -18,7 +18,7 @@ import {
 
 /** The object's path in a scene: where it has been, where it will be, and without the Earth's pull. */
 
-const MOST_TICKS = 9;
+const MOST_TICKS = 8;
 const LEAST_PASS_PX = 14;
 /** Halvings that find where the path leaves the picture. */
 const EDGE_STEPS = 10;
@@ -54,13 +54,13 @@ function markPass(sheet: Sheet, own: TrajectoryCurve, encounter: Encounter): voi
   if (passKm === null || passKm * projector.pxPerKm < LEAST_PASS_PX) return;
   const point = pointOf(sheet, own, encounter.tdbSeconds);
   if (point === null) return;
-  ring(sheet, point, 3.2, inks.palette.object);
+  ring(sheet, point, 3.2, inks.rgb.object);
   label(sheet, point, {
     id: 'pass',
     text: `closest, ${distance(passKm)}`,
     gap: 8,
     style: 'note',
-    colour: inks.palette.object,
+    colour: inks.rgb.object,
     priority: 60,
   });
 }
@@ -129,7 +129,7 @@ function drawUnperturbed(
     text: 'unperturbed',
     gap: 6,
     style: 'note',
-    colour: inks.palette.object,
+    colour: inks.rgb.object,
     priority: 30,
   });
 }
@@ -142,7 +142,8 @@ function drawTicks(sheet: Sheet, moment: Moment, scene: SceneName, own: Trajecto
   const here = new Float64Array(3);
   const beside = new Float64Array(3);
   let last: PicturePoint | null = pointOf(sheet, own, at);
-  for (const seconds of tickOffsets(seen[0], seen[1], MOST_TICKS)) {
+  const step = tickStep(seen[1] - seen[0], MOST_TICKS);
+  for (const seconds of tickOffsets(seen[0], seen[1], step)) {
     const parameter = own.parameterAt(at + seconds);
     own.at(parameter, here, 0);
     const p = vec3(here);
@@ -150,15 +151,16 @@ function drawTicks(sheet: Sheet, moment: Moment, scene: SceneName, own: Trajecto
     if (scene === 'sun' && point !== null) dropLine(sheet, p);
     if (point === null) continue;
     own.at(Math.min(own.to, parameter + 1e-3), beside, 0);
-    tick(sheet, point, subtract(vec3(beside), p), 3.5, inks.objectHair);
+    const prefer = tick(sheet, point, subtract(vec3(beside), p), 3.5, inks.objectHair);
     if (last !== null && Math.hypot(point.x - last.x, point.y - last.y) < TICK_ROOM_PX) continue;
     last = point;
     label(sheet, point, {
       id: `tick ${seconds}`,
-      text: offset(seconds),
+      text: offset(seconds, step),
       gap: 6,
+      prefer,
       style: 'figure',
-      colour: inks.palette.inkSoft,
+      colour: inks.rgb.inkSoft,
       priority: 20,
     });
   }
@@ -210,7 +212,7 @@ export function drawObject(sheet: Sheet, p: Vec3, name: string): void {
     text: name,
     gap: 11,
     style: 'name',
-    colour: inks.palette.object,
+    colour: inks.rgb.object,
     priority: 100,
     must: true,
   });

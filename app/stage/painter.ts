@@ -3,24 +3,24 @@ import type { Palette } from '../theme/tokens';
 import type { Camera } from './camera';
 import { drawEarthScene, earthSceneGlobes } from './earth-scene';
 import { GlobeInk } from './globe-ink';
-import { inksOf, mixed } from './inks';
+import { type Inks, inksOf, mixed, type Rgb } from './inks';
 import { type Box, placeLabels } from './labels';
 import { paintLand } from './land-picture';
-import { labelWidth, writeLabels } from './lettering';
 import { LineBuffer } from './line-buffer';
 import { Occluder } from './occlusion';
 import { Pen } from './pen';
 import { Projector } from './projection';
 import { drawScale } from './scale-mark';
 import type { Moment, Sheet } from './sheet';
+import { StampBuffer } from './stamp-buffer';
 import { drawSunScene, sunSceneGlobes } from './sun-scene';
 
-/** Draws a whole scene at a moment: lines and globes for three, marks and lettering on the overlay. */
+/** Draws a whole scene at a moment: lines, marks, words and globes as meshes for three. */
 
 export interface Picture {
   readonly widthPx: number;
   readonly heightPx: number;
-  /** Device pixels per px, for the lines; the overlay has its own. */
+  /** Device pixels per px. */
   readonly pixelRatio: number;
   readonly palette: Palette;
   readonly camera: Camera;
@@ -34,6 +34,7 @@ const LAND_SHARE = 0.11;
 
 export class Painter {
   readonly lines = new LineBuffer();
+  readonly stamps = new StampBuffer();
   readonly globes: readonly GlobeInk[];
   private readonly memory = new Map<string, number>();
 
@@ -42,62 +43,60 @@ export class Painter {
       scene === 'earth' ? [new GlobeInk(paintLand(LAND_WIDTH_PX)), new GlobeInk(null)] : [];
   }
 
-  /** Fills the lines and globes of a frame and draws the overlay; `moment` null draws an empty plate. */
-  draw(moment: Moment | null, picture: Picture, context: CanvasRenderingContext2D): void {
+  /** Fills the lines, stamps and globes of a frame; `moment` null leaves the plate empty. */
+  draw(moment: Moment | null, picture: Picture): void {
     const { widthPx, heightPx, pixelRatio, palette } = picture;
-    const projector = new Projector(picture.camera, widthPx, heightPx);
+    const inks = inksOf(palette);
     this.lines.begin(widthPx, heightPx, pixelRatio);
-    context.setTransform(1, 0, 0, 1, 0, 0);
-    context.clearRect(0, 0, context.canvas.width, context.canvas.height);
-    const overlayRatio = context.canvas.width / widthPx;
-    context.setTransform(overlayRatio, 0, 0, overlayRatio, 0, 0);
+    this.stamps.begin(widthPx, heightPx, pixelRatio, inks.rgb.ground);
     for (const globe of this.globes) globe.mesh.visible = false;
-    if (moment !== null) {
-      const bodies = this.scene === 'earth' ? earthSceneGlobes(moment) : sunSceneGlobes();
-      const occluders = bodies.map((body) => new Occluder(body, projector.eye));
-      const inks = inksOf(palette);
-      const sheet: Sheet = {
-        pen: new Pen(this.lines, projector, occluders),
-        projector,
-        context,
-        inks,
-        pixelRatio,
-        labels: [],
-        taken: [...picture.taken],
-      };
-      drawScale(sheet, this.scene);
-      if (this.scene === 'sun') drawSunScene(sheet, moment);
-      else {
-        const [earth, moon] = this.globes;
-        earth.colour(globeLook(inks.rgb.sheet, inks.rgb.earth, inks.rgb.earth));
-        moon.colour(globeLook(inks.rgb.sheet, inks.rgb.moon, inks.rgb.moon));
-        drawEarthScene(sheet, moment, { earth, moon });
-      }
-      const placed = placeLabels(
-        sheet.labels,
-        sheet.taken,
-        picture,
-        (label) => labelWidth(context, label),
-        this.memory,
-      );
-      writeLabels(context, placed, palette.ground);
-    }
+    if (moment !== null) this.drawMoment(moment, picture, inks);
     this.lines.end();
+    this.stamps.end();
   }
 
   dispose(): void {
     this.lines.dispose();
+    this.stamps.dispose();
     for (const globe of this.globes) globe.dispose();
+  }
+
+  private drawMoment(moment: Moment, picture: Picture, inks: Inks): void {
+    const { lines, stamps, scene } = this;
+    const projector = new Projector(picture.camera, picture.widthPx, picture.heightPx);
+    const bodies = scene === 'earth' ? earthSceneGlobes(moment) : sunSceneGlobes();
+    const occluders = bodies.map((body) => new Occluder(body, projector.eye));
+    const sheet: Sheet = {
+      pen: new Pen(lines, projector, occluders),
+      stamps,
+      projector,
+      inks,
+      pixelRatio: picture.pixelRatio,
+      labels: [],
+      taken: [...picture.taken],
+    };
+    drawScale(sheet, scene);
+    if (scene === 'sun') drawSunScene(sheet, moment);
+    else {
+      const [earth, moon] = this.globes;
+      earth.colour(globeLook(inks.rgb.sheet, inks.rgb.earth));
+      moon.colour(globeLook(inks.rgb.sheet, inks.rgb.moon));
+      drawEarthScene(sheet, moment, { earth, moon });
+    }
+    const placed = placeLabels(
+      sheet.labels,
+      sheet.taken,
+      picture,
+      ({ style, text }) => stamps.lettering.width(style, text),
+      this.memory,
+    );
+    for (const { box, style, text, colour } of placed) {
+      stamps.word((box.left + box.right) / 2, (box.top + box.bottom) / 2, style, text, colour);
+    }
   }
 }
 
-type Rgb = readonly [number, number, number];
-
-function globeLook(day: Rgb, land: Rgb, ink: Rgb) {
-  const unitOf = ([r, g, b]: Rgb): Rgb => [r / 255, g / 255, b / 255];
-  return {
-    day: unitOf(day),
-    land: unitOf(mixed(day, land, LAND_SHARE)),
-    ink: unitOf(ink),
-  };
+function globeLook(day: Rgb, ink: Rgb) {
+  const share = (colour: Rgb): Rgb => [colour[0] / 255, colour[1] / 255, colour[2] / 255];
+  return { day: share(day), land: share(mixed(day, ink, LAND_SHARE)), ink: share(ink) };
 }

@@ -34,8 +34,7 @@ export function tickStep(lengthS: number, most: number): number {
  * Offsets of the marks from the pass, s, within an interval of offsets; the pass itself (0) has its
  * own mark and is left out.
  */
-export function tickOffsets(fromS: number, toS: number, most: number): number[] {
-  const step = tickStep(toS - fromS, most);
+export function tickOffsets(fromS: number, toS: number, step: number): number[] {
   const offsets: number[] = [];
   for (let k = Math.ceil(fromS / step); k * step <= toS; k++) {
     if (k !== 0) offsets.push(k * step);

@@ -6,13 +6,13 @@ import type { Inks } from './inks';
 import type { Box, Label } from './labels';
 import type { Pen } from './pen';
 import type { Projector } from './projection';
+import type { StampBuffer } from './stamp-buffer';
 
-/** What a scene is drawn on: the pen for lines, the overlay for marks, and the lettering to come. */
+/** What a scene is drawn on: the pen for lines, stamps for marks, and the lettering to come. */
 export interface Sheet {
   readonly pen: Pen;
   readonly projector: Projector;
-  /** The overlay, in px. */
-  readonly context: CanvasRenderingContext2D;
+  readonly stamps: StampBuffer;
   readonly inks: Inks;
   /** Device pixels per px. */
   readonly pixelRatio: number;

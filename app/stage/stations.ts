@@ -16,17 +16,17 @@ export const STATIONS: readonly { station: Station; word: string; name: string }
 
 const CENTRE: Vec3 = [0, 0, 0];
 /** The Earth scene takes in the pass this many times over, and no less than the globe. */
-const PASSES_IN_VIEW = 3.2;
+const PASSES_IN_VIEW = 2.75;
 const GLOBES_IN_VIEW = 2.4;
 /** Room left around what is framed. */
 const ROOM = 1.18;
 const LEAST_SUN_FRAME_KM = 1.08 * AU_KM;
 const MOST_SUN_FRAME_KM = 5.6 * AU_KM;
 /** Riding: this far behind the object, as a share of its distance from the centre. */
-const RIDING_SHARE = 0.5;
+const RIDING_SHARE = 0.7;
 /** Riding: lifted so that the centre stands above the object and not behind it. */
-const RIDING_LIFT_RAD = 0.28;
-const RIDING_TURN_RAD = 0.16;
+const RIDING_LIFT_RAD = 0.2;
+const RIDING_TURN_RAD = 0.1;
 
 /**
  * Radius about the centre that a scene takes in by itself, km.

@@ -4,6 +4,7 @@ import {
   ECLIPTIC_POLE_ICRF,
   eclipticToIcrf,
   GM_KM3_S2,
+  norm,
   type Vec3,
   vec3,
 } from '../worker/core-geometry';
@@ -60,7 +61,10 @@ export function drawSunScene(sheet: Sheet, moment: Moment): void {
 }
 
 /** Rings of the grid that fit into half the picture's shorter side. */
-const RINGS_IN_VIEW = 3;
+const RINGS_IN_VIEW = 2;
+const BEYOND_TARGET = 1.6;
+/** Seen flatter than this, the rings carry no figures. */
+const LEAST_TILT_RAD = 0.15;
 const DEGREE_STEP = 10;
 const STRONG_DEGREES = 30;
 const LABEL_BEARING_RAD = (58 * Math.PI) / 180;
@@ -68,8 +72,10 @@ const LABEL_BEARING_RAD = (58 * Math.PI) / 180;
 /** Circles in the plane of the ecliptic, the outermost graduated in longitude from the equinox. */
 function drawGrid(sheet: Sheet): void {
   const { pen, inks, projector } = sheet;
-  const reachAu = Math.min(projector.widthPx, projector.heightPx) / 2 / projector.pxPerKm / AU_KM;
-  const step = roundDown(Math.max(reachAu, 0.02) / RINGS_IN_VIEW);
+  const framedKm = Math.min(projector.widthPx, projector.heightPx) / 2 / projector.pxPerKm;
+  // Riding, the grid is that of the Sun's surroundings and not of the object's.
+  const reachAu = Math.max(framedKm, BEYOND_TARGET * norm(projector.camera.target)) / AU_KM;
+  const step = roundDown(reachAu / RINGS_IN_VIEW);
   const count = Math.max(1, Math.floor(reachAu / step));
   for (let k = 1; k <= count; k++) {
     const radiusKm = k * step * AU_KM;
@@ -78,13 +84,13 @@ function drawGrid(sheet: Sheet): void {
       k === count ? inks.gridStrong : inks.grid,
     );
     const at = projector.project(onEcliptic(LABEL_BEARING_RAD, radiusKm));
-    if (at === null) continue;
+    if (at === null || Math.abs(projector.camera.latitudeRad) < LEAST_TILT_RAD) continue;
     label(sheet, at, {
       id: `ring ${k}`,
       text: `${Number((k * step).toPrecision(6))}\u2009au`,
       gap: -8,
       style: 'figure',
-      colour: inks.palette.inkSoft,
+      colour: inks.rgb.inkSoft,
       priority: 25,
     });
   }
@@ -122,7 +128,7 @@ function drawPlanet(sheet: Sheet, planet: Planet, sample: Float64Array): void {
   const place = vec3(sample, planet.offset);
   const point = projector.project(place);
   if (point === null) return;
-  const colour = planet.name === 'Earth' ? inks.palette.earth : inks.palette.planet;
+  const colour = planet.name === 'Earth' ? inks.rgb.earth : inks.rgb.planet;
   const radiusPx = Math.max(planet.leastPx, projector.radiusPx(place, planet.radiusKm));
   if (Number.isFinite(radiusPx)) disc(sheet, point, radiusPx, colour);
   label(sheet, point, {
@@ -130,7 +136,7 @@ function drawPlanet(sheet: Sheet, planet: Planet, sample: Float64Array): void {
     text: planet.name,
     gap: radiusPx + 5,
     style: 'name',
-    colour: planet.name === 'Earth' ? inks.palette.earth : inks.palette.inkSoft,
+    colour: planet.name === 'Earth' ? inks.rgb.earth : inks.rgb.inkSoft,
     priority: planet.name === 'Earth' ? 80 : 65,
   });
 }
@@ -147,7 +153,7 @@ function drawSun(sheet: Sheet): void {
     text: 'Sun',
     gap: radiusPx + 9,
     style: 'name',
-    colour: inks.palette.sun,
+    colour: inks.rgb.sun,
     priority: 75,
   });
 }
