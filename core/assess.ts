@@ -102,7 +102,10 @@ export async function runAssessment(
   const span = { from, to: (events: readonly EncounterEvent[]) => endOfSpan(orbit, epoch, events) };
   const { forward, backward } = await integrate(orbit, normalised, span, ephemeris, host);
 
-  const to = forward.surface?.tdbSeconds ?? span.to(forward.events);
+  const to =
+    forward.circled === null
+      ? (forward.surface?.tdbSeconds ?? span.to(forward.events))
+      : forward.reachedTdbSeconds;
   const records = assembleApproaches([...backward.events, ...forward.events], orbit.model.gm);
   const principal = principalOf(records);
   const uncertainties = uncertaintiesOf(records, [backward, forward], normalised, orbit, ephemeris);
@@ -131,10 +134,13 @@ export async function runAssessment(
       coverageText: EPHEMERIS_COVERAGE.text,
       tolerance: INTEGRATION_TOLERANCE,
       nonGravitational: orbit.nonGravitational !== null,
-      fromTdbSeconds: backward.surface?.tdbSeconds ?? from,
+      fromTdbSeconds:
+        backward.circled === null
+          ? (backward.surface?.tdbSeconds ?? from)
+          : backward.reachedTdbSeconds,
       toTdbSeconds: to,
       rule: orbit.span === null ? DEFAULT_RULE : ASKED_RULE,
-      trajectoryEnds: endsInWords(forward.surface, backward.surface),
+      trajectoryEnds: endsInWords(forward, backward),
     }),
     classical: classicalSection(classical, epoch, {
       sphereKm: SPHERE_OF_INFLUENCE_KM,
@@ -419,13 +425,20 @@ function comparisonOf(
   };
 }
 
-function endsInWords(
-  forward: EncounterEvent | null,
-  backward: EncounterEvent | null,
-): string | null {
+function endsInWords(forward: Leg, backward: Leg): string | null {
+  const circled = forward.circled ?? backward.circled;
   const words = [
-    ...(forward === null ? [] : [`It ends where it meets the surface of the ${forward.body}.`]),
-    ...(backward === null ? [] : [`It begins on the surface of the ${backward.body}.`]),
+    ...(forward.surface === null
+      ? []
+      : [`It ends where it meets the surface of the ${forward.surface.body}.`]),
+    ...(backward.surface === null
+      ? []
+      : [`It begins on the surface of the ${backward.surface.body}.`]),
+    ...(circled === null
+      ? []
+      : [
+          `The search was stopped after a hundred approaches: the object circles the ${circled}. Ask for a shorter span to see another part.`,
+        ]),
   ];
   return words.length === 0 ? null : words.join(' ');
 }

@@ -13,6 +13,8 @@ export interface Leg {
   reachedTdbSeconds: number;
   /** The event when it ends on a surface. */
   surface: EncounterEvent | null;
+  /** The body it circles, when it was stopped for circling it too often. */
+  circled: EncounterEvent['body'] | null;
 }
 
 export interface LegPlan {
@@ -40,6 +42,8 @@ export const LONGEST_STEP_S = 40 * 86400;
 /** Steps between two chunks; few at first so that something shows at once. */
 const FIRST_CHUNK_STEPS = 6;
 const CHUNK_STEPS = 40;
+/** A leg with more approaches to one body is that of a satellite: it is stopped, and says so. */
+const MOST_APPROACHES = 100;
 
 /**
  * Integrates one way, scanning and sampling every step as it is accepted.
@@ -53,7 +57,9 @@ export async function integrateLeg(plan: LegPlan, host: LegHost): Promise<Leg> {
     events: [],
     reachedTdbSeconds: start.tdbSeconds,
     surface: null,
+    circled: null,
   };
+  const approaches = new Map<EncounterEvent['body'], number>();
   const before = (a: number, b: number): boolean => (a - b) * direction < 0;
   if (!before(start.tdbSeconds, goal([]))) return leg;
   await host.prepare(start.tdbSeconds, direction);
@@ -64,7 +70,11 @@ export async function integrateLeg(plan: LegPlan, host: LegHost): Promise<Leg> {
   let samples: number[] = [];
   let inChunk = 0;
   let chunkSteps = FIRST_CHUNK_STEPS;
-  while (leg.surface === null && before(leg.reachedTdbSeconds, goal(leg.events))) {
+  while (
+    leg.surface === null &&
+    leg.circled === null &&
+    before(leg.reachedTdbSeconds, goal(leg.events))
+  ) {
     await host.prepare(leg.reachedTdbSeconds, direction);
     const segment = propagator.step(goal(leg.events));
     const found = scanner.scan(segment);
@@ -73,6 +83,11 @@ export async function integrateLeg(plan: LegPlan, host: LegHost): Promise<Leg> {
     for (const event of found) {
       if (!before(event.tdbSeconds, keepFrom) && !before(reached, event.tdbSeconds)) {
         leg.events.push(event);
+        if (event.kind === 'minimum') {
+          const count = (approaches.get(event.body) ?? 0) + 1;
+          approaches.set(event.body, count);
+          if (count === MOST_APPROACHES) leg.circled = event.body;
+        }
       }
     }
     leg.segments.push(segment);

@@ -157,6 +157,26 @@ describe('the search for close approaches', () => {
   });
 });
 
+describe('a satellite', () => {
+  it('is stopped after a hundred perigees, and the report says so', async () => {
+    const at = 1.0e9;
+    const { report } = await assessCase(
+      caseOf({
+        epoch: epochFromTdbSeconds(at, 'TDB'),
+        axes: 'ICRF',
+        centre: 'Earth',
+        state: { kind: 'cartesian', positionKm: [7000, 0, 0], velocityKmS: [0, 5.4, 5.4] },
+        span: { fromTdbSeconds: at - 600, toTdbSeconds: at + 30 * DAY },
+      }),
+    );
+    expect(report.model.trajectoryEnds).toMatch(/circles the Earth/);
+    // A hundred turns of about 1.7 h.
+    const days = report.model.span.toJdTdb - report.model.span.fromJdTdb;
+    expect(days).toBeGreaterThan(5);
+    expect(days).toBeLessThan(10);
+  });
+});
+
 describe('an impact', () => {
   /** A state on a surface, moving inwards at some angle. */
   async function strike(body: 'Earth' | 'Moon', r: Vec3, v: Vec3, at: number) {
