@@ -1,3 +1,4 @@
+import { GM_KM3_S2 } from '../constants';
 import type { ForceModel } from '../dynamics/force-model';
 import { createPropagator, type Segment } from '../dynamics/propagate';
 import type { Sampler } from '../dynamics/samples';
@@ -42,7 +43,7 @@ export const LONGEST_STEP_S = 40 * 86400;
 /** Steps between two chunks; few at first so that something shows at once. */
 const FIRST_CHUNK_STEPS = 6;
 const CHUNK_STEPS = 40;
-/** A leg with more approaches to one body is that of a satellite: it is stopped, and says so. */
+/** A leg with more approaches to a body that holds it is that of a satellite: it is stopped, and says so. */
 const MOST_APPROACHES = 100;
 
 /**
@@ -83,7 +84,7 @@ export async function integrateLeg(plan: LegPlan, host: LegHost): Promise<Leg> {
     for (const event of found) {
       if (!before(event.tdbSeconds, keepFrom) && !before(reached, event.tdbSeconds)) {
         leg.events.push(event);
-        if (event.kind === 'minimum') {
+        if (event.kind === 'minimum' && isBound(event)) {
           const count = (approaches.get(event.body) ?? 0) + 1;
           approaches.set(event.body, count);
           if (count === MOST_APPROACHES) leg.circled = event.body;
@@ -111,6 +112,12 @@ export async function integrateLeg(plan: LegPlan, host: LegHost): Promise<Leg> {
   await host.chunk(Float64Array.from(samples), leg.reachedTdbSeconds);
   leg.events.sort((a, b) => a.tdbSeconds - b.tdbSeconds);
   return leg;
+}
+
+/** Whether the object is slower than escape from the body of an event. */
+function isBound({ body, relative, distanceKm }: EncounterEvent): boolean {
+  const speed = Math.hypot(relative[3], relative[4], relative[5]);
+  return speed * speed < (2 * GM_KM3_S2.DE431[body]) / distanceKm;
 }
 
 /** The first meeting with a surface on the way, or null. */
