@@ -1,29 +1,19 @@
-import { useEffect, useRef, useState } from 'react';
+import { useRef, useState } from 'react';
 import type { Pace } from './pace';
 import { RibbonSlider } from './RibbonSlider';
 import { TransportBar } from './TransportBar';
 import { usePlay } from './use-play';
 import { useRibbonGeometry } from './use-ribbon-geometry';
+import { useSize } from './use-size';
 import './ribbon.css';
 
 /** Bottom: the curve of geocentric distance against time is the scrubber of the desk's clock. */
 export function Ribbon() {
   const sheet = useRef<HTMLDivElement>(null);
-  const [widthPx, setWidthPx] = useState(0);
+  const { widthPx } = useSize(sheet);
   const [pace, setPace] = useState<Pace>('normal');
   const geometry = useRibbonGeometry(widthPx);
   usePlay(geometry?.time ?? null, pace);
-
-  useEffect(() => {
-    const element = sheet.current;
-    if (element === null) return;
-    const observer = new ResizeObserver(([entry]) =>
-      setWidthPx(Math.floor(entry.contentRect.width)),
-    );
-    observer.observe(element);
-    return () => observer.disconnect();
-  }, []);
-
   return (
     <div ref={sheet} className="ribbon">
       {geometry === null ? (

@@ -1,4 +1,4 @@
-import type { Report } from '../../core/report/report';
+import type { Approach, Report } from '../../core/report/report';
 import { EARTH_RADIUS_KM, SAMPLE } from '../worker/core-values';
 import type { Trajectory } from '../worker/trajectory';
 import type { Stretch } from './time-scale';
@@ -12,20 +12,26 @@ export interface Anchor extends Stretch {
 const SHORTEST_SCALE_S = 60;
 
 /**
- * The principal approach as the ribbon's zero: its time, and its distance over its speed as the
- * scale of the stretch. Where the path ends on a surface, that moment is the zero and the body's
- * radius the distance. Without a report, or without an approach, the nearest sample so far.
+ * The principal approach as the ribbon's zero; without a report, or without an approach, the nearest
+ * sample so far.
  *
  * @returns null while there is no trajectory
  */
 export function anchorOf(report: Report | null, trajectory: Trajectory): Anchor | null {
   const principal =
     report === null || report.principal === null ? null : report.approaches[report.principal];
-  if (principal === null) return nearestSample(trajectory);
-  const { distanceKm, distanceRadii, speedKmS, surfaceImpact } = principal;
+  return principal === null ? nearestSample(trajectory) : anchorOfApproach(principal);
+}
+
+/**
+ * An approach's time, and its distance over its speed as the scale of the stretch. Where the path
+ * ends on a surface, that moment is the zero and the body's radius the distance.
+ */
+export function anchorOfApproach(approach: Approach): Anchor {
+  const { tdbSeconds, distanceKm, distanceRadii, speedKmS, surfaceImpact } = approach;
   const reachKm = Math.max(distanceKm, distanceKm / distanceRadii);
   return {
-    centreTdbSeconds: surfaceImpact?.tdbSeconds ?? principal.tdbSeconds,
+    centreTdbSeconds: surfaceImpact?.tdbSeconds ?? tdbSeconds,
     scaleSeconds: Math.max(reachKm / speedKmS, SHORTEST_SCALE_S),
     words: surfaceImpact === undefined ? 'closest approach' : 'impact',
   };

@@ -34,7 +34,11 @@ const UNTURNED: Mat3 = [1, 0, 0, 0, 1, 0, 0, 0, 1];
 /** Smaller than this a body is a disc of the least size, px. */
 const LEAST_GLOBE_PX = 3;
 const LEAST_DISC_PX = 2.6;
-const COASTS_FROM_PX = 9;
+const COASTS_FROM_PX = 26;
+/** The axis and the point of the ground are marked from here on, px. */
+const MARKED_FROM_PX = 9;
+/** Coasts are drawn at their full weight from here on, px. */
+const FULL_COASTS_PX = 110;
 const GRATICULE_FROM_PX = 40;
 /** The entry interface is drawn once it stands this clear of the ground, px. */
 const INTERFACE_FROM_PX = 2.5;
@@ -103,10 +107,13 @@ function drawEarth(
   );
   const limb = outline(view.earth, projector.eye);
   if (earthPx >= GRATICULE_FROM_PX) drawGraticule(pen, axes, inks.graticule);
-  if (earthPx >= COASTS_FROM_PX) drawCoastlines(pen, axes, inks.coast);
+  if (earthPx >= COASTS_FROM_PX) {
+    const weight = Math.min(1, earthPx / FULL_COASTS_PX + 0.4);
+    drawCoastlines(pen, axes, { ...inks.coast, widthPx: weight * inks.coast.widthPx });
+  }
   if (limb !== null) pen.curve(limb, inks.limb, []);
   drawInterface(sheet, view.earth, earthPx);
-  if (earthPx >= COASTS_FROM_PX) drawAxis(sheet, axes);
+  if (earthPx >= MARKED_FROM_PX) drawAxis(sheet, axes);
   nameEarth(sheet, earthPx);
 }
 
@@ -211,7 +218,7 @@ function drawGroundPoint(sheet: Sheet, moment: Moment, axes: Mat3, earthPx: numb
     }),
   );
   pen.segmentLine(object, foot, inks.objectHair);
-  if (earthPx < COASTS_FROM_PX) return;
+  if (earthPx < MARKED_FROM_PX) return;
   // A hair above the ground, so that the ground itself does not hide it.
   const point = visiblePoint(sheet, scale(foot, 1 + 1e-6));
   if (point === null) return;

@@ -1,4 +1,4 @@
-import type { Report } from '../../core/report/report';
+import type { Approach, Report } from '../../core/report/report';
 import { norm, unit, type Vec3, vec3 } from '../worker/core-geometry';
 import { SAMPLE, SPHERE_OF_INFLUENCE_KM } from '../worker/core-values';
 import type { Trajectory } from '../worker/trajectory';
@@ -11,6 +11,7 @@ export interface Encounter {
   readonly frameKm: number;
   /** Geocentric distance at the pass, km; null while no pass is known. */
   readonly passKm: number | null;
+  readonly outcome: Approach['outcome'] | null;
   /** Direction of motion on the way in (the incoming asymptote where there is one), ICRF axes. */
   readonly direction: Vec3;
   /** Heliocentric place of the Earth at that time, km, ICRF axes. */
@@ -38,6 +39,7 @@ export function encounterOf(report: Report | null, trajectory: Trajectory): Enco
     tdbSeconds,
     frameKm: passKm ?? SPHERE_OF_INFLUENCE_KM / 2,
     passKm,
+    outcome: principal?.outcome ?? null,
     direction: plane?.s ?? unit(vec3(sample, SAMPLE.object + 3)),
     earthKm: vec3(sample, SAMPLE.earth),
     farthestFromSunKm: farthestFromSun(trajectory),

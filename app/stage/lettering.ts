@@ -9,7 +9,8 @@ import { LABEL_FONTS, type LabelStyle, NAME_SPACING_PX } from './labels';
  * Red holds the letters, green the narrow clearing around them, so a word serves in any colour.
  */
 
-const ATLAS_PX = 1024;
+const ATLAS_WIDTH_PX = 1024;
+const ATLAS_HEIGHT_PX = 512;
 const HALO_PX = 1.75;
 /** Room around a word in the atlas, px of the picture. */
 const MARGIN_PX = 3;
@@ -25,7 +26,7 @@ export interface Word {
 
 export class Lettering {
   readonly texture: CanvasTexture;
-  readonly size = new Vector2(ATLAS_PX, ATLAS_PX);
+  readonly size = new Vector2(ATLAS_WIDTH_PX, ATLAS_HEIGHT_PX);
   private readonly context: CanvasRenderingContext2D | null;
   private readonly words = new Map<string, Word>();
   private readonly widths = new Map<string, number>();
@@ -35,8 +36,8 @@ export class Lettering {
 
   constructor() {
     const canvas = document.createElement('canvas');
-    canvas.width = ATLAS_PX;
-    canvas.height = ATLAS_PX;
+    canvas.width = ATLAS_WIDTH_PX;
+    canvas.height = ATLAS_HEIGHT_PX;
     this.context = canvas.getContext('2d', { willReadFrequently: true });
     this.texture = new CanvasTexture(canvas);
     this.texture.colorSpace = NoColorSpace;
@@ -71,12 +72,12 @@ export class Lettering {
     if (known !== undefined || context === null) return known ?? null;
     const width = Math.ceil((this.width(style, text) + 2 * MARGIN_PX) * pixelRatio);
     const height = Math.ceil(HEIGHT_PX * pixelRatio);
-    if (this.left + width > ATLAS_PX) {
+    if (this.left + width > ATLAS_WIDTH_PX) {
       this.left = 0;
       this.top += height;
     }
     // A full atlas is emptied; the words of this frame are written again in the next.
-    if (this.top + height > ATLAS_PX) this.clear();
+    if (this.top + height > ATLAS_HEIGHT_PX) this.clear();
     const word = { left: this.left, top: this.top, width, height };
     this.left += width;
     this.words.set(key, word);
@@ -95,7 +96,7 @@ export class Lettering {
     if (context === null) return;
     context.globalCompositeOperation = 'source-over';
     context.fillStyle = '#000';
-    context.fillRect(0, 0, ATLAS_PX, ATLAS_PX);
+    context.fillRect(0, 0, ATLAS_WIDTH_PX, ATLAS_HEIGHT_PX);
     this.texture.needsUpdate = true;
   }
 

@@ -50,14 +50,14 @@ export function drawPath(sheet: Sheet, moment: Moment, scene: SceneName): void {
 /** The pass on the path, once it stands clear of the Earth's middle. */
 function markPass(sheet: Sheet, own: TrajectoryCurve, encounter: Encounter): void {
   const { inks, projector } = sheet;
-  const { passKm } = encounter;
+  const { passKm, outcome } = encounter;
   if (passKm === null || passKm * projector.pxPerKm < LEAST_PASS_PX) return;
   const point = pointOf(sheet, own, encounter.tdbSeconds);
   if (point === null) return;
   ring(sheet, point, 3.2, inks.rgb.object);
   label(sheet, point, {
     id: 'pass',
-    text: `closest, ${distance(passKm)}`,
+    text: outcome === 'impact' ? 'meets the ground' : `closest, ${distance(passKm)}`,
     gap: 8,
     style: 'note',
     colour: inks.rgb.object,

@@ -30,7 +30,7 @@ export interface Picture {
 
 const LAND_WIDTH_PX = 1024;
 /** How far the land's tint is from the sea's towards the ink. */
-const LAND_SHARE = 0.11;
+const LAND_SHARE = 0.17;
 
 export class Painter {
   readonly lines = new LineBuffer();

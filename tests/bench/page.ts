@@ -42,7 +42,13 @@ export async function benchPage(): Promise<void> {
     await page.goto(url);
     await page.locator('.finding-answer').first().waitFor();
     const paint = await page.evaluate(
-      () => performance.getEntriesByName('first-contentful-paint')[0]?.startTime ?? Number.NaN,
+      () =>
+        new Promise<number>((resolve) => {
+          new PerformanceObserver((list) => {
+            const entry = list.getEntriesByName('first-contentful-paint')[0];
+            if (entry !== undefined) resolve(entry.startTime);
+          }).observe({ type: 'paint', buffered: true });
+        }),
     );
     print('first contentful paint', paint, 'ms', { target: '1000 ms' });
     await page.waitForTimeout(3000);
@@ -112,7 +118,6 @@ async function paste(page: Page, text: string): Promise<number> {
         const area = document.querySelector<HTMLTextAreaElement>('textarea.paste-text');
         const findings = document.querySelector('#findings');
         if (area === null || findings === null) throw new Error('the desk is not there');
-        area.select();
         const data = new DataTransfer();
         data.setData('text/plain', content);
         const start = performance.now();
@@ -123,10 +128,10 @@ async function paste(page: Page, text: string): Promise<number> {
           resolve(performance.now() - start);
         });
         watch.observe(findings, { subtree: true, childList: true, characterData: true });
-        const setter = Object.getOwnPropertyDescriptor(HTMLTextAreaElement.prototype, 'value')?.set;
-        setter?.call(area, content);
+        area.focus();
+        area.select();
         area.dispatchEvent(
-          new InputEvent('input', { bubbles: true, inputType: 'insertFromPaste' }),
+          new ClipboardEvent('paste', { clipboardData: data, bubbles: true, cancelable: true }),
         );
       }),
     text,
