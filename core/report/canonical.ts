@@ -38,19 +38,30 @@ export function canonicalJson(value: unknown, path = 'report'): string {
   return JSON.stringify(value);
 }
 
-/** SHA-256, hex, of the canonical JSON of a report without `madeAt` and `fingerprint`. */
+/**
+ * SHA-256 of the canonical JSON of a report without `madeAt` and `fingerprint`.
+ *
+ * @param report a report or its draft; one read back from its file gives the same fingerprint
+ * @returns      64 hexadecimal digits
+ * @throws       NonFiniteError
+ * Source: FIPS 180-4 (2015).
+ */
 export function fingerprintOf(report: Omit<Report, 'fingerprint'>): string {
   const { madeAt: _, ...rest } = report;
   const content = Object.fromEntries(Object.entries(rest).filter(([key]) => key !== 'fingerprint'));
   return bytesToHex(sha256(utf8ToBytes(canonicalJson(content))));
 }
 
-/** The draft with its fingerprint. */
+/** The draft with its fingerprint; throws NonFiniteError. */
 export function sealReport(draft: Omit<Report, 'fingerprint'>): Report {
   return { ...draft, fingerprint: fingerprintOf(draft) };
 }
 
-/** The report as the file that is handed over: indented, with a newline at the end. */
+/**
+ * The report as the file that is handed over: indented, with a newline at the end.
+ *
+ * @throws NonFiniteError, where JSON itself would write null
+ */
 export function reportJsonText(report: Report): string {
   canonicalJson(report);
   return `${JSON.stringify(report, null, 2)}\n`;

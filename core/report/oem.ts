@@ -5,6 +5,8 @@ import type { Report } from './report';
 
 /** Microseconds: an object at 70 km/s moves 7 cm. */
 const DECIMALS = 6;
+/** The standard's numbers (7.5) have at most 16 digits, the point behind the first: 1e-8 km at 1 au. */
+const MANTISSA_DECIMALS = 15;
 
 /**
  * The trajectory as a CCSDS Orbit Ephemeris Message, KVN.
@@ -17,12 +19,13 @@ const DECIMALS = 6;
  */
 export function writeOem(report: Report, samples: Float64Array): string {
   const rows = rowsOf(samples);
-  const name = report.case.name.replace(/\s+/g, ' ').trim();
+  const name = printable(report.case.name);
+  const id = printable(report.case.objectId ?? '');
   const lines = [
     'CCSDS_OEM_VERS = 3.0',
     `COMMENT Report fingerprint ${report.fingerprint}`,
-    ...(report.case.invented ? ['COMMENT An invented object on an invented approach'] : []),
-    `CREATION_DATE = ${report.madeAt.replace('Z', '')}`,
+    ...report.cautions.map((caution) => `COMMENT ${printable(caution)}`),
+    `CREATION_DATE = ${report.madeAt.replace(/Z$/, '')}`,
     'ORIGINATOR = SKIMLINE',
     '',
   ];
@@ -35,7 +38,7 @@ export function writeOem(report: Report, samples: Float64Array): string {
     lines.push(
       'META_START',
       `OBJECT_NAME = ${name}`,
-      `OBJECT_ID = ${report.case.objectId ?? 'UNKNOWN'}`,
+      `OBJECT_ID = ${id}`,
       `CENTER_NAME = ${centre}`,
       'REF_FRAME = ICRF',
       'TIME_SYSTEM = TDB',
@@ -46,7 +49,10 @@ export function writeOem(report: Report, samples: Float64Array): string {
       'META_STOP',
       '',
       ...part.map((row) =>
-        [formatIso(row[SAMPLE.tdbSeconds], 'TDB', DECIMALS), ...state(row)].join(' '),
+        [
+          formatIso(row[SAMPLE.tdbSeconds], 'TDB', DECIMALS),
+          ...state(row).map((value) => value.toExponential(MANTISSA_DECIMALS)),
+        ].join(' '),
       ),
       '',
     );
@@ -58,6 +64,17 @@ export function writeOem(report: Report, samples: Float64Array): string {
     segment('EARTH', part, (row) => components.map((k) => row[SAMPLE.object + k]));
   }
   return lines.join('\n');
+}
+
+/** Text that a KVN line may carry (7.3): printable ASCII, short enough for its 254 characters. */
+function printable(text: string): string {
+  const plain = text
+    .normalize('NFKD')
+    .replace(/\p{M}/gu, '')
+    .replace(/\s+/g, ' ')
+    .replace(/[^ -~]/gu, '?')
+    .trim();
+  return plain === '' ? 'UNKNOWN' : plain.slice(0, 200);
 }
 
 const components = [0, 1, 2, 3, 4, 5];
