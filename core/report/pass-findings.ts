@@ -195,8 +195,14 @@ export function orbitFinding(main: Approach): Finding | null {
   const before = main.orbitBefore;
   const after = main.orbitAfter;
   if (before === undefined || after === undefined) return null;
-  const orbit = ({ semiMajorAxisAu, eccentricity, inclinationDeg }: typeof before): string =>
-    `${semiMajorAxisAu === null ? 'no closed orbit' : `a = ${formatAu(semiMajorAxisAu)}`}, e = ${formatNumber(eccentricity, 3)}, i = ${formatDegrees(inclinationDeg, 2)}`;
+  const orbit = (item: typeof before): string => {
+    const { semiMajorAxisAu, eccentricity, inclinationDeg, periapsisAu } = item;
+    const size =
+      semiMajorAxisAu === null || semiMajorAxisAu < 0
+        ? `an open orbit with q = ${formatAu(periapsisAu)}`
+        : `a = ${formatAu(semiMajorAxisAu)}`;
+    return `${size}, e = ${formatNumber(eccentricity, 3)}, i = ${formatDegrees(inclinationDeg, 2)}`;
+  };
   return finding(
     'orbit-change',
     `The pass turns its orbit about the Sun from ${orbit(before)} to ${orbit(after)}.`,

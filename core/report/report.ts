@@ -11,7 +11,15 @@ export const REPORT_VERSION = 1;
 
 const finite = v.pipe(v.number(), v.finite());
 const triple = v.tuple([finite, finite, finite]);
-const instant = { jdTdb: finite, tdbSeconds: finite, utc: v.string() };
+/** With a description that goes into the published schema. */
+const number = (description: string) => v.pipe(finite, v.description(description));
+const text = (description: string) => v.pipe(v.string(), v.description(description));
+const vector = (description: string) => v.pipe(triple, v.description(description));
+const instant = {
+  jdTdb: number('Julian date, TDB.'),
+  tdbSeconds: number('The same instant in full precision: TDB seconds past J2000.'),
+  utc: text('The same instant as ISO 8601 UTC, rounded.'),
+};
 
 export const BOUNDARIES = [
   'sphere-of-influence',
@@ -27,7 +35,7 @@ const bodyName = v.picklist(['Earth', 'Moon', 'Venus', 'Mars', 'Mercury', 'Jupit
 
 /** Heliocentric, on the ecliptic and equinox of J2000. */
 const elements = v.object({
-  semiMajorAxisKm: v.nullable(finite),
+  semiMajorAxisKm: v.nullable(number('Negative for a hyperbola, null for a parabola.')),
   semiMajorAxisAu: v.nullable(finite),
   eccentricity: finite,
   periapsisKm: finite,
@@ -37,17 +45,17 @@ const elements = v.object({
   argumentOfPeriapsisDeg: finite,
   trueAnomalyDeg: finite,
   meanAnomalyDeg: v.nullable(finite),
-  periodDays: v.nullable(finite),
-  timeFromPeriapsisDays: finite,
+  periodDays: v.nullable(number('Null for an orbit that is not closed.')),
+  timeFromPeriapsisDays: number('Positive after periapsis.'),
 });
 
 const hyperbola = v.object({
   semiMajorAxisKm: finite,
   eccentricity: finite,
   periapsisKm: finite,
-  impactParameterKm: finite,
-  excessSpeedKmS: finite,
-  turnAngleDeg: finite,
+  impactParameterKm: number('Distance of the incoming asymptote from the centre, |h|/v∞.'),
+  excessSpeedKmS: number('Speed at infinity, v∞.'),
+  turnAngleDeg: number('Between the incoming and the outgoing asymptote.'),
   asymptoteTrueAnomalyDeg: finite,
   periapsisSpeedKmS: finite,
 });
@@ -55,14 +63,14 @@ const hyperbola = v.object({
 const targetPlane = v.object({
   bDotTKm: finite,
   bDotRKm: finite,
-  xiKm: finite,
-  zetaKm: finite,
-  /** Impact parameter whose periapsis is the body's radius: b = R sqrt(1 + 2GM/(R v²)). */
-  impactRadiusKm: finite,
-  /** Unit vectors, ICRF. */
-  s: triple,
-  t: triple,
-  r: triple,
+  xiKm: number('Across the projected heliocentric motion of the body.'),
+  zetaKm: number('Against the projected heliocentric motion of the body.'),
+  impactRadiusKm: number(
+    'Impact parameter whose periapsis is the radius R of the body: R √(1 + 2GM/(R v∞²)).',
+  ),
+  s: vector('Direction of motion along the incoming asymptote; unit vector, ICRF.'),
+  t: vector('S × K made unit, K the north pole of the ecliptic of J2000; ICRF.'),
+  r: vector('S × T; ICRF.'),
 });
 
 const crossing = v.object({
@@ -75,26 +83,25 @@ const crossing = v.object({
 
 const entry = v.object({
   ...instant,
-  latitudeDeg: finite,
-  longitudeDeg: finite,
-  altitudeKm: finite,
-  speedKmS: finite,
-  airSpeedKmS: finite,
-  flightPathAngleDeg: finite,
-  azimuthDeg: finite,
-  airFlightPathAngleDeg: finite,
-  airAzimuthDeg: finite,
+  latitudeDeg: number('Geodetic, WGS 84.'),
+  longitudeDeg: number('East, above −180 up to 180.'),
+  altitudeKm: number('Geodetic, over WGS 84.'),
+  speedKmS: number('Geocentric, against axes that do not turn.'),
+  airSpeedKmS: number('Against air that turns with the Earth.'),
+  flightPathAngleDeg: number('Of the inertial velocity; negative below the horizontal.'),
+  azimuthDeg: number('Of the inertial velocity, from north through east.'),
+  airFlightPathAngleDeg: number('Of the velocity against the air; negative below the horizontal.'),
+  airAzimuthDeg: number('Of the velocity against the air, from north through east.'),
 });
 
 /** Where the trajectory meets a surface: the ground in vacuum flight, or the Moon's surface. */
 const surfaceImpact = v.object({
   ...instant,
   latitudeDeg: finite,
-  longitudeDeg: finite,
+  longitudeDeg: number('East, above −180 up to 180.'),
   speedKmS: finite,
-  /** Below the local horizontal, negative going down. */
-  flightPathAngleDeg: finite,
-  note: v.string(),
+  flightPathAngleDeg: number('Negative below the horizontal.'),
+  note: text('Which surface, and what is not modelled.'),
 });
 
 /** First-order uncertainty, from the covariance of the case by the variational equations. */
@@ -102,19 +109,18 @@ const uncertainty = v.object({
   sigmaDistanceKm: finite,
   sigmaTimeS: finite,
   sigmaSpeedKmS: finite,
-  /** Never below zero. */
-  distance3SigmaKm: v.tuple([finite, finite]),
-  /** 1 σ, on the target plane; null where the object is bound. */
+  distance3SigmaKm: v.pipe(
+    v.tuple([finite, finite]),
+    v.description('Least and largest; never below zero.'),
+  ),
+  /** Null where the object is bound. */
   ellipse: v.nullable(
     v.object({
-      semiMajorKm: finite,
-      semiMinorKm: finite,
-      /** Of the major axis, from T towards R. */
-      angleTrDeg: finite,
-      /** Of the major axis, from ξ towards ζ. */
-      angleXiZetaDeg: finite,
-      /** Of B·T and B·R, km²: TT, TR, RR. */
-      covarianceKm2: triple,
+      semiMajorKm: number('1 σ on the target plane.'),
+      semiMinorKm: number('1 σ on the target plane.'),
+      angleTrDeg: number('Of the major axis, from T towards R.'),
+      angleXiZetaDeg: number('Of the major axis, from ξ towards ζ.'),
+      covarianceKm2: vector('Of B·T and B·R, km²: TT, TR, RR.'),
     }),
   ),
   stretchingEarthRadiiPerSigma: v.nullable(finite),
@@ -123,31 +129,35 @@ const uncertainty = v.object({
 const approach = v.object({
   body: bodyName,
   ...instant,
-  distanceKm: finite,
-  /** Distance in radii of the body. */
-  distanceRadii: finite,
-  speedKmS: finite,
-  /** Null when the object is bound to the body at closest approach. */
-  excessSpeedKmS: v.nullable(finite),
+  distanceKm: number(
+    'From the centre of the body; for an impact, of the periapsis it aims at and never reaches.',
+  ),
+  distanceRadii: number('The distance in radii of the body.'),
+  speedKmS: number('Relative to the body, at that distance.'),
+  excessSpeedKmS: v.nullable(number('Null where the object is bound to the body.')),
   outcome: v.picklist(['pass', 'atmosphere', 'impact']),
-  /** Where the hyperbola and the target plane osculate. */
-  osculatingAt: v.picklist(['closest-approach', 'entry-sphere', 'surface']),
+  osculatingAt: v.pipe(
+    v.picklist(['closest-approach', 'entry-sphere', 'surface']),
+    v.description('Where the hyperbola, the target plane and the excess speed osculate.'),
+  ),
   hyperbola: v.nullable(hyperbola),
   targetPlane: v.nullable(targetPlane),
   crossings: v.array(crossing),
   entry: v.optional(entry),
   surfaceImpact: v.optional(surfaceImpact),
   uncertainty: v.optional(uncertainty),
-  /** Gaussian of the target plane over the disc of the impact radius. */
-  impactProbability: v.optional(v.object({ firstOrder: finite })),
+  impactProbability: v.optional(
+    v.object({
+      firstOrder: number('Gaussian of the target plane over the disc of the impact radius.'),
+    }),
+  ),
   /** Heliocentric elements before and after the pass, where the body is the Earth and inside its sphere of influence. */
   orbitBefore: v.optional(elements),
   orbitAfter: v.optional(elements),
 });
 
 const classical = v.object({
-  /** What the chain takes for granted, in words. */
-  method: v.string(),
+  method: text('What the chain takes for granted, in words.'),
   objectElements: elements,
   earthElements: elements,
   moid: v.object({
@@ -156,8 +166,14 @@ const classical = v.object({
     objectTrueAnomalyDeg: finite,
     earthTrueAnomalyDeg: finite,
   }),
-  closest: v.object({ ...instant, distanceKm: finite }),
-  sphereOfInfluence: v.object({ radiusKm: finite, formulaRadiusKm: finite }),
+  closest: v.object({
+    ...instant,
+    distanceKm: number('Between the two-body orbits, without the pull of the Earth.'),
+  }),
+  sphereOfInfluence: v.object({
+    radiusKm: number('As used.'),
+    formulaRadiusKm: number('a (m/M)^(2/5).'),
+  }),
   sphereEntry: v.nullable(
     v.object({
       ...instant,
@@ -173,8 +189,8 @@ const classical = v.object({
       ...instant,
       radiusKm: finite,
       speedKmS: finite,
-      flightPathAngleDeg: finite,
-      travelTimeS: finite,
+      flightPathAngleDeg: number('Negative below the horizontal.'),
+      travelTimeS: number('From the sphere of influence to the interface.'),
     }),
   ),
   periapsis: v.nullable(
@@ -184,33 +200,30 @@ const classical = v.object({
 
 /** The unperturbed miss against the focused one: how far the Earth's pull moves the pass. */
 const comparison = v.object({
-  jdTdb: finite,
-  unperturbedDistanceKm: finite,
-  classicalPeriapsisKm: v.nullable(finite),
+  jdTdb: number('Of the n-body approach.'),
+  unperturbedDistanceKm: number('Between the two-body orbits, without the pull of the Earth.'),
+  classicalPeriapsisKm: v.nullable(number('Of the hyperbola joined at the sphere of influence.')),
   nBodyDistanceKm: finite,
-  impactParameterKm: v.nullable(finite),
+  impactParameterKm: v.nullable(number('Of the hyperbola osculating the n-body trajectory.')),
   classicalTimeMinusNBodyS: finite,
 });
 
 const finding = v.object({
   id: v.string(),
   kind: v.picklist(['answer', 'support', 'caution']),
-  /** A sentence a person can read aloud. */
-  text: v.string(),
+  text: text('Sentences a person can read aloud.'),
   figures: v.array(
     v.object({
       label: v.string(),
       value: finite,
       unit: v.string(),
-      /** The value with the digits it deserves, as it stands in the text. */
-      text: v.string(),
+      text: text('The value with the digits it deserves; the sentence may say fewer.'),
     }),
   ),
   /** Where it comes from. */
   basis: v.object({ model: v.string(), formula: v.string(), source: v.string() }),
   caution: v.nullable(v.string()),
-  /** Instant the finding is about, for "go there"; null when it is about no instant. */
-  tdbSeconds: v.nullable(finite),
+  tdbSeconds: v.nullable(number('Instant the finding is about; null when it is about none.')),
 });
 
 const assumed = v.object({
@@ -269,29 +282,35 @@ const model = v.object({
     toUtc: v.string(),
     rule: v.string(),
   }),
-  searchLimitsKm: v.record(v.string(), finite),
+  searchLimitsKm: v.pipe(
+    v.record(v.string(), finite),
+    v.description('By body: a minimum of the distance farther out is not an approach.'),
+  ),
   timeAssumptions: v.array(v.string()),
   notModelled: v.array(v.string()),
-  /** Why the trajectory ends before the span does, when it does (impact). */
-  trajectoryEnds: v.nullable(v.string()),
+  /** Null where the trajectory runs to the ends of the span. */
+  trajectoryEnds: v.nullable(text('Why the trajectory ends before the span does.')),
 });
 
 export const reportSchema = v.object({
   format: v.literal('skimline-report'),
   version: v.literal(REPORT_VERSION),
-  /** Time of making, UTC; not part of the fingerprint. */
-  madeAt: v.string(),
+  madeAt: text('Time of making, UTC; not part of the fingerprint.'),
   case: caseSection,
   model,
   classical: v.nullable(classical),
   approaches: v.array(approach),
-  /** Index into approaches of the one the briefing is about; null when there is none. */
-  principal: v.nullable(v.pipe(v.number(), v.integer())),
+  principal: v.nullable(
+    v.pipe(
+      v.number(),
+      v.integer(),
+      v.description('Index into approaches of the one the briefing is about; null without one.'),
+    ),
+  ),
   comparison: v.nullable(comparison),
   findings: v.array(finding),
   cautions: v.array(v.string()),
-  /** SHA-256, hex, of the report's canonical JSON without `madeAt` and `fingerprint`. */
-  fingerprint: v.string(),
+  fingerprint: text('SHA-256, hex, of the canonical JSON without madeAt and fingerprint.'),
 });
 
 export type Report = v.InferOutput<typeof reportSchema>;
