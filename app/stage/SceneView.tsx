@@ -31,7 +31,6 @@ export function SceneView({ scene, hidden }: { scene: SceneName; hidden: boolean
     if (plate.current === null) return;
     const own = new SceneEngine(scene, desk, plate.current, firstPalette.current, setDrawing);
     engine.current = own;
-    const stopPictures = offerPictures(scene, own);
     const observer = new ResizeObserver(() => measure(own, plate.current, words.current));
     observer.observe(plate.current);
     if (words.current !== null) observer.observe(words.current);
@@ -43,13 +42,16 @@ export function SceneView({ scene, hidden }: { scene: SceneName; hidden: boolean
     return () => {
       gone = true;
       observer.disconnect();
-      stopPictures();
       own.dispose();
       engine.current = null;
     };
   }, [scene, desk]);
 
   useEffect(() => engine.current?.setPalette(palette), [palette]);
+  useEffect(() => {
+    if (drawing !== 'drawn' || engine.current === null) return;
+    return offerPictures(scene, engine.current);
+  }, [scene, drawing]);
   useGestures(view, engine);
 
   const alone = layout === scene;

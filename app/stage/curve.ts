@@ -41,7 +41,7 @@ export class CurvePoints {
 }
 
 /** A chord may stray this far from its curve on the picture, px. */
-export const TOLERANCE_PX = 0.6;
+export const TOLERANCE_PX = 0.35;
 /** A curve twice as far off its chord as the probes say is still within the bound. */
 const DEVIATION_MARGIN = 2;
 /** 1 au split this often is below a metre. */

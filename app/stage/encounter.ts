@@ -1,4 +1,4 @@
-import type { Approach, Report } from '../../core/report/report';
+import type { Report } from '../../core/report/report';
 import { norm, unit, type Vec3, vec3 } from '../worker/core-geometry';
 import { SAMPLE, SPHERE_OF_INFLUENCE_KM } from '../worker/core-values';
 import type { Trajectory } from '../worker/trajectory';
@@ -9,9 +9,6 @@ export interface Encounter {
   readonly tdbSeconds: number;
   /** Distance that the Earth scene is framed for, km: that of the pass, where one is known. */
   readonly frameKm: number;
-  /** Geocentric distance at the pass, km; null while no pass is known. */
-  readonly passKm: number | null;
-  readonly outcome: Approach['outcome'] | null;
   /** Direction of motion on the way in (the incoming asymptote where there is one), ICRF axes. */
   readonly direction: Vec3;
   /** Heliocentric place of the Earth at that time, km, ICRF axes. */
@@ -38,8 +35,6 @@ export function encounterOf(report: Report | null, trajectory: Trajectory): Enco
   return {
     tdbSeconds,
     frameKm: passKm ?? SPHERE_OF_INFLUENCE_KM / 2,
-    passKm,
-    outcome: principal?.outcome ?? null,
     direction: plane?.s ?? unit(vec3(sample, SAMPLE.object + 3)),
     earthKm: vec3(sample, SAMPLE.earth),
     farthestFromSunKm: farthestFromSun(trajectory),

@@ -94,7 +94,7 @@ export class SceneEngine {
     };
     const restored = () => {
       this.onDrawing('drawn');
-      this.invalidate();
+      this.applyPalette();
     };
     canvas.addEventListener('webglcontextlost', lost);
     canvas.addEventListener('webglcontextrestored', restored);

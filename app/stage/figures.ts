@@ -19,11 +19,11 @@ export function distance(km: number): string {
   return km < IN_AU_FROM_KM ? kilometres(km) : astronomicalUnits(km);
 }
 
-/** A geocentric distance in the unit people picture: Earth radii when near, Moon's distances beyond. */
+/** A geocentric distance in the unit people picture: Earth radii when near, lunar distances beyond. */
 export function pictured(km: number): string {
   if (km < IN_RADII_BELOW_KM) return withUnit((km / EARTH_RADIUS_KM).toFixed(2), 'Earth radii');
   const moons = km / MOON_MEAN_DISTANCE_KM;
-  return withUnit(grouped(moons, moons < 100 ? 2 : 0), 'Moon’s distances');
+  return withUnit(grouped(moons, moons < 100 ? 2 : 0), 'lunar distances');
 }
 
 export function speed(kmS: number): string {

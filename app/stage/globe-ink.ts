@@ -219,11 +219,32 @@ function boxReach(projector: Projector, toCentre: Vec3, radiusKm: number): numbe
   return projector.focalPx * ((across + radiusKm) / nearest - across / depth) + 2;
 }
 
+const COARSEST_LAND_PX = 16;
+
+/**
+ * The land at full size and halved again and again. (Halving left to the graphics spoils the whole
+ * picture once they have been lost and given back, in software rendering at least.)
+ */
 function landTexture(land: HTMLCanvasElement): Texture {
   const texture = new CanvasTexture(land);
+  texture.generateMipmaps = false;
+  const levels = [land];
+  while (levels[levels.length - 1].width > COARSEST_LAND_PX) {
+    levels.push(halved(levels[levels.length - 1]));
+  }
+  texture.mipmaps = levels;
   texture.colorSpace = NoColorSpace;
   texture.wrapS = RepeatWrapping;
   texture.magFilter = LinearFilter;
   texture.minFilter = LinearMipmapLinearFilter;
   return texture;
+}
+
+function halved(picture: HTMLCanvasElement): HTMLCanvasElement {
+  const canvas = document.createElement('canvas');
+  canvas.width = picture.width / 2;
+  canvas.height = picture.height / 2;
+  const context = canvas.getContext('2d', { willReadFrequently: true });
+  context?.drawImage(picture, 0, 0, canvas.width, canvas.height);
+  return canvas;
 }

@@ -14,7 +14,8 @@ export function paintLand(widthPx: number): HTMLCanvasElement {
   const canvas = document.createElement('canvas');
   canvas.width = widthPx;
   canvas.height = widthPx / 2;
-  const context = canvas.getContext('2d');
+  // Kept in plain memory: it is uploaded again when the graphics come back.
+  const context = canvas.getContext('2d', { willReadFrequently: true });
   if (context === null) return canvas;
   context.fillStyle = '#000';
   context.fillRect(0, 0, canvas.width, canvas.height);

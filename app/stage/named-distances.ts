@@ -91,6 +91,7 @@ export function nameRing(sheet: Sheet, edge: Curve, entry: { id: string; text: s
     label(sheet, best, {
       ...entry,
       gap: 3,
+      prefer: [Math.cos(wanted), -Math.sin(wanted)],
       style: 'note',
       colour: inks.rgb.inkSoft,
       priority: 35,

@@ -1,7 +1,7 @@
+import type { Approach } from '../../core/report/report';
 import type { SceneName } from '../plate/scene-source';
 import { dot, ECLIPTIC_POLE_ICRF, scale, subtract, type Vec3, vec3 } from '../worker/core-geometry';
 import { CurvePoints, decimate } from './curve';
-import type { Encounter } from './encounter';
 import { distance, offset } from './figures';
 import { label, objectMark, ring, tick } from './marks';
 import { tickOffsets, tickStep } from './path-ticks';
@@ -31,7 +31,7 @@ const points = new CurvePoints();
 const unperturbedPoints = new CurvePoints();
 
 export function drawPath(sheet: Sheet, moment: Moment, scene: SceneName): void {
-  const { trajectory, sample, encounter } = moment;
+  const { trajectory, sample } = moment;
   const { pen, inks, projector } = sheet;
   const own = trajectoryCurve(
     trajectory,
@@ -44,25 +44,37 @@ export function drawPath(sheet: Sheet, moment: Moment, scene: SceneName): void {
   pen.line(split.before, split.before.length / 3, inks.behind);
   pen.line(split.after, split.after.length / 3, inks.ahead);
   drawTicks(sheet, moment, scene, own);
-  if (scene === 'earth') markPass(sheet, own, encounter);
+  if (scene === 'earth') markApproaches(sheet, moment, own);
 }
 
-/** The pass on the path, once it stands clear of the Earth's middle. */
-function markPass(sheet: Sheet, own: TrajectoryCurve, encounter: Encounter): void {
+/** Where the path comes nearest to the Earth and the Moon, once that stands clear of the body. */
+function markApproaches(sheet: Sheet, moment: Moment, own: TrajectoryCurve): void {
   const { inks, projector } = sheet;
-  const { passKm, outcome } = encounter;
-  if (passKm === null || passKm * projector.pxPerKm < LEAST_PASS_PX) return;
-  const point = pointOf(sheet, own, encounter.tdbSeconds);
-  if (point === null) return;
-  ring(sheet, point, 3.2, inks.rgb.object);
-  label(sheet, point, {
-    id: 'pass',
-    text: outcome === 'impact' ? 'meets the ground' : `closest, ${distance(passKm)}`,
-    gap: 8,
-    style: 'note',
-    colour: inks.rgb.object,
-    priority: 60,
-  });
+  for (const approach of moment.report?.approaches ?? []) {
+    const { body, distanceKm, outcome, tdbSeconds } = approach;
+    if (body !== 'Earth' && body !== 'Moon') continue;
+    const point = pointOf(sheet, own, tdbSeconds);
+    if (point === null || distanceKm * (projector.focalPx / point.depthKm) < LEAST_PASS_PX)
+      continue;
+    ring(sheet, point, 3.2, inks.rgb.object);
+    label(sheet, point, {
+      id: `approach ${tdbSeconds}`,
+      text: approachWords(body, outcome, distanceKm),
+      gap: 8,
+      style: 'note',
+      colour: inks.rgb.object,
+      priority: tdbSeconds === moment.encounter.tdbSeconds ? 60 : 55,
+    });
+  }
+}
+
+function approachWords(
+  body: 'Earth' | 'Moon',
+  outcome: Approach['outcome'],
+  distanceKm: number,
+): string {
+  if (outcome === 'impact') return body === 'Earth' ? 'meets the ground' : 'meets the Moon';
+  return `${body === 'Earth' ? 'closest' : 'closest to the Moon'}, ${distance(distanceKm)}`;
 }
 
 /** The points before and after a parameter, both with the curve's own point there. */
