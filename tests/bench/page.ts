@@ -130,8 +130,17 @@ async function paste(page: Page, text: string): Promise<number> {
         watch.observe(findings, { subtree: true, childList: true, characterData: true });
         area.focus();
         area.select();
+        const pasted = new ClipboardEvent('paste', {
+          clipboardData: data,
+          bubbles: true,
+          cancelable: true,
+        });
+        // A made-up event inserts nothing by itself: what the browser would do is done by hand.
+        if (!area.dispatchEvent(pasted)) return;
+        const value = Object.getOwnPropertyDescriptor(HTMLTextAreaElement.prototype, 'value');
+        value?.set?.call(area, content);
         area.dispatchEvent(
-          new ClipboardEvent('paste', { clipboardData: data, bubbles: true, cancelable: true }),
+          new InputEvent('input', { bubbles: true, inputType: 'insertFromPaste' }),
         );
       }),
     text,
