@@ -1,4 +1,4 @@
-import { toJsonSchema } from '@valibot/to-json-schema';
+import { type ConversionConfig, toJsonSchema } from '@valibot/to-json-schema';
 import { CASE_FILE_VERSION, caseFileSchema } from '../case/case-file';
 import { REPORT_VERSION, reportSchema } from './report';
 
@@ -6,7 +6,12 @@ import { REPORT_VERSION, reportSchema } from './report';
 export function publishedSchemas(): Record<string, string> {
   const text = (id: string, title: string, description: string, schema: object): string =>
     `${JSON.stringify({ ...schema, $id: id, title, description }, null, 2)}\n`;
-  const options = { errorMode: 'ignore' } as const;
+  const options: ConversionConfig = {
+    errorMode: 'ignore',
+    // A vector has three components, not three or more.
+    overrideSchema: ({ valibotSchema, jsonSchema }) =>
+      valibotSchema.type === 'tuple' ? { ...jsonSchema, additionalItems: false } : jsonSchema,
+  };
   return {
     'report.schema.json': text(
       `skimline-report-${REPORT_VERSION}`,

@@ -1,5 +1,3 @@
-import { readFileSync } from 'node:fs';
-import { Ajv } from 'ajv';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { DEMOS } from '../../../app/desk/demos';
 import { runAssessment } from '../../../core/assess';
@@ -11,8 +9,9 @@ import { fingerprintOf, reportJsonText } from '../../../core/report/canonical';
 import { writeEphemerisCsv } from '../../../core/report/ephemeris-csv';
 import { writeOem } from '../../../core/report/oem';
 import type { Report } from '../../../core/report/report';
-import { publishedSchemas } from '../../../core/report/schema';
 import { fetchPacked, MADE_AT } from '../../helpers/assess';
+import { published } from './published';
+import { readOem } from './read-oem';
 
 /** The invented demonstration cases, carried through the whole pipeline. */
 
@@ -53,27 +52,11 @@ beforeAll(async () => {
 });
 
 describe('the report', () => {
-  it('of every demonstration case is valid by the published schema, and a maimed one is not', () => {
-    const schema = JSON.parse(
-      readFileSync(new URL('../../../public/schema/report.schema.json', import.meta.url), 'utf8'),
-    );
-    const validate = new Ajv({ strict: false }).compile(schema);
+  it('of every demonstration case is valid by the published schema', () => {
+    const validate = published('report.schema.json');
     for (const { report } of outcomes.values()) {
       const file: unknown = JSON.parse(reportJsonText(report));
       expect([validate(file), validate.errors]).toEqual([true, null]);
-    }
-    const { approaches: _, ...maimed } = of('pass').report;
-    expect(validate(maimed)).toBe(false);
-    expect(validate({ ...of('pass').report, fingerprint: 7 })).toBe(false);
-  });
-
-  it('has the schemas that are published', () => {
-    for (const [name, text] of Object.entries(publishedSchemas())) {
-      const published = readFileSync(
-        new URL(`../../../public/schema/${name}`, import.meta.url),
-        'utf8',
-      );
-      expect(published).toBe(text);
     }
   });
 
@@ -135,47 +118,20 @@ describe('the report', () => {
   });
 });
 
-describe('the OEM', () => {
-  it('has the header, the metadata in order and rising epochs that 502.0-B-3 asks for', () => {
+describe('the OEM of a demonstration case', () => {
+  it('is one by 502.0-B-3', () => {
     for (const { report, trajectory } of outcomes.values()) {
-      const lines = writeOem(report, trajectory.samples()).split('\n');
-      expect(lines[0]).toBe('CCSDS_OEM_VERS = 3.0');
-      expect(lines.some((line) => line.startsWith('CREATION_DATE = '))).toBe(true);
-      expect(lines.some((line) => line.startsWith('ORIGINATOR = '))).toBe(true);
-      const keys = [
-        'OBJECT_NAME',
-        'OBJECT_ID',
-        'CENTER_NAME',
-        'REF_FRAME',
-        'TIME_SYSTEM',
-        'START_TIME',
-        'STOP_TIME',
-      ];
-      const starts = lines.flatMap((line, i) => (line === 'META_START' ? [i] : []));
-      expect(starts.length).toBeGreaterThan(0);
-      for (const [n, start] of starts.entries()) {
-        expect(lines.slice(start + 1, start + 8).map((line) => line.split(' = ')[0])).toEqual(keys);
-        const end = starts[n + 1] ?? lines.length;
-        const stop = lines.indexOf('META_STOP', start);
-        const rows = lines.slice(stop + 1, end).filter((line) => line !== '');
-        const epochs = rows.map((row) => row.split(' ')[0]);
-        expect(epochs.length).toBeGreaterThan(1);
-        expect(epochs).toEqual([...new Set(epochs)].sort());
-        for (const row of rows) expect(row.split(' ')).toHaveLength(7);
-        expect(lines[start + 6]).toBe(`START_TIME = ${epochs[0]}`);
-        expect(lines[start + 7]).toBe(`STOP_TIME = ${epochs.at(-1)}`);
-      }
+      const { segments } = readOem(writeOem(report, trajectory.samples()));
+      expect(segments[0].meta.get('CENTER_NAME')).toBe('SUN');
+      expect(segments[0].states.length).toBeGreaterThan(100);
     }
   });
 
   it('carries the states of the trajectory: geocentric distance at the pass', () => {
     const { report, trajectory } = of('pass');
-    const text = writeOem(report, trajectory.samples());
-    const earth = text.slice(text.indexOf('CENTER_NAME = EARTH'));
-    const distances = earth
-      .split('\n')
-      .filter((line) => /^\d{4}-/.test(line))
-      .map((line) => Math.hypot(...line.split(' ').slice(1, 4).map(Number)));
+    const { segments } = readOem(writeOem(report, trajectory.samples()));
+    const earth = segments.find((segment) => segment.meta.get('CENTER_NAME') === 'EARTH');
+    const distances = (earth?.states ?? []).map((state) => Math.hypot(...state.slice(0, 3)));
     const least = Math.min(...distances);
     // Samples stand apart; none can be nearer than the closest approach, one must be near it.
     expect(least).toBeGreaterThanOrEqual(main(of('pass')).distanceKm - 0.001);
@@ -183,15 +139,12 @@ describe('the OEM', () => {
   });
 });
 
-describe('the CSV', () => {
-  it('has as many fields in every row as in its head', () => {
+describe('the CSV of a demonstration case', () => {
+  it('has a row for every sample, without a hole', () => {
     const { trajectory } = of('impact');
-    const lines = writeEphemerisCsv(trajectory.samples()).trimEnd().split('\r\n');
-    const head = lines[0].split(',');
-    expect(head).toContain('geocentricIcrf.xKm');
-    expect(lines).toHaveLength(trajectory.count + 1);
-    for (const line of lines) expect(line.split(',')).toHaveLength(head.length);
-    expect(lines.join('')).not.toMatch(/NaN|Infinity/);
+    const text = writeEphemerisCsv(trajectory.samples());
+    expect(text.trimEnd().split('\r\n')).toHaveLength(trajectory.count + 1);
+    expect(text).not.toMatch(/NaN|Infinity|,,/);
   });
 });
 
