@@ -41,7 +41,7 @@ function samplesOf(rows: { tdbSeconds: number; geocentric: number[] }[]): Float6
 
 const T0 = instantOf('2041-03-08T00:00:00').tdbSeconds;
 /** Straight through the sphere of influence (925 000 km): out, in, in, in, out. */
-const THROUGH = [-2e6, -9e5, 1e4, 9e5, 2e6].map((x, i) => ({
+const THROUGH = [-9.3e5, -9.2e5, 1e4, 9.2e5, 9.3e5].map((x, i) => ({
   tdbSeconds: T0 + i * 90000.125,
   geocentric: [x, 20000.5, -300.25, 11.125, 0.5, -1e-7],
 }));
