@@ -1,0 +1,165 @@
+import { geoCircle, geoGraticule, geoPath } from 'd3-geo';
+import { useEffect, useId, useMemo, useRef } from 'react';
+import type { Approach } from '../../core/report/report';
+import { reportOfTrajectory } from '../ribbon/shown-report';
+import { useSize } from '../ribbon/use-size';
+import { distanceWords, momentWords } from '../ribbon/words';
+import { useDesk, useDeskStore } from '../store/context';
+import type { Trajectory } from '../worker/trajectory';
+import { groundTrack, type LonLat, pointsBeneath } from './ground-track';
+import { LAND } from './land';
+import { MapMarks, MapTicks } from './MapMarks';
+import { mapMarks, mapProjection, middleLongitude, placeWords } from './map-geometry';
+import { mapWords } from './map-words';
+import './ground-map.css';
+
+/** Height of the line of words under the map, px. */
+const FOOT_PX = 22;
+/** Below this width only the marks are named, and every tick but hours is left out. */
+const THUMBNAIL_PX = 520;
+
+const GRATICULE = geoGraticule().step([30, 30])();
+const nightOf = ([longitude, latitude]: LonLat) =>
+  geoCircle()
+    .center([longitude + 180, -latitude])
+    .radius(90)();
+
+/** The path of the point beneath the object, with day and night at the clock. */
+export function GroundMap() {
+  const report = useDeskStore(reportOfTrajectory);
+  const trajectory = useDeskStore((state) => state.trajectory);
+  const principal =
+    report === null || report.principal === null ? null : report.approaches[report.principal];
+  if (principal === null) return null;
+  if (principal.body !== 'Earth') {
+    return (
+      <p className="map-none">
+        There is no ground track: the principal approach is to the {principal.body}.
+      </p>
+    );
+  }
+  return <Track approach={principal} trajectory={trajectory} />;
+}
+
+function Track({ approach, trajectory }: { approach: Approach; trajectory: Trajectory }) {
+  const name = useId();
+  const box = useRef<HTMLDivElement>(null);
+  const { widthPx, heightPx } = useSize(box);
+  const track = useMemo(() => groundTrack(approach, trajectory), [approach, trajectory]);
+  const map = useMemo(() => {
+    if (track === null || widthPx < 60 || heightPx < 60) return null;
+    const closest = pointsBeneath(trajectory, track.zeroTdbSeconds)?.object ?? track.points[0];
+    const projection = mapProjection(
+      widthPx,
+      heightPx - FOOT_PX,
+      middleLongitude(approach, closest),
+    );
+    return { projection, path: geoPath(projection), marks: mapMarks(approach, track, closest) };
+  }, [approach, trajectory, track, widthPx, heightPx]);
+  const isThumbnail = widthPx < THUMBNAIL_PX;
+  return (
+    <div ref={box} className="map">
+      {map !== null && track !== null && (
+        <>
+          <svg
+            className="map-svg"
+            width={widthPx}
+            height={heightPx - FOOT_PX}
+            role="img"
+            aria-labelledby={`${name} ${name}-words`}
+          >
+            <title id={name}>Ground map</title>
+            <desc id={`${name}-words`}>{mapWords(approach, map.marks)}</desc>
+            <path className="map-graticule" d={map.path(GRATICULE) ?? ''} />
+            <path className="map-land" d={map.path(LAND) ?? ''} />
+            <Night map={map} trajectory={trajectory} />
+            <path className="map-frame" d={map.path({ type: 'Sphere' }) ?? ''} />
+            <path
+              className="map-track"
+              d={map.path({ type: 'LineString', coordinates: track.points }) ?? ''}
+            />
+            {!isThumbnail && <MapTicks map={map} track={track} />}
+            <MapMarks map={map} withWords={!isThumbnail} widthPx={widthPx} />
+            <Now map={map} trajectory={trajectory} />
+          </svg>
+          <Beneath trajectory={trajectory} isThumbnail={isThumbnail} />
+        </>
+      )}
+    </div>
+  );
+}
+
+type Map = { projection: ReturnType<typeof mapProjection>; path: ReturnType<typeof geoPath> };
+
+/** The half of the Earth in darkness at the clock, and the point beneath the Sun. */
+function Night({ map, trajectory }: { map: Map; trajectory: Trajectory }) {
+  const { clock } = useDesk();
+  const night = useRef<SVGPathElement>(null);
+  const sun = useRef<SVGGElement>(null);
+  useEffect(() => {
+    const draw = () => {
+      const points = pointsBeneath(trajectory, clock.tdbSeconds);
+      if (points === null) return;
+      night.current?.setAttribute('d', map.path(nightOf(points.sun)) ?? '');
+      const [x, y] = map.projection(points.sun) ?? [0, 0];
+      sun.current?.setAttribute('transform', `translate(${x} ${y})`);
+    };
+    draw();
+    return clock.subscribe(draw);
+  }, [map, trajectory, clock]);
+  return (
+    <>
+      <path ref={night} className="map-night" />
+      <g ref={sun} className="map-sun">
+        <title>The Sun is overhead here</title>
+        <circle r={5} />
+        <circle r={1.2} />
+      </g>
+    </>
+  );
+}
+
+/** The point beneath the object at the clock. */
+function Now({ map, trajectory }: { map: Map; trajectory: Trajectory }) {
+  const { clock } = useDesk();
+  const mark = useRef<SVGGElement>(null);
+  useEffect(() => {
+    const draw = () => {
+      const points = pointsBeneath(trajectory, clock.tdbSeconds);
+      if (points === null) return;
+      const [x, y] = map.projection(points.object) ?? [0, 0];
+      mark.current?.setAttribute('transform', `translate(${x} ${y})`);
+    };
+    draw();
+    return clock.subscribe(draw);
+  }, [map, trajectory, clock]);
+  return (
+    <g ref={mark} className="map-now">
+      <circle r={7} />
+      <circle className="map-now-dot" r={3} />
+    </g>
+  );
+}
+
+/** Where the object stands overhead at the clock, in words and figures. */
+function Beneath({ trajectory, isThumbnail }: { trajectory: Trajectory; isThumbnail: boolean }) {
+  const { clock } = useDesk();
+  const words = useRef<HTMLSpanElement>(null);
+  useEffect(() => {
+    const write = () => {
+      const points = pointsBeneath(trajectory, clock.tdbSeconds);
+      if (points === null || words.current === null) return;
+      const place = `${placeWords(points.object)}, ${distanceWords(points.altitudeKm)} up`;
+      words.current.textContent = isThumbnail
+        ? place
+        : `${place}, ${momentWords(points.tdbSeconds)} UTC`;
+    };
+    write();
+    return clock.subscribe(write);
+  }, [trajectory, clock, isThumbnail]);
+  return (
+    <p className="map-beneath">
+      {isThumbnail ? 'Over' : 'Overhead at'} <span ref={words} className="figures" />
+    </p>
+  );
+}
