@@ -67,6 +67,7 @@ export function PlaneSheet(props: {
         <g clipPath={`url(#${title}-clip)`}>
           <Axes geometry={geometry} axes={axes} widthPx={widthPx} heightPx={heightPx} />
           <Discs approach={approach} geometry={geometry} />
+          <Ellipses geometry={geometry} />
           <Aim approach={approach} geometry={geometry} widthPx={widthPx} heightPx={heightPx} />
         </g>
         <rect className="plane-frame" width={widthPx} height={heightPx} />
@@ -132,6 +133,20 @@ function Discs({ approach, geometry }: { approach: Approach; geometry: PlaneGeom
       </text>
     </>
   );
+}
+
+/** Where the covariance says it may aim: 1, 2 and 3 σ. */
+function Ellipses({ geometry: { aim, ellipse } }: { geometry: PlaneGeometry }) {
+  if (ellipse === null) return null;
+  return [3, 2, 1].map((sigmas) => (
+    <ellipse
+      key={sigmas}
+      className="plane-ellipse"
+      rx={sigmas * ellipse.majorPx}
+      ry={sigmas * ellipse.minorPx}
+      transform={`translate(${aim.x} ${aim.y}) rotate(${ellipse.turnDeg})`}
+    />
+  ));
 }
 
 function Aim(props: {

@@ -23,6 +23,8 @@ export interface PlaneGeometry {
   aim: { x: number; y: number };
   /** Whether the aim lies inside the sheet. */
   aimIsShown: boolean;
+  /** The 1, 2 and 3 σ ellipses about the aim; null without a covariance. */
+  ellipse: { majorPx: number; minorPx: number; turnDeg: number } | null;
   ticks: { across: PlaneTick[]; upright: PlaneTick[] };
 }
 
@@ -99,10 +101,22 @@ export function planeGeometry(
     capturePx: plane.impactRadiusKm * pxPerKm,
     aim: at,
     aimIsShown: at.x >= 0 && at.x <= widthPx && at.y >= 0 && at.y <= heightPx,
+    ellipse: ellipseOf(approach, axes, pxPerKm),
     ticks: {
       across: ticksAlong(widthPx, pxPerKm, step, 1),
       upright: ticksAlong(heightPx, pxPerKm, step, down),
     },
+  };
+}
+
+/** Half axes of the 1 σ ellipse, and its turn on the sheet (clockwise, as SVG turns). */
+function ellipseOf(approach: Approach, axes: PlaneAxes, pxPerKm: number): PlaneGeometry['ellipse'] {
+  const ellipse = approach.uncertainty?.ellipse ?? null;
+  if (ellipse === null) return null;
+  return {
+    majorPx: ellipse.semiMajorKm * pxPerKm,
+    minorPx: ellipse.semiMinorKm * pxPerKm,
+    turnDeg: axes === 'tr' ? ellipse.angleTrDeg : -ellipse.angleXiZetaDeg,
   };
 }
 

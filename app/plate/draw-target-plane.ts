@@ -36,6 +36,27 @@ export function drawTargetPlane(pen: Pen, area: Area, approach: Approach): void 
   rule(pen, [at(0, -reach), at(0, reach)], palette.hairline);
   disc(plane.impactRadiusKm, [8, 6], null);
   disc(bodyKm, [], palette.earth);
+  const ellipse = approach.uncertainty?.ellipse ?? null;
+  if (ellipse !== null) {
+    for (const sigmas of [3, 2, 1]) {
+      context.beginPath();
+      context.ellipse(
+        ...at(plane.bDotTKm, plane.bDotRKm),
+        Math.max(0.5, sigmas * ellipse.semiMajorKm * px),
+        Math.max(0.5, sigmas * ellipse.semiMinorKm * px),
+        (ellipse.angleTrDeg * Math.PI) / 180,
+        0,
+        2 * Math.PI,
+      );
+      context.globalAlpha = 0.16;
+      context.fillStyle = palette.object;
+      context.fill();
+      context.globalAlpha = 1;
+      context.strokeStyle = palette.object;
+      context.lineWidth = 1;
+      context.stroke();
+    }
+  }
   rule(pen, [at(0, 0), at(plane.bDotTKm, plane.bDotRKm)], palette.object, 2);
   const [x, y] = at(plane.bDotTKm, plane.bDotRKm);
   context.fillStyle = palette.object;
@@ -64,6 +85,14 @@ export function drawTargetPlane(pen: Pen, area: Area, approach: Approach): void 
     ['ξ', km(plane.xiKm)],
     ['ζ', km(plane.zetaKm)],
     ['impact radius', km(plane.impactRadiusKm)],
+    ...(ellipse === null
+      ? []
+      : [
+          ['1 σ ellipse', `${km(ellipse.semiMajorKm)} × ${km(ellipse.semiMinorKm)}`] as [
+            string,
+            string,
+          ],
+        ]),
   ];
   for (const [i, [name, value]] of rows.entries()) {
     const row = area.y + 46 + i * 46;
@@ -76,7 +105,7 @@ export function drawTargetPlane(pen: Pen, area: Area, approach: Approach): void 
       ? ['solid: the Earth', 'dashed: what meets it']
       : ['solid: the body', 'dashed: what meets it'];
   for (const [i, line] of words.entries()) {
-    write(pen, line, left, area.y + 294 + i * 21, { px: 16 }, palette.inkSoft);
+    write(pen, line, left, area.y + 318 + (i - words.length + 1) * 20, { px: 16 }, palette.inkSoft);
   }
 }
 
