@@ -12,7 +12,7 @@ const TYPING_REST_MS = 120;
 /** A case is a short text; a larger file was not meant for the sheet. */
 const LARGEST_FILE_BYTES = 1_000_000;
 /** How many supporting findings a new case puts on the plate by itself. */
-const FINDINGS_ON_PLATE = 3;
+const FINDINGS_ON_PLATE = 5;
 
 /** Typed letter by letter, or put there as a whole (pasted, dropped, opened, picked). */
 export type TextSource = 'typed' | 'replaced';

@@ -61,6 +61,8 @@ export function drawGround(pen: Pen, area: Area, approach: Approach): void {
     surfaceImpact === undefined
       ? 'ring: entry interface, 100\u2009km'
       : 'ring: entry interface; cross: ground without air';
+  context.fillStyle = palette.ground;
+  context.fillRect(box.x + 1, box.y + box.height - 29, box.width - 2, 28);
   write(pen, words, box.x + 8, box.y + box.height - 10, { px: 16 }, palette.ink);
 }
 

@@ -7,7 +7,7 @@ import type { DeskContent, OrbitCase } from './types';
 export const CASE_FILE_VERSION = 1;
 
 const finite = v.pipe(v.number(), v.finite());
-const triple = v.tuple([finite, finite, finite]);
+const triple = v.strictTuple([finite, finite, finite]);
 const epoch = v.object({
   scale: v.picklist(['TDB', 'TT', 'TAI', 'UTC', 'GPS']),
   mjd: v.pipe(v.number(), v.integer()),

@@ -357,20 +357,20 @@ describe('the clock', () => {
 
 describe('what is handed over', () => {
   it('puts the first supporting findings of a new case on the plate', async () => {
-    const findings = ['a', 'b', 'c', 'd'].map(support);
+    const findings = ['a', 'b', 'c', 'd', 'e', 'f', 'g'].map(support);
     const { state } = await finished(inventedReport({ findings }));
-    expect(state().plateFindings).toEqual(['a', 'b', 'c']);
+    expect(state().plateFindings).toEqual(['a', 'b', 'c', 'd', 'e']);
   });
 
   it('keeps the chosen findings while the case is edited', async () => {
-    const findings = ['a', 'b', 'c', 'd'].map(support);
+    const findings = ['a', 'b', 'c', 'd', 'e', 'f', 'g'].map(support);
     const { controller, state, runs } = await finished(inventedReport({ findings }));
     controller.togglePlateFinding('a');
-    controller.togglePlateFinding('d');
+    controller.togglePlateFinding('g');
     controller.setChoice('centre', 'Sun');
     await settle();
     runs[1].tell(reported(inventedReport({ findings })));
-    expect(state().plateFindings).toEqual(['b', 'c', 'd']);
+    expect(state().plateFindings).toEqual(['b', 'c', 'd', 'e', 'g']);
   });
 
   it('saves what the worker writes, under its name', async () => {
