@@ -3,10 +3,11 @@ import type { SceneName } from '../plate/scene-source';
 import { useDesk, useDeskStore } from '../store/context';
 import type { NamedDistances, Station } from '../store/store';
 import { usePalette } from '../theme/palette';
-import { type Drawing, SceneEngine } from './engine';
+import { SceneEngine } from './engine';
 import { Readings } from './Readings';
 import { offerPictures } from './scene-picture';
 import { STATIONS } from './stations';
+import type { Drawing } from './surface';
 import { pressKey, useGestures, ZOOM_STEP } from './use-gestures';
 
 const NAMES: Readonly<Record<SceneName, string>> = { sun: 'Sun-centred', earth: 'Earth-centred' };
@@ -19,7 +20,7 @@ export function SceneView({ scene, hidden }: { scene: SceneName; hidden: boolean
   const palette = usePalette();
   const layout = useDeskStore((state) => state.stageLayout);
   const station = useDeskStore((state) => state[STATION_FIELD[scene]]);
-  const [drawing, setDrawing] = useState<Drawing>('drawn');
+  const [drawing, setDrawing] = useState<Drawing | 'starting'>('starting');
   const view = useRef<HTMLDivElement>(null);
   const plate = useRef<HTMLDivElement>(null);
   const words = useRef<HTMLDivElement>(null);
@@ -85,7 +86,7 @@ export function SceneView({ scene, hidden }: { scene: SceneName; hidden: boolean
         }}
       >
         <div ref={plate} className="scene-plate" />
-        {drawing !== 'drawn' && (
+        {(drawing === 'missing' || drawing === 'lost') && (
           <p className="scene-undrawn" role="status">
             {UNDRAWN[drawing]}
           </p>

@@ -1,21 +1,24 @@
 import {
   BufferAttribute,
   BufferGeometry,
-  CanvasTexture,
+  DataTexture,
   DoubleSide,
   GLSL3,
   LinearFilter,
   LinearMipmapLinearFilter,
   Matrix3,
   Mesh,
-  NoColorSpace,
   RawShaderMaterial,
+  RedFormat,
   RepeatWrapping,
+  Sphere,
   type Texture,
+  UnsignedByteType,
   Vector2,
   Vector3,
 } from 'three';
 import { dot, type Mat3, norm, rotate, subtract, type Vec3 } from '../worker/core-geometry';
+import { landLevels } from './land-picture';
 import type { Projector } from './projection';
 
 /**
@@ -91,11 +94,9 @@ export interface GlobeLook {
 
 export class GlobeInk {
   readonly mesh: Mesh<BufferGeometry, RawShaderMaterial>;
-  private readonly landWidthPx: number;
 
-  /** @param land  picture of the land in plate carrée; null for a bare globe */
-  constructor(land: HTMLCanvasElement | null) {
-    this.landWidthPx = land?.width ?? 0;
+  /** @param hasLand  false for a bare globe */
+  constructor(private readonly hasLand: boolean) {
     const geometry = new BufferGeometry();
     geometry.setAttribute(
       'position',
@@ -120,7 +121,7 @@ export class GlobeInk {
         day: { value: new Vector3(1, 1, 1) },
         landDay: { value: new Vector3(1, 1, 1) },
         ink: { value: new Vector3(0, 0, 0) },
-        land: { value: land === null ? null : landTexture(land) },
+        land: { value: hasLand ? landTexture() : null },
         pixelRatio: { value: 1 },
       },
       transparent: true,
@@ -132,6 +133,8 @@ export class GlobeInk {
     });
     this.mesh = new Mesh(geometry, material);
     this.mesh.frustumCulled = false;
+    // Sorting would measure it; the order of drawing is set by hand.
+    geometry.boundingSphere = new Sphere();
   }
 
   /**
@@ -187,10 +190,9 @@ export class GlobeInk {
     const inView = Math.min(radiusPx, 4 * Math.max(widthPx, heightPx));
     uniforms.hatches.value = 2 ** Math.round(Math.log2(inView / HATCH_PX));
     uniforms.hatchStrength.value = Math.min(1, Math.max(0, radiusPx / HATCHED_FROM_PX - 0.5));
-    uniforms.landLevel.value =
-      this.landWidthPx === 0
-        ? -1
-        : Math.max(0, Math.log2(this.landWidthPx / (2 * Math.PI * radiusPx * pixelRatio)));
+    uniforms.landLevel.value = this.hasLand
+      ? Math.max(0, Math.log2(LAND_WIDTH / (2 * Math.PI * radiusPx * pixelRatio)))
+      : -1;
   }
 
   dispose(): void {
@@ -219,32 +221,21 @@ function boxReach(projector: Projector, toCentre: Vec3, radiusKm: number): numbe
   return projector.focalPx * ((across + radiusKm) / nearest - across / depth) + 2;
 }
 
-const COARSEST_LAND_PX = 16;
+const LAND_WIDTH = 512;
+const COARSEST_LAND_WIDTH = 16;
 
 /**
- * The land at full size and halved again and again. (Halving left to the graphics spoils the whole
- * picture once they have been lost and given back, in software rendering at least.)
+ * The land's texture with its coarser levels made here: left to the graphics, they spoil the whole
+ * picture once the graphics have been lost and given back (seen in software rendering).
  */
-function landTexture(land: HTMLCanvasElement): Texture {
-  const texture = new CanvasTexture(land);
-  texture.generateMipmaps = false;
-  const levels = [land];
-  while (levels[levels.length - 1].width > COARSEST_LAND_PX) {
-    levels.push(halved(levels[levels.length - 1]));
-  }
+function landTexture(): DataTexture {
+  const levels = landLevels(LAND_WIDTH, COARSEST_LAND_WIDTH);
+  const [{ data, width, height }] = levels;
+  const texture = new DataTexture(data, width, height, RedFormat, UnsignedByteType);
   texture.mipmaps = levels;
-  texture.colorSpace = NoColorSpace;
   texture.wrapS = RepeatWrapping;
   texture.magFilter = LinearFilter;
   texture.minFilter = LinearMipmapLinearFilter;
+  texture.needsUpdate = true;
   return texture;
-}
-
-function halved(picture: HTMLCanvasElement): HTMLCanvasElement {
-  const canvas = document.createElement('canvas');
-  canvas.width = picture.width / 2;
-  canvas.height = picture.height / 2;
-  const context = canvas.getContext('2d', { willReadFrequently: true });
-  context?.drawImage(picture, 0, 0, canvas.width, canvas.height);
-  return canvas;
 }

@@ -1,4 +1,4 @@
-import { CanvasTexture, LinearFilter, NoColorSpace, Vector2 } from 'three';
+import { DataTexture, LinearFilter, RGFormat, UnsignedByteType, Vector2 } from 'three';
 import { LABEL_FONTS, type LabelStyle, NAME_SPACING_PX } from './labels';
 
 /**
@@ -11,6 +11,7 @@ import { LABEL_FONTS, type LabelStyle, NAME_SPACING_PX } from './labels';
 
 const ATLAS_WIDTH_PX = 1024;
 const ATLAS_HEIGHT_PX = 512;
+const CHANNELS = 2;
 const HALO_PX = 1.75;
 /** Room around a word in the atlas, px of the picture. */
 const MARGIN_PX = 3;
@@ -25,9 +26,13 @@ export interface Word {
 }
 
 export class Lettering {
-  readonly texture: CanvasTexture;
+  readonly texture: DataTexture;
   readonly size = new Vector2(ATLAS_WIDTH_PX, ATLAS_HEIGHT_PX);
-  private readonly context: CanvasRenderingContext2D | null;
+  private readonly atlas = new Uint8Array(ATLAS_WIDTH_PX * ATLAS_HEIGHT_PX * CHANNELS);
+  /** One word is written here, then copied into the atlas. */
+  private readonly slip = document.createElement('canvas').getContext('2d', {
+    willReadFrequently: true,
+  });
   private readonly words = new Map<string, Word>();
   private readonly widths = new Map<string, number>();
   private pixelRatio = 1;
@@ -35,16 +40,16 @@ export class Lettering {
   private top = 0;
 
   constructor() {
-    const canvas = document.createElement('canvas');
-    canvas.width = ATLAS_WIDTH_PX;
-    canvas.height = ATLAS_HEIGHT_PX;
-    this.context = canvas.getContext('2d', { willReadFrequently: true });
-    this.texture = new CanvasTexture(canvas);
-    this.texture.colorSpace = NoColorSpace;
-    this.texture.flipY = false;
-    this.texture.generateMipmaps = false;
+    this.texture = new DataTexture(
+      this.atlas,
+      ATLAS_WIDTH_PX,
+      ATLAS_HEIGHT_PX,
+      RGFormat,
+      UnsignedByteType,
+    );
     this.texture.minFilter = LinearFilter;
-    this.clear();
+    this.texture.magFilter = LinearFilter;
+    this.texture.needsUpdate = true;
   }
 
   /** Words are written for this many device pixels per px. */
@@ -58,8 +63,9 @@ export class Lettering {
   width(style: LabelStyle, text: string): number {
     const key = `${style} ${text}`;
     const known = this.widths.get(key);
-    if (known !== undefined || this.context === null) return known ?? 0;
-    const width = this.context.measureText(this.dress(this.context, style, text, 1)).width;
+    const { slip } = this;
+    if (known !== undefined || slip === null) return known ?? 0;
+    const width = slip.measureText(dress(slip, style, text, 1)).width;
     this.widths.set(key, width);
     return width;
   }
@@ -68,9 +74,10 @@ export class Lettering {
   word(style: LabelStyle, text: string): Word | null {
     const key = `${style} ${text}`;
     const known = this.words.get(key);
-    const { context, pixelRatio } = this;
-    if (known !== undefined || context === null) return known ?? null;
-    const width = Math.ceil((this.width(style, text) + 2 * MARGIN_PX) * pixelRatio);
+    const { slip, pixelRatio } = this;
+    if (known !== undefined || slip === null) return known ?? null;
+    const wanted = Math.ceil((this.width(style, text) + 2 * MARGIN_PX) * pixelRatio);
+    const width = Math.min(ATLAS_WIDTH_PX, wanted);
     const height = Math.ceil(HEIGHT_PX * pixelRatio);
     if (this.left + width > ATLAS_WIDTH_PX) {
       this.left = 0;
@@ -81,7 +88,7 @@ export class Lettering {
     const word = { left: this.left, top: this.top, width, height };
     this.left += width;
     this.words.set(key, word);
-    this.write(context, word, style, text);
+    this.copy(write(slip, word, style, text, pixelRatio), word);
     this.texture.needsUpdate = true;
     return word;
   }
@@ -92,48 +99,59 @@ export class Lettering {
     this.widths.clear();
     this.left = 0;
     this.top = 0;
-    const { context } = this;
-    if (context === null) return;
-    context.globalCompositeOperation = 'source-over';
-    context.fillStyle = '#000';
-    context.fillRect(0, 0, ATLAS_WIDTH_PX, ATLAS_HEIGHT_PX);
-    this.texture.needsUpdate = true;
   }
 
   dispose(): void {
     this.texture.dispose();
   }
 
-  private write(
-    context: CanvasRenderingContext2D,
-    word: Word,
-    style: LabelStyle,
-    text: string,
-  ): void {
-    const { pixelRatio } = this;
-    const letters = this.dress(context, style, text, pixelRatio);
-    context.globalCompositeOperation = 'lighter';
-    context.textBaseline = 'middle';
-    context.lineJoin = 'round';
-    context.lineWidth = 2 * HALO_PX * pixelRatio;
-    context.strokeStyle = '#0f0';
-    context.fillStyle = '#f00';
-    const x = word.left + MARGIN_PX * pixelRatio;
-    const y = word.top + Math.round(word.height / 2) + 0.5;
-    context.strokeText(letters, x, y);
-    context.fillText(letters, x, y);
+  private copy(pixels: Uint8ClampedArray, word: Word): void {
+    for (let y = 0; y < word.height; y++) {
+      let to = CHANNELS * ((word.top + y) * ATLAS_WIDTH_PX + word.left);
+      for (let from = 4 * y * word.width; from < 4 * (y + 1) * word.width; from += 4) {
+        this.atlas[to++] = pixels[from];
+        this.atlas[to++] = pixels[from + 1];
+      }
+    }
   }
+}
 
-  /** Sets the type and gives the text as it is to be set. */
-  private dress(
-    context: CanvasRenderingContext2D,
-    style: LabelStyle,
-    text: string,
-    pixelRatio: number,
-  ): string {
-    const { weight, sizePx, family } = LABEL_FONTS[style];
-    context.font = `${weight} ${sizePx * pixelRatio}px ${family}`;
-    context.letterSpacing = style === 'name' ? `${NAME_SPACING_PX * pixelRatio}px` : '0px';
-    return style === 'name' ? text.toUpperCase() : text;
-  }
+/** Writes a word on the slip: letters in red, the clearing in green, on black. */
+function write(
+  slip: CanvasRenderingContext2D,
+  { width, height }: Word,
+  style: LabelStyle,
+  text: string,
+  pixelRatio: number,
+): Uint8ClampedArray {
+  // A canvas is wiped, and forgets its settings, when its size is set.
+  slip.canvas.width = width;
+  slip.canvas.height = height;
+  slip.fillStyle = '#000';
+  slip.fillRect(0, 0, width, height);
+  const letters = dress(slip, style, text, pixelRatio);
+  slip.globalCompositeOperation = 'lighter';
+  slip.textBaseline = 'middle';
+  slip.lineJoin = 'round';
+  slip.lineWidth = 2 * HALO_PX * pixelRatio;
+  slip.strokeStyle = '#0f0';
+  slip.fillStyle = '#f00';
+  const x = MARGIN_PX * pixelRatio;
+  const y = Math.round(height / 2) + 0.5;
+  slip.strokeText(letters, x, y);
+  slip.fillText(letters, x, y);
+  return slip.getImageData(0, 0, width, height).data;
+}
+
+/** Sets the type and gives the text as it is to be set. */
+function dress(
+  slip: CanvasRenderingContext2D,
+  style: LabelStyle,
+  text: string,
+  pixelRatio: number,
+): string {
+  const { weight, sizePx, family } = LABEL_FONTS[style];
+  slip.font = `${weight} ${sizePx * pixelRatio}px ${family}`;
+  slip.letterSpacing = style === 'name' ? `${NAME_SPACING_PX * pixelRatio}px` : '0px';
+  return style === 'name' ? text.toUpperCase() : text;
 }

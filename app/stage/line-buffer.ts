@@ -6,6 +6,7 @@ import {
   GLSL3,
   Mesh,
   RawShaderMaterial,
+  Sphere,
   Vector2,
 } from 'three';
 
@@ -100,6 +101,8 @@ export class LineBuffer {
     this.attributes = [position, shape, colour, index];
     for (const attribute of this.attributes) attribute.setUsage(DynamicDrawUsage);
     this.mesh.frustumCulled = false;
+    // Sorting would measure it; the order of drawing is set by hand.
+    this.geometry.boundingSphere = new Sphere();
     this.mesh.renderOrder = 1;
   }
 

@@ -5,7 +5,6 @@ import { drawEarthScene, earthSceneGlobes } from './earth-scene';
 import { GlobeInk } from './globe-ink';
 import { type Inks, inksOf, mixed, type Rgb } from './inks';
 import { type Box, placeLabels } from './labels';
-import { paintLand } from './land-picture';
 import { LineBuffer } from './line-buffer';
 import { Occluder } from './occlusion';
 import { Pen } from './pen';
@@ -28,7 +27,6 @@ export interface Picture {
   readonly taken: readonly Box[];
 }
 
-const LAND_WIDTH_PX = 1024;
 /** How far the land's tint is from the sea's towards the ink. */
 const LAND_SHARE = 0.17;
 
@@ -39,8 +37,7 @@ export class Painter {
   private readonly memory = new Map<string, number>();
 
   constructor(readonly scene: SceneName) {
-    this.globes =
-      scene === 'earth' ? [new GlobeInk(paintLand(LAND_WIDTH_PX)), new GlobeInk(null)] : [];
+    this.globes = scene === 'earth' ? [new GlobeInk(true), new GlobeInk(false)] : [];
   }
 
   /** Fills the lines, stamps and globes of a frame; `moment` null leaves the plate empty. */

@@ -6,6 +6,7 @@ import {
   GLSL3,
   Mesh,
   RawShaderMaterial,
+  Sphere,
   Vector2,
   Vector3,
 } from 'three';
@@ -136,6 +137,8 @@ export class StampBuffer {
     });
     this.mesh = new Mesh(geometry, material);
     this.mesh.frustumCulled = false;
+    // Sorting would measure it; the order of drawing is set by hand.
+    geometry.boundingSphere = new Sphere();
     this.mesh.renderOrder = 2;
   }
 
