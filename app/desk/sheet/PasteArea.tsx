@@ -105,6 +105,9 @@ export function PasteArea({ onReady }: { onReady(pointer: LinePointer): void }) 
         onPaste={paste}
         onChange={(event) => {
           controller.setText(event.target.value, pastedWhole.current ? 'replaced' : 'typed');
+          // The caret stands at the end of what was pasted; the lines are read from their start.
+          const area = event.target;
+          if (pastedWhole.current) requestAnimationFrame(() => area.scrollTo(0, 0));
           pastedWhole.current = false;
         }}
         onScroll={(event) => {
