@@ -94,6 +94,7 @@ type Map = { projection: ReturnType<typeof mapProjection>; path: ReturnType<type
 /** The half of the Earth in darkness at the clock, and the point beneath the Sun. */
 function Night({ map, trajectory }: { map: Map; trajectory: Trajectory }) {
   const { clock } = useDesk();
+  const hatching = useId();
   const night = useRef<SVGPathElement>(null);
   const sun = useRef<SVGGElement>(null);
   useEffect(() => {
@@ -109,7 +110,10 @@ function Night({ map, trajectory }: { map: Map; trajectory: Trajectory }) {
   }, [map, trajectory, clock]);
   return (
     <>
-      <path ref={night} className="map-night" />
+      <pattern id={hatching} width={5} height={5} patternUnits="userSpaceOnUse">
+        <path className="map-hatch" d="M-1 1l2 -2M0 5l5 -5M4 6l2 -2" />
+      </pattern>
+      <path ref={night} className="map-night" fill={`url(#${hatching})`} />
       <g ref={sun} className="map-sun">
         <title>The Sun is overhead here</title>
         <circle r={5} />

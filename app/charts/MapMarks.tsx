@@ -52,21 +52,21 @@ export function MapMarks(props: {
   const { map, withWords, widthPx } = props;
   return map.marks.map(({ kind, at, words }, index) => {
     const [x, y] = map.projection(at) ?? [0, 0];
-    const isLeft = x < widthPx / 2;
-    // One above, the next below: entry and ground lie close together.
-    const below = index % 2 === 1;
+    const side = x < widthPx / 2 ? 1 : -1;
+    // Words stand below the track, one under the other: ticks have theirs above it.
+    const down = 20 + index * 15;
     return (
       <g key={kind} className={`map-mark map-mark-${kind}`}>
         <title>{words}</title>
         <path d={SHAPES[kind](x, y)} />
         {withWords && (
           <>
-            <path className="map-lead" d={`M${x} ${y}l${isLeft ? 10 : -10} ${below ? 18 : -18}`} />
+            <path className="map-lead" d={`M${x} ${y + 6}L${x + side * 10} ${y + down}`} />
             <text
-              x={x + (isLeft ? 13 : -13)}
-              y={y + (below ? 22 : -20)}
+              x={x + side * 13}
+              y={y + down}
               dy="0.35em"
-              textAnchor={isLeft ? 'start' : 'end'}
+              textAnchor={side === 1 ? 'start' : 'end'}
             >
               {words}
             </text>
