@@ -11,17 +11,14 @@ import {
   SPHERE_OF_INFLUENCE_KM,
 } from './constants';
 import { createForceModel } from './dynamics/force-model';
-import { ForcePartials } from './dynamics/partials';
 import { INTEGRATION_TOLERANCE } from './dynamics/propagate';
 import { Sampler } from './dynamics/samples';
-import { PARAMETERS, TransitionMatrix } from './dynamics/transition';
 import { type ApproachRecord, assembleApproaches } from './encounter/approach';
 import { integrateLeg, type Leg, type LegHost, LONGEST_STEP_S, stateInLeg } from './encounter/leg';
 import type { EncounterEvent } from './encounter/scan';
 import { EPHEMERIS_COVERAGE, type Ephemeris, loadEphemeris } from './ephemeris';
 import type { AssessHost, AssessInput } from './events';
 import { icrfToEcliptic } from './frames/ecliptic';
-import { carried } from './math/symmetric';
 import { add, scale, subtract, type Vec3, vec3 } from './math/vector';
 import { type ClassicalEncounter, classicalEncounter } from './orbit/classical';
 import { elementsFromState } from './orbit/elements';
@@ -36,15 +33,9 @@ import {
   type Report,
   type ReportElements,
 } from './report/report';
-import {
-  approachSection,
-  classicalSection,
-  elementsSection,
-  type RecordUncertainty,
-} from './report/sections';
+import { approachSection, classicalSection, elementsSection } from './report/sections';
 import { jdFromTdbSeconds } from './time/convert';
-import { discProbability } from './uncertainty/disc-probability';
-import { firstOrderOf } from './uncertainty/target-ellipse';
+import { uncertaintiesOf } from './uncertainty/approaches';
 
 /** Thrown when the host says the assessment is no longer wanted. */
 export class AssessmentCancelled extends Error {
@@ -108,7 +99,13 @@ export async function runAssessment(
       : forward.reachedTdbSeconds;
   const records = assembleApproaches([...backward.events, ...forward.events], orbit.model.gm);
   const principal = principalOf(records);
-  const uncertainties = uncertaintiesOf(records, [backward, forward], normalised, orbit, ephemeris);
+  const uncertainties = uncertaintiesOf(
+    records,
+    [backward, forward],
+    normalised.covariance,
+    orbit.model.gm,
+    ephemeris,
+  );
   const classical = classicalEncounter({
     object: { r: normalised.positionKm, v: normalised.velocityKmS },
     earth: earthMoonBarycentre(ephemeris, epoch),
@@ -288,86 +285,6 @@ function principalOf(records: readonly ApproachRecord[]): number | null {
     nearest((record) => record.body === 'Earth') ??
     nearest(() => true)
   );
-}
-
-/**
- * First-order uncertainty of every approach: the variational equations along both legs, and the
- * covariance carried to each.
- */
-function uncertaintiesOf(
-  records: readonly ApproachRecord[],
-  legs: readonly Leg[],
-  normalised: NormalisedCase,
-  orbit: OrbitCase,
-  ephemeris: Ephemeris,
-): Map<ApproachRecord, RecordUncertainty> {
-  const found = new Map<ApproachRecord, RecordUncertainty>();
-  const { covariance } = normalised;
-  if (covariance === null) return found;
-  const transition = new Float64Array(6 * PARAMETERS);
-  for (const leg of legs) {
-    const matrix = new TransitionMatrix(new ForcePartials(ephemeris, orbit.model.gm));
-    for (const segment of leg.segments) {
-      for (const record of records) {
-        const offset = record.reference.tdbSeconds - segment.baseSeconds;
-        const [from, to] = [segment.startOffset, segment.endOffset];
-        if (found.has(record) || (offset - from) * (offset - to) > 0) continue;
-        matrix.at(segment, offset, transition);
-        const own = carried(transition, covariance.matrix, PARAMETERS);
-        found.set(record, uncertaintyOf(record, own, orbit, ephemeris));
-      }
-      matrix.advance(segment);
-    }
-  }
-  return found;
-}
-
-function uncertaintyOf(
-  record: ApproachRecord,
-  covariance: Float64Array,
-  orbit: OrbitCase,
-  ephemeris: Ephemeris,
-): RecordUncertainty {
-  const { plane, reference } = record;
-  const gm = GM_KM3_S2[orbit.model.gm][record.body];
-  const firstOrder = firstOrderOf(
-    {
-      kind: record.outcome === 'impact' ? 'sphere' : 'closest',
-      r: vec3(reference.relative),
-      v: vec3(reference.relative, 3),
-      a: relativeAcceleration(reference, orbit, ephemeris),
-      gm,
-      axes: plane === null ? null : { t: plane.t, r: plane.r },
-      bDotTKm: plane?.bDotTKm ?? 0,
-      bDotRKm: plane?.bDotRKm ?? 0,
-      distanceKm: record.distanceKm,
-    },
-    covariance,
-  );
-  return {
-    firstOrder,
-    impactProbability:
-      plane === null || firstOrder.ellipse === null
-        ? null
-        : discProbability(
-            [plane.bDotTKm, plane.bDotRKm],
-            firstOrder.ellipse.covariance,
-            plane.impactRadiusKm,
-          ),
-  };
-}
-
-/** Acceleration of the object relative to the body of an event, km/s², ICRF. */
-function relativeAcceleration(event: EncounterEvent, orbit: OrbitCase, ephemeris: Ephemeris): Vec3 {
-  const model = createForceModel(ephemeris, { gm: orbit.model.gm, nonGravitational: null });
-  const rate = new Float64Array(6);
-  const base = Math.floor(event.tdbSeconds);
-  model.derivative(base, event.tdbSeconds - base, event.object, rate, 0);
-  const index = BODY_INDEX[event.body];
-  const span = 60;
-  const before = bodyState(ephemeris, index, withinCoverage(event.tdbSeconds - span));
-  const after = bodyState(ephemeris, index, withinCoverage(event.tdbSeconds + span));
-  return subtract(vec3(rate, 3), scale(subtract(after.v, before.v), 1 / (2 * span)));
 }
 
 /** Heliocentric elements before and after a pass inside the Earth's sphere of influence. */

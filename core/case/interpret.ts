@@ -3,10 +3,11 @@ import { tdbSecondsFromEpoch } from '../time/convert';
 import type { Epoch, TimeScale } from '../time/epoch';
 import { symmetric } from '../uncertainty/covariance';
 import { definite, IndefiniteCovariance } from '../uncertainty/definite';
+import { readElements } from './elements';
 import { Fielding } from './fielding';
 import { problem, type RawCase, remark } from './raw';
 import { absurdity } from './sanity';
-import { readElements, readState } from './state';
+import { readState } from './state';
 import type {
   Choices,
   FieldName,

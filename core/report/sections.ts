@@ -9,7 +9,7 @@ import type { Elements } from '../orbit/elements';
 import type { Hyperbola } from '../orbit/hyperbola';
 import { jdFromTdbSeconds } from '../time/convert';
 import { formatIso } from '../time/format';
-import type { FirstOrder } from '../uncertainty/target-ellipse';
+import type { RecordUncertainty } from '../uncertainty/approaches';
 import type {
   Approach,
   ClassicalResult,
@@ -103,13 +103,6 @@ const SURFACE_NOTES: Partial<Record<ApproachRecord['body'], string>> = {
     'Geodetic point where the flight without air meets the WGS 84 ellipsoid; air, break-up and relief are not modelled.',
   Moon: 'Selenographic point (mean Earth/polar axis) on a sphere of 1 737.4 km; relief is not modelled.',
 };
-
-/** An approach's first-order uncertainty and probability of impact, where the case has a covariance. */
-export interface RecordUncertainty {
-  firstOrder: FirstOrder;
-  /** Null where there is no target plane. */
-  impactProbability: number | null;
-}
 
 function uncertaintySection(
   { firstOrder, impactProbability }: RecordUncertainty,
