@@ -16,6 +16,12 @@ export class StepCollapse extends Error {
   override name = 'StepCollapse';
 }
 
+/** The goal of a step does not lie ahead in the direction of the integration. */
+export class GoalBehind extends Error {
+  readonly code = 'goal-behind';
+  override name = 'GoalBehind';
+}
+
 /**
  * An accepted integration step.
  *
@@ -58,7 +64,7 @@ export interface Propagator {
   /**
    * Advances one accepted step, at most up to a goal, TDB seconds past J2000.
    *
-   * @throws StepCollapse instead of a hang; EphemerisRangeError outside the ephemeris
+   * @throws StepCollapse instead of a hang; GoalBehind; EphemerisRangeError outside the ephemeris
    */
   step(goalTdbSeconds: number): Segment;
 }
@@ -94,6 +100,11 @@ export function createPropagator(
         offset -= whole;
       }
       const left = (goalTdbSeconds - base - offset) * direction;
+      if (!(left > 0)) {
+        throw new GoalBehind(
+          `The integration stands at ${base + offset} s past J2000 (TDB); it was asked to go on to ${goalTdbSeconds} s, which is not ahead of it.`,
+        );
+      }
       let rejected = false;
       for (;;) {
         const size = Math.min(length, left, options.longestStepS);
@@ -119,7 +130,7 @@ export function createPropagator(
         // NaN, too, ends here: the comparison above is false for it.
         const shrink = Number.isFinite(error) ? Math.max(0.2, 0.9 * error ** -0.125) : 0.2;
         length = size * shrink;
-        if (length < SHORTEST_STEP_S) {
+        if (!(length >= SHORTEST_STEP_S)) {
           throw new StepCollapse(
             `The integration cannot go on at ${base + offset} s past J2000 (TDB): its step fell below ${SHORTEST_STEP_S} s. The state leads into a body's centre or is not a number.`,
           );

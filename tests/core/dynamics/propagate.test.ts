@@ -1,7 +1,12 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { BODY_INDEX } from '../../../core/constants';
 import { createForceModel } from '../../../core/dynamics/force-model';
-import { createPropagator, type Segment, StepCollapse } from '../../../core/dynamics/propagate';
+import {
+  createPropagator,
+  GoalBehind,
+  type Segment,
+  StepCollapse,
+} from '../../../core/dynamics/propagate';
 import { createEphemeris, type Ephemeris, loadEphemeris } from '../../../core/ephemeris';
 import { fetchPacked } from '../../helpers/assess';
 
@@ -96,6 +101,19 @@ describe('the n-body integration', () => {
       StepCollapse,
     );
     expect(() => run(START, fromEarth([0, 0, 0], [0, 0, 0]), START + DAY)).toThrow(StepCollapse);
+  });
+
+  it('refuses a goal that is not ahead of it, in either direction, and one that is not a number', () => {
+    for (const direction of [1, -1] as const) {
+      const model = createForceModel(ephemeris, { gm: 'DE431', nonGravitational: null });
+      const state = fromEarth([3e7, 2e7, 1e6], [-6, -3, 1]);
+      const start = { tdbSeconds: START, state };
+      const propagator = createPropagator(model, start, direction, OPTIONS);
+      for (const goal of [START, START - direction, Number.NaN]) {
+        expect(() => propagator.step(goal)).toThrow(GoalBehind);
+      }
+      expect((propagator.step(START + direction).endOffset - (START % 1)) * direction).toBe(1);
+    }
   });
 
   it('reaches its goal exactly, and the steps join', () => {
