@@ -17,7 +17,7 @@ import {
 export const EPHEMERIS_COVERAGE = {
   fromTdbSeconds: FIRST_RECORD_S,
   toTdbSeconds: FIRST_RECORD_S + RECORD_COUNT * RECORD_S,
-  text: '1959-12-10 to 2060-01-28 (TDB)',
+  text: `${isoDate(FIRST_RECORD_S)} to ${isoDate(FIRST_RECORD_S + RECORD_COUNT * RECORD_S)} (TDB)`,
 } as const;
 
 /** An instant outside the ephemeris. */

@@ -6,7 +6,7 @@ export const RECORD_S = 32 * 86400;
 /** Start of record 0, TDB seconds past J2000: MJD 36912, 1959-12-10. */
 export const FIRST_RECORD_S = (36912 - 51544.5) * 86400;
 
-/** Records of the published package: the last ends on MJD 73488, 2060-01-28. */
+/** Records of the published package: the last ends at MJD 73488, 2060-01-30 0 h. */
 export const RECORD_COUNT = 1143;
 
 /** One body of a record: components are three; coefficients by sub-interval, then component. */
