@@ -1,4 +1,4 @@
-import { geoCircle, geoGraticule, geoPath } from 'd3-geo';
+import { geoCircle, geoDistance, geoGraticule, geoPath } from 'd3-geo';
 import { useEffect, useId, useMemo, useRef } from 'react';
 import type { Approach } from '../../core/report/report';
 import { reportOfTrajectory } from '../ribbon/shown-report';
@@ -17,6 +17,9 @@ import './ground-map.css';
 const FOOT_PX = 22;
 /** Below this width only the marks are named, and every tick but hours is left out. */
 const THUMBNAIL_PX = 520;
+
+/** The shade is drawn anew when the Sun has moved so far: a pixel or two of a large map. */
+const SHADE_STEP_RAD = 0.012;
 
 const GRATICULE = geoGraticule().step([30, 30])();
 const nightOf = ([longitude, latitude]: LonLat) =>
@@ -42,7 +45,6 @@ export function GroundMap() {
 }
 
 function Track({ approach, trajectory }: { approach: Approach; trajectory: Trajectory }) {
-  const name = useId();
   const box = useRef<HTMLDivElement>(null);
   const { widthPx, heightPx } = useSize(box);
   const track = useMemo(() => groundTrack(approach, trajectory), [approach, trajectory]);
@@ -61,27 +63,29 @@ function Track({ approach, trajectory }: { approach: Approach; trajectory: Traje
     <div ref={box} className="map">
       {map !== null && track !== null && (
         <>
-          <svg
-            className="map-svg"
-            width={widthPx}
-            height={heightPx - FOOT_PX}
+          {/* Four sheets, one over the other: what moves does not make the coasts be drawn again. */}
+          <div
+            className="map-sheets"
             role="img"
-            aria-labelledby={`${name} ${name}-words`}
+            aria-label={`Ground map. ${mapWords(approach, map.marks)}`}
+            style={{ width: widthPx, height: heightPx - FOOT_PX }}
           >
-            <title id={name}>Ground map</title>
-            <desc id={`${name}-words`}>{mapWords(approach, map.marks)}</desc>
-            <path className="map-graticule" d={map.path(GRATICULE) ?? ''} />
-            <path className="map-land" d={map.path(LAND) ?? ''} />
+            <svg className="map-svg" aria-hidden="true">
+              <path className="map-graticule" d={map.path(GRATICULE) ?? ''} />
+              <path className="map-land" d={map.path(LAND) ?? ''} />
+            </svg>
             <Night map={map} trajectory={trajectory} />
-            <path className="map-frame" d={map.path({ type: 'Sphere' }) ?? ''} />
-            <path
-              className="map-track"
-              d={map.path({ type: 'LineString', coordinates: track.points }) ?? ''}
-            />
-            {!isThumbnail && <MapTicks map={map} track={track} />}
-            <MapMarks map={map} withWords={!isThumbnail} widthPx={widthPx} />
+            <svg className="map-svg" aria-hidden="true">
+              <path className="map-frame" d={map.path({ type: 'Sphere' }) ?? ''} />
+              <path
+                className="map-track"
+                d={map.path({ type: 'LineString', coordinates: track.points }) ?? ''}
+              />
+              {!isThumbnail && <MapTicks map={map} track={track} />}
+              <MapMarks map={map} withWords={!isThumbnail} widthPx={widthPx} />
+            </svg>
             <Now map={map} trajectory={trajectory} />
-          </svg>
+          </div>
           <Beneath trajectory={trajectory} isThumbnail={isThumbnail} />
         </>
       )}
@@ -98,9 +102,13 @@ function Night({ map, trajectory }: { map: Map; trajectory: Trajectory }) {
   const night = useRef<SVGPathElement>(null);
   const sun = useRef<SVGGElement>(null);
   useEffect(() => {
+    let drawn: LonLat | null = null;
     const draw = () => {
       const points = pointsBeneath(trajectory, clock.tdbSeconds);
       if (points === null) return;
+      // The shade is heavy to draw: only when it would be seen to have moved.
+      if (drawn !== null && geoDistance(drawn, points.sun) < SHADE_STEP_RAD) return;
+      drawn = points.sun;
       night.current?.setAttribute('d', map.path(nightOf(points.sun)) ?? '');
       const [x, y] = map.projection(points.sun) ?? [0, 0];
       sun.current?.setAttribute('transform', `translate(${x} ${y})`);
@@ -109,17 +117,16 @@ function Night({ map, trajectory }: { map: Map; trajectory: Trajectory }) {
     return clock.subscribe(draw);
   }, [map, trajectory, clock]);
   return (
-    <>
+    <svg className="map-svg" aria-hidden="true">
       <pattern id={hatching} width={5} height={5} patternUnits="userSpaceOnUse">
         <path className="map-hatch" d="M-1 1l2 -2M0 5l5 -5M4 6l2 -2" />
       </pattern>
       <path ref={night} className="map-night" fill={`url(#${hatching})`} />
       <g ref={sun} className="map-sun">
-        <title>The Sun is overhead here</title>
         <circle r={5} />
         <circle r={1.2} />
       </g>
-    </>
+    </svg>
   );
 }
 
@@ -138,10 +145,12 @@ function Now({ map, trajectory }: { map: Map; trajectory: Trajectory }) {
     return clock.subscribe(draw);
   }, [map, trajectory, clock]);
   return (
-    <g ref={mark} className="map-now">
-      <circle r={7} />
-      <circle className="map-now-dot" r={3} />
-    </g>
+    <svg className="map-svg" aria-hidden="true">
+      <g ref={mark} className="map-now">
+        <circle r={7} />
+        <circle className="map-now-dot" r={3} />
+      </g>
+    </svg>
   );
 }
 
