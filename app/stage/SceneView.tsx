@@ -35,13 +35,10 @@ export function SceneView({ scene, hidden }: { scene: SceneName; hidden: boolean
     const observer = new ResizeObserver(() => measure(own, plate.current, words.current));
     observer.observe(plate.current);
     if (words.current !== null) observer.observe(words.current);
-    let gone = false;
-    void document.fonts.ready.then(() => {
-      if (gone) return;
-      own.rewrite();
-    });
+    const rewrite = () => own.rewrite();
+    document.fonts.addEventListener('loadingdone', rewrite);
     return () => {
-      gone = true;
+      document.fonts.removeEventListener('loadingdone', rewrite);
       observer.disconnect();
       own.dispose();
       engine.current = null;
@@ -150,7 +147,7 @@ function Stations(props: {
         <button
           key={station}
           type="button"
-          title={name}
+          title={`${name}; again to set the view back`}
           aria-label={name}
           aria-pressed={station === props.station}
           onClick={() => {

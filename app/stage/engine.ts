@@ -20,7 +20,7 @@ const STREAM_MS = 90;
 /** The camera stops this far above a body, as a share of its radius. */
 const CLEARANCE = 0.04;
 /** A picture's shorter side is drawn as if it were this long, px: lettering grows with the picture. */
-const PICTURE_SIDE_PX = 440;
+const PICTURE_SIDE_PX = 350;
 /** Two passes this near in time and alike in size are the same: the view stays as it is. */
 const SAME_PASS_S = 86400;
 const BLANK_CAMERA: Camera = {

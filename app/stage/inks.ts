@@ -42,7 +42,7 @@ export interface Inks {
   readonly scale: Stroke;
 }
 
-const made = new Map<Palette, Inks>();
+const made = new WeakMap<Palette, Inks>();
 
 export function inksOf(palette: Palette): Inks {
   const known = made.get(palette);

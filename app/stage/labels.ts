@@ -18,6 +18,8 @@ export interface Label {
   readonly colour: Rgb;
   /** The higher is placed first; one that finds no room is left out. */
   readonly priority: number;
+  /** Of the labels of a group only the first that finds room is written. */
+  readonly group?: string;
   /** Where it had best stand from its point, any length; to the right when left out. */
   readonly prefer?: readonly [number, number];
   /** Keep it even where it crosses another. */
@@ -102,7 +104,8 @@ export function labelBox(label: Label, widthPx: number, side: readonly [number, 
  * @param taken    boxes that must stay free
  * @param picture  the picture, px
  * @param measure  width of a label's text, px
- * @param memory   side each label had last; kept while it is still free, and written anew
+ * @param memory   side each label had in the frame before; kept while it is still free, and
+ *                 written anew
  */
 export function placeLabels(
   labels: readonly Label[],
@@ -111,16 +114,20 @@ export function placeLabels(
   measure: (label: Label) => number,
   memory: Map<string, number>,
 ): PlacedLabel[] {
+  const before = new Map(memory);
+  memory.clear();
   const boxes = [...taken];
   const placed: PlacedLabel[] = [];
+  const written = new Set<string>();
   for (const label of [...labels].sort((a, b) => b.priority - a.priority)) {
+    if (label.group !== undefined && written.has(label.group)) continue;
     const width = measure(label);
     const inside = (box: Box) =>
       box.left >= EDGE_PX &&
       box.top >= EDGE_PX &&
       box.right <= picture.widthPx - EDGE_PX &&
       box.bottom <= picture.heightPx - EDGE_PX;
-    const last = memory.get(label.id);
+    const last = before.get(label.id);
     const order = sidesOf(label, last);
     const fits = (side: number) => {
       const box = labelBox(label, width, SIDES[side]);
@@ -131,13 +138,11 @@ export function placeLabels(
       (label.must === true
         ? order.find((i) => inside(labelBox(label, width, SIDES[i])))
         : undefined);
-    if (side === undefined) {
-      memory.delete(label.id);
-      continue;
-    }
+    if (side === undefined) continue;
     memory.set(label.id, side);
     const box = labelBox(label, width, SIDES[side]);
     boxes.push(box);
+    if (label.group !== undefined) written.add(label.group);
     placed.push({ ...label, box });
   }
   return placed;

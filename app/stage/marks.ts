@@ -1,6 +1,6 @@
 import { dot, type Vec3 } from '../worker/core-geometry';
 import type { Rgb } from './inks';
-import type { Label } from './labels';
+import { type Label, overlaps } from './labels';
 import type { Stroke } from './line-buffer';
 import type { PicturePoint } from './projection';
 import type { Sheet } from './sheet';
@@ -124,6 +124,8 @@ export function tick(
 const ARROW_PX = 26;
 const HEAD_PX = 6;
 const ARROW_INSET_PX = 16;
+/** No farther from the middle than this share of the shorter side. */
+const FARTHEST_SHARE = 0.66;
 /** A direction that points this nearly at the eye or away from it has no arrow. */
 const LEAST_ACROSS = 0.12;
 
@@ -139,18 +141,20 @@ export function farArrow(sheet: Sheet, direction: Vec3, name: string, stroke: St
   const reach = Math.min(
     (widthPx / 2 - ARROW_INSET_PX) / Math.max(1e-9, Math.abs(ux)),
     (heightPx / 2 - ARROW_INSET_PX) / Math.max(1e-9, Math.abs(uy)),
-    Math.max(widthPx, heightPx),
+    FARTHEST_SHARE * Math.min(widthPx, heightPx),
   );
   const at = (along: number, aside: number) => ({
     x: widthPx / 2 + ux * along - uy * aside,
     y: heightPx / 2 + uy * along + ux * aside,
   });
+  const middle = at(reach - ARROW_PX / 2, 0);
+  const spot = { left: middle.x, right: middle.x, top: middle.y, bottom: middle.y };
+  if (sheet.taken.some((box) => overlaps(box, spot))) return;
   pen.flat([at(reach - ARROW_PX, 0), at(reach, 0)], stroke);
   pen.flat(
     [at(reach - HEAD_PX, HEAD_PX / 2.4), at(reach, 0), at(reach - HEAD_PX, -HEAD_PX / 2.4)],
     stroke,
   );
-  const middle = at(reach - ARROW_PX / 2, 0);
   keepClear(sheet, { ...middle, depthKm: 0 }, 5);
   label(sheet, middle, {
     id: `far ${name}`,

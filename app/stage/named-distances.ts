@@ -10,6 +10,7 @@ import { kilometres } from './figures';
 import type { Stroke } from './line-buffer';
 import { label } from './marks';
 import { sphere } from './occlusion';
+import type { PicturePoint } from './projection';
 import type { Moment, Sheet } from './sheet';
 
 /** Spheres of named distances about the Earth, drawn as the outlines that the eye sees. */
@@ -75,27 +76,36 @@ export function nameRing(sheet: Sheet, edge: Curve, entry: { id: string; text: s
     edge.at((i * 2 * Math.PI) / count, here, 0);
     return projector.project(vec3(here));
   }).filter((point) => point !== null);
-  for (const bearing of BEARINGS) {
+  for (const [i, bearing] of BEARINGS.entries()) {
     const wanted = (bearing * Math.PI) / 180;
-    let best = around[0];
-    let least = Number.POSITIVE_INFINITY;
-    for (const point of around) {
-      const turn = Math.atan2(middle.y - point.y, point.x - middle.x) - wanted;
-      const off = Math.abs(turn - 2 * Math.PI * Math.round(turn / (2 * Math.PI)));
-      if (off < least) {
-        least = off;
-        best = point;
-      }
-    }
-    if (best === undefined || !projector.shows(best, -NAME_INSET_PX)) continue;
-    label(sheet, best, {
-      ...entry,
+    const point = nearestBearing(around, middle, wanted);
+    if (point === null || !projector.shows(point, -NAME_INSET_PX)) continue;
+    label(sheet, point, {
+      id: `${entry.id} ${bearing}`,
+      group: entry.id,
+      text: entry.text,
       gap: 3,
       prefer: [Math.cos(wanted), -Math.sin(wanted)],
       style: 'note',
       colour: inks.rgb.inkSoft,
-      priority: 35,
+      priority: 35 - i / BEARINGS.length,
     });
-    return;
   }
+}
+
+function nearestBearing(
+  around: readonly PicturePoint[],
+  middle: PicturePoint,
+  wantedRad: number,
+): PicturePoint | null {
+  let best: PicturePoint | null = null;
+  let least = Number.POSITIVE_INFINITY;
+  for (const point of around) {
+    const turn = Math.atan2(middle.y - point.y, point.x - middle.x) - wantedRad;
+    const off = Math.abs(turn - 2 * Math.PI * Math.round(turn / (2 * Math.PI)));
+    if (off >= least) continue;
+    least = off;
+    best = point;
+  }
+  return best;
 }

@@ -98,12 +98,8 @@ function drawGrid(sheet: Sheet): void {
   for (let degrees = 0; degrees < 360; degrees += DEGREE_STEP) {
     const strong = degrees % STRONG_DEGREES === 0;
     const angle = (degrees * Math.PI) / 180;
-    const reach = degrees === 0 ? 1.09 : strong ? 1.03 : 1.018;
-    pen.segmentLine(
-      onEcliptic(angle, outer),
-      onEcliptic(angle, outer * reach),
-      degrees === 0 ? inks.arrow : inks.gridStrong,
-    );
+    const reach = strong ? 1.03 : 1.018;
+    pen.segmentLine(onEcliptic(angle, outer), onEcliptic(angle, outer * reach), inks.gridStrong);
   }
 }
 

@@ -107,7 +107,7 @@ export class Surface {
   }
 
   invalidate(): void {
-    this.state?.invalidate();
+    if (this.widthPx > 0) this.state?.invalidate();
   }
 
   setSize(widthPx: number, heightPx: number): void {
