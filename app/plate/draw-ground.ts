@@ -1,25 +1,34 @@
-import { geoCircle, geoEquirectangular, geoGraticule10, geoPath } from 'd3-geo';
-import { feature } from 'topojson-client';
-import type { GeometryCollection, Topology } from 'topojson-specification';
-import land from 'world-atlas/land-110m.json';
+import { geoDistance, geoEquirectangular, geoGraticule10, geoPath } from 'd3-geo';
 import type { Approach } from '../../core/report/report';
-import { type Area, type Pen, write, writeCaps } from './pen';
+import { groundTrack, type LonLat } from '../charts/ground-track';
+import { LAND } from '../charts/land';
+import { placeWords } from '../charts/map-geometry';
+import type { Trajectory } from '../worker/trajectory';
+import { type Area, frame, type Pen, rule, shortened, write, writeCaps, writeClear } from './pen';
+
+const CAPS_PX = 16;
+/** Width of the map, degrees of longitude. */
+const ACROSS_DEG = 100;
+const FOOT_PX = 30;
+/** Track left out beyond this from the entry, radians: it belongs to another side of the Earth. */
+const TRACK_RAD = 1.2;
 
 /** The place of entry, and of the ground where there is one, on a map about it. */
-export function drawGround(pen: Pen, area: Area, approach: Approach): void {
+export function drawGround(pen: Pen, area: Area, approach: Approach, trajectory: Trajectory): void {
   const { context, palette } = pen;
   const { entry, surfaceImpact } = approach;
   if (entry === undefined) return;
   writeCaps(pen, 'Over the ground', area.x, area.y, 17, palette.inkSoft);
-  const box = { x: area.x, y: area.y + 16, width: area.width, height: area.height - 16 };
+  const box = { ...area, y: area.y + CAPS_PX, height: area.height - CAPS_PX };
+  const at: LonLat = [entry.longitudeDeg, entry.latitudeDeg];
   const projection = geoEquirectangular()
-    .rotate([-entry.longitudeDeg, 0])
-    .center([0, Math.max(-55, Math.min(55, entry.latitudeDeg))])
-    .translate([box.x + box.width / 2, box.y + box.height / 2])
-    .scale(box.width * 0.42)
+    .rotate([-at[0], 0])
+    .center([0, Math.max(-60, Math.min(60, at[1]))])
+    .translate([box.x + box.width / 2, box.y + (box.height - FOOT_PX) / 2])
+    .scale(box.width / ((ACROSS_DEG * Math.PI) / 180))
     .clipExtent([
       [box.x, box.y],
-      [box.x + box.width, box.y + box.height],
+      [box.x + box.width, box.y + box.height - FOOT_PX],
     ]);
   const path = geoPath(projection, context);
   const stroke = (colour: string, width: number): void => {
@@ -30,53 +39,57 @@ export function drawGround(pen: Pen, area: Area, approach: Approach): void {
   context.beginPath();
   path(geoGraticule10());
   stroke(palette.hairline, 1);
-  const topology = land as unknown as Topology<{ land: GeometryCollection }>;
   context.beginPath();
-  path(feature(topology, topology.objects.land));
-  stroke(palette.earth, 1.6);
-  context.strokeStyle = palette.ink;
-  context.lineWidth = 1.5;
-  context.strokeRect(box.x, box.y, box.width, box.height);
-  // The way it comes, from the azimuth at the interface.
-  const far = alongCircle([entry.longitudeDeg, entry.latitudeDeg], entry.airAzimuthDeg + 180, 22);
+  path(LAND);
+  context.globalAlpha = 0.14;
+  context.fillStyle = palette.earth;
+  context.fill();
+  context.globalAlpha = 1;
+  stroke(palette.earth, 1.4);
   context.beginPath();
-  path({ type: 'LineString', coordinates: [far, [entry.longitudeDeg, entry.latitudeDeg]] });
-  stroke(palette.object, 2.5);
+  path({ type: 'LineString', coordinates: nearTrack(approach, trajectory, at) });
+  stroke(palette.object, 2.6);
+  const [x, y] = projection(at) ?? [0, 0];
   context.beginPath();
-  path(geoCircle().center([entry.longitudeDeg, entry.latitudeDeg]).radius(1.1)());
-  stroke(palette.object, 2.5);
-  if (surfaceImpact !== undefined) {
-    const spot = projection([surfaceImpact.longitudeDeg, surfaceImpact.latitudeDeg]);
-    if (spot !== null) {
-      const [x, y] = spot;
-      context.beginPath();
-      context.moveTo(x - 8, y - 8);
-      context.lineTo(x + 8, y + 8);
-      context.moveTo(x + 8, y - 8);
-      context.lineTo(x - 8, y + 8);
-      stroke(palette.object, 2.5);
-    }
+  context.moveTo(x - 10, y - 8);
+  context.lineTo(x + 10, y - 8);
+  context.lineTo(x, y + 9);
+  context.closePath();
+  context.fillStyle = palette.ground;
+  context.fill();
+  stroke(palette.object, 2.6);
+  const ground =
+    surfaceImpact === undefined
+      ? null
+      : projection([surfaceImpact.longitudeDeg, surfaceImpact.latitudeDeg]);
+  if (ground !== null) {
+    const [gx, gy] = ground;
+    rule(pen, [gx - 8, gy - 8, gx + 8, gy + 8], palette.ink, 3);
+    rule(pen, [gx + 8, gy - 8, gx - 8, gy + 8], palette.ink, 3);
   }
+  writeClear(pen, placeWords(at), x + 18, y - 14, { px: 18 });
+  frame(pen, box, palette.ink);
+  const foot = box.y + box.height - FOOT_PX;
+  rule(pen, [box.x, foot, box.x + box.width, foot], palette.ink);
   const words =
     surfaceImpact === undefined
-      ? 'ring: entry interface, 100\u2009km'
-      : 'ring: entry interface; cross: ground without air';
-  context.fillStyle = palette.ground;
-  context.fillRect(box.x + 1, box.y + box.height - 29, box.width - 2, 28);
-  write(pen, words, box.x + 8, box.y + box.height - 10, { px: 16 }, palette.ink);
+      ? 'triangle: entry interface, 100\u2009km up'
+      : 'triangle: entry; cross: ground, no air';
+  const face = { px: 17 };
+  write(pen, shortened(pen, words, face, box.width - 16), box.x + 8, foot + 21, face, palette.ink);
 }
 
-/** A point so many degrees along a great circle from another, [longitude, latitude] in degrees. */
-function alongCircle(from: [number, number], azimuthDeg: number, arcDeg: number): [number, number] {
-  const rad = Math.PI / 180;
-  const latitude = from[1] * rad;
-  const arc = arcDeg * rad;
-  const azimuth = azimuthDeg * rad;
-  const sine =
-    Math.sin(latitude) * Math.cos(arc) + Math.cos(latitude) * Math.sin(arc) * Math.cos(azimuth);
-  const east = Math.atan2(
-    Math.sin(azimuth) * Math.sin(arc) * Math.cos(latitude),
-    Math.cos(arc) - Math.sin(latitude) * sine,
-  );
-  return [from[0] + east / rad, Math.asin(Math.max(-1, Math.min(1, sine))) / rad];
+/** The part of the ground track about the entry, in one piece. */
+function nearTrack(approach: Approach, trajectory: Trajectory, at: LonLat): LonLat[] {
+  const points = groundTrack(approach, trajectory)?.points ?? [];
+  const isNear = (point: LonLat): boolean => geoDistance(point, at) < TRACK_RAD;
+  let nearest = 0;
+  for (const [i, point] of points.entries()) {
+    if (geoDistance(point, at) < geoDistance(points[nearest], at)) nearest = i;
+  }
+  let first = nearest;
+  while (first > 0 && isNear(points[first - 1])) first -= 1;
+  let last = nearest;
+  while (last < points.length - 1 && isNear(points[last + 1])) last += 1;
+  return points.slice(first, last + 1);
 }

@@ -1,118 +1,124 @@
 import type { Approach } from '../../core/report/report';
-import { EARTH_RADIUS_KM } from '../worker/core-values';
-import { type Area, fontOf, type Pen, rule, write, writeCaps } from './pen';
+import { fittingHalfKm, type PlaneGeometry, planeGeometry } from '../charts/plane-geometry';
+import { grouped, withUnit } from '../desk/figures';
+import { type Area, type Pen, rule, write, writeCaps, writeClear } from './pen';
 
-/** The target plane of the principal approach: where it aims, against what it would hit. */
+const CAPS_PX = 16;
+/** A table of figures stands beside the plane where this much room is left, px. */
+const TABLE_PX = 180;
+
+/** Where an approach aims, against what it would hit; nothing where it has no target plane. */
 export function drawTargetPlane(pen: Pen, area: Area, approach: Approach): void {
   const { context, palette } = pen;
-  const plane = approach.targetPlane;
+  const side = Math.min(area.width, area.height - CAPS_PX);
+  const geometry = planeGeometry(approach, 'tr', fittingHalfKm(approach), side, side);
+  if (geometry === null) return;
   writeCaps(pen, 'Target plane', area.x, area.y, 17, palette.inkSoft);
-  const side = area.height - 16;
-  const centre = { x: area.x + side / 2, y: area.y + 16 + side / 2 };
-  if (plane === null) {
-    write(pen, 'Bound: no asymptote.', area.x, area.y + 46, { px: 20 }, palette.ink);
-    return;
-  }
-  const bodyKm = approach.distanceKm / approach.distanceRadii;
-  const reach = 1.25 * Math.max(Math.hypot(plane.bDotTKm, plane.bDotRKm), plane.impactRadiusKm);
-  const px = side / 2 / reach;
-  const at = (t: number, r: number): [number, number] => [centre.x + t * px, centre.y + r * px];
-  const disc = (km: number, dash: number[], fill: string | null): void => {
-    context.beginPath();
-    context.arc(centre.x, centre.y, Math.max(1.5, km * px), 0, 2 * Math.PI);
-    if (fill !== null) {
-      context.globalAlpha = 0.22;
-      context.fillStyle = fill;
-      context.fill();
-      context.globalAlpha = 1;
-    }
-    context.setLineDash(dash);
-    context.strokeStyle = palette.earth;
-    context.lineWidth = 2;
-    context.stroke();
-    context.setLineDash([]);
-  };
-  rule(pen, [at(-reach, 0), at(reach, 0)], palette.hairline);
-  rule(pen, [at(0, -reach), at(0, reach)], palette.hairline);
-  disc(plane.impactRadiusKm, [8, 6], null);
-  disc(bodyKm, [], palette.earth);
-  const ellipse = approach.uncertainty?.ellipse ?? null;
+  context.save();
+  context.translate(area.x, area.y + CAPS_PX);
+  context.beginPath();
+  context.rect(0, 0, side, side);
+  context.clip();
+  drawPlane(pen, approach, geometry, side);
+  context.restore();
+  const left = area.x + side + 24;
+  const width = area.x + area.width - left;
+  if (width >= TABLE_PX) drawFigures(pen, { ...area, x: left, width }, approach);
+}
+
+function drawPlane(pen: Pen, approach: Approach, geometry: PlaneGeometry, side: number): void {
+  const { context, palette } = pen;
+  const { x, y, discPx, capturePx, aim, ellipse } = geometry;
+  const body = approach.body === 'Moon' ? palette.moon : palette.earth;
+  rule(pen, [0, y, side, y], palette.hairline);
+  rule(pen, [x, 0, x, side], palette.hairline);
+  circle(pen, x, y, discPx, body, []);
+  shade(pen, body, 0.22);
+  circle(pen, x, y, capturePx, palette.ink, [8, 6]);
   if (ellipse !== null) {
     for (const sigmas of [3, 2, 1]) {
       context.beginPath();
-      context.ellipse(
-        ...at(plane.bDotTKm, plane.bDotRKm),
-        Math.max(0.5, sigmas * ellipse.semiMajorKm * px),
-        Math.max(0.5, sigmas * ellipse.semiMinorKm * px),
-        (ellipse.angleTrDeg * Math.PI) / 180,
-        0,
-        2 * Math.PI,
+      const turn = (ellipse.turnDeg * Math.PI) / 180;
+      const [major, minor] = [ellipse.majorPx, ellipse.minorPx].map((px) =>
+        Math.max(0.5, sigmas * px),
       );
-      context.globalAlpha = 0.16;
-      context.fillStyle = palette.object;
-      context.fill();
-      context.globalAlpha = 1;
+      context.ellipse(aim.x, aim.y, major, minor, turn, 0, 2 * Math.PI);
+      shade(pen, palette.object, 0.16);
       context.strokeStyle = palette.object;
       context.lineWidth = 1;
       context.stroke();
     }
   }
-  rule(pen, [at(0, 0), at(plane.bDotTKm, plane.bDotRKm)], palette.object, 2);
-  const [x, y] = at(plane.bDotTKm, plane.bDotRKm);
-  context.fillStyle = palette.object;
+  rule(pen, [x, y, aim.x, aim.y], palette.object, 2);
+  rule(pen, [aim.x - 10, aim.y, aim.x + 10, aim.y], palette.object, 3);
+  rule(pen, [aim.x, aim.y - 10, aim.x, aim.y + 10], palette.object, 3);
+  const face = { px: 18 };
+  const axis = { px: 19, italic: true };
+  writeClear(pen, 'T', side - 6, y - 9, axis, 'right');
+  writeClear(pen, 'R', x + 10, side - 8, axis);
+  const away = aim.y > y ? -1 : 1;
+  const isWide = discPx > 30;
+  if (isWide)
+    write(pen, approach.body, x, y + away * discPx * 0.5 + 6, face, palette.ink, 'center');
+  const words = Math.min(Math.max(y + away * (capturePx + 16) + 6, 18), side - 6);
+  const name = isWide ? 'capture disc' : `${approach.body}, capture disc`;
+  // Below, the words keep clear of the axis's name.
+  if (away === 1) writeClear(pen, name, x - 12, words, face, 'right');
+  else writeClear(pen, name, x, words, face, 'center');
+}
+
+function circle(
+  { context }: Pen,
+  x: number,
+  y: number,
+  radiusPx: number,
+  colour: string,
+  dash: number[],
+): void {
   context.beginPath();
-  context.moveTo(x, y - 9);
-  context.lineTo(x + 9, y);
-  context.lineTo(x, y + 9);
-  context.lineTo(x - 9, y);
+  context.arc(x, y, Math.max(1.5, radiusPx), 0, 2 * Math.PI);
+  context.strokeStyle = colour;
+  context.lineWidth = 2;
+  context.setLineDash(dash);
+  context.stroke();
+  context.setLineDash([]);
+}
+
+/** Fills the path that has been begun. */
+function shade({ context }: Pen, colour: string, opacity: number): void {
+  context.globalAlpha = opacity;
+  context.fillStyle = colour;
   context.fill();
-  write(
-    pen,
-    'T',
-    centre.x + side / 2 - 4,
-    centre.y - 8,
-    { px: 19, weight: 600 },
-    palette.inkSoft,
-    'right',
-  );
-  write(pen, 'R', centre.x + 10, centre.y + side / 2 - 6, { px: 19, weight: 600 }, palette.inkSoft);
-  const left = area.x + side + 22;
-  const width = area.width - side - 22;
-  if (width < 180) return;
+  context.globalAlpha = 1;
+}
+
+function drawFigures(pen: Pen, area: Area, approach: Approach): void {
+  const { palette } = pen;
+  const { targetPlane: plane, hyperbola, uncertainty } = approach;
+  if (plane === null) return;
+  const ellipse = uncertainty?.ellipse ?? null;
   const rows: [string, string][] = [
     ['B·T', km(plane.bDotTKm)],
     ['B·R', km(plane.bDotRKm)],
     ['ξ', km(plane.xiKm)],
     ['ζ', km(plane.zetaKm)],
-    ['impact radius', km(plane.impactRadiusKm)],
+    ...(hyperbola === null ? [] : [row('|B|, impact parameter', km(hyperbola.impactParameterKm))]),
+    ['capture radius', km(plane.impactRadiusKm)],
     ...(ellipse === null
       ? []
-      : [
-          ['1 σ ellipse', `${km(ellipse.semiMajorKm)} × ${km(ellipse.semiMinorKm)}`] as [
-            string,
-            string,
-          ],
-        ]),
+      : [row('1 σ half axes', `${grouped(ellipse.semiMajorKm)} × ${km(ellipse.semiMinorKm)}`)]),
   ];
-  for (const [i, [name, value]] of rows.entries()) {
-    const row = area.y + 46 + i * 46;
-    write(pen, name, left, row, { px: 18 }, palette.inkSoft);
-    context.font = fontOf({ px: 20, figures: true });
-    write(pen, value, left + width, row + 22, { px: 20, figures: true }, palette.ink, 'right');
-  }
-  const words =
-    bodyKm === EARTH_RADIUS_KM
-      ? ['solid: the Earth', 'dashed: what meets it']
-      : ['solid: the body', 'dashed: what meets it'];
-  for (const [i, line] of words.entries()) {
-    write(pen, line, left, area.y + 318 + (i - words.length + 1) * 20, { px: 16 }, palette.inkSoft);
-  }
+  const lead = (area.height - CAPS_PX) / 7;
+  rows.forEach(([name, value], i) => {
+    const base = area.y + CAPS_PX + (i + 0.62) * lead;
+    write(pen, name, area.x, base, { px: 19 }, palette.inkSoft);
+    const face = { px: 20, figures: true };
+    write(pen, value, area.x + area.width, base, face, palette.ink, 'right');
+    const under = base + lead * 0.36;
+    rule(pen, [area.x, under, area.x + area.width, under], palette.hairline, 1);
+  });
 }
 
-/** Thin-spaced whole kilometres, a true minus. */
-function km(value: number): string {
-  const digits = Math.abs(Math.round(value))
-    .toString()
-    .replace(/\B(?=(\d{3})+$)/g, '\u2009');
-  return `${value < 0 ? '\u2212' : ''}${digits}\u2009km`;
-}
+const row = (name: string, value: string): [string, string] => [name, value];
+
+const km = (value: number): string => withUnit(grouped(value), 'km');

@@ -1,4 +1,5 @@
 import { FONT_FIGURES, FONT_TEXT, type Palette } from '../theme/tokens';
+import * as fit from './text-fit';
 
 /** A hand for the sheet: text that fits, fine lines, in one palette. */
 
@@ -11,10 +12,26 @@ export interface Face {
   px: number;
   weight?: 400 | 600;
   figures?: boolean;
+  italic?: boolean;
 }
 
-export const fontOf = ({ px, weight = 400, figures = false }: Face): string =>
-  `${weight} ${px}px ${figures ? FONT_FIGURES : FONT_TEXT}`;
+const fontOf = ({ px, weight = 400, figures = false, italic = false }: Face): string =>
+  `${italic ? 'italic ' : ''}${weight} ${px}px ${figures ? FONT_FIGURES : FONT_TEXT}`;
+
+/** Every font that the plate is set in, to be loaded before drawing. */
+export const PLATE_FONTS: readonly string[] = [
+  fontOf({ px: 23 }),
+  fontOf({ px: 23, weight: 600 }),
+  fontOf({ px: 23, italic: true }),
+  fontOf({ px: 23, figures: true }),
+];
+
+export function measureIn({ context }: Pen, face: Face): fit.Measure {
+  return (text) => {
+    context.font = fontOf(face);
+    return context.measureText(text).width;
+  };
+}
 
 export function write(
   { context }: Pen,
@@ -32,7 +49,27 @@ export function write(
   context.fillText(text, x, y);
 }
 
-/** Letter-spaced small capitals of the labels. */
+/** Text over lines: a rim in the sheet's colour keeps it clear of them. */
+export function writeClear(
+  pen: Pen,
+  text: string,
+  x: number,
+  y: number,
+  face: Face,
+  align: CanvasTextAlign = 'left',
+): void {
+  const { context, palette } = pen;
+  context.font = fontOf(face);
+  context.textAlign = align;
+  context.textBaseline = 'alphabetic';
+  context.lineJoin = 'round';
+  context.lineWidth = face.px * 0.4;
+  context.strokeStyle = palette.ground;
+  context.strokeText(text, x, y);
+  write(pen, text, x, y, face, palette.ink, align);
+}
+
+/** Letter-spaced small capitals of the labels; gives the place where they end. */
 export function writeCaps(
   pen: Pen,
   text: string,
@@ -40,53 +77,45 @@ export function writeCaps(
   y: number,
   px: number,
   colour: string,
-): void {
-  pen.context.letterSpacing = `${(px * 0.14).toFixed(1)}px`;
-  write(pen, text.toUpperCase(), x, y, { px, weight: 600 }, colour);
-  pen.context.letterSpacing = '0px';
+): number {
+  const { context } = pen;
+  const face = { px, weight: 600 } as const;
+  context.letterSpacing = `${(px * 0.14).toFixed(1)}px`;
+  write(pen, text.toUpperCase(), x, y, face, colour);
+  const end = x + measureIn(pen, face)(text.toUpperCase());
+  context.letterSpacing = '0px';
+  return end;
 }
 
 /** The text shortened to a width, with an ellipsis where it had to be. */
-export function shortened({ context }: Pen, text: string, face: Face, width: number): string {
-  context.font = fontOf(face);
-  if (context.measureText(text).width <= width) return text;
-  let short = text;
-  while (short.length > 1 && context.measureText(`${short}…`).width > width) {
-    short = short.slice(0, -1);
-  }
-  return `${short.trimEnd()}…`;
+export function shortened(pen: Pen, text: string, face: Face, width: number): string {
+  return fit.shortened(text, width, measureIn(pen, face));
 }
 
-/** A text broken into lines of a width; breaks at ordinary blanks only. */
-export function linesOf({ context }: Pen, text: string, face: Face, width: number): string[] {
-  context.font = fontOf(face);
-  const lines: string[] = [];
-  let line = '';
-  for (const word of text.split(' ')) {
-    const longer = line === '' ? word : `${line} ${word}`;
-    if (line !== '' && context.measureText(longer).width > width) {
-      lines.push(line);
-      line = word;
-    } else line = longer;
-  }
-  lines.push(line);
-  return lines;
+/** A text broken into lines of a width; breaks at ordinary blanks only, if it can. */
+export function linesOf(pen: Pen, text: string, face: Face, width: number): string[] {
+  return fit.wrapped(text, width, measureIn(pen, face));
 }
 
+/** A line through points: pairs of x and y. */
 export function rule(
   { context }: Pen,
-  path: [number, number][],
+  points: ArrayLike<number>,
   colour: string,
   width = 1.5,
+  dash: number[] = [],
 ): void {
   context.strokeStyle = colour;
   context.lineWidth = width;
+  context.lineJoin = 'round';
+  context.setLineDash(dash);
   context.beginPath();
-  for (const [i, [x, y]] of path.entries()) {
-    if (i === 0) context.moveTo(x, y);
-    else context.lineTo(x, y);
+  for (let i = 0; i + 1 < points.length; i += 2) {
+    if (i === 0) context.moveTo(points[0], points[1]);
+    else context.lineTo(points[i], points[i + 1]);
   }
   context.stroke();
+  context.setLineDash([]);
 }
 
 export function frame({ context }: Pen, box: Area, colour: string, width = 1.5): void {
