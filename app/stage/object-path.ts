@@ -20,6 +20,8 @@ import {
 
 const MOST_TICKS = 8;
 const LEAST_PASS_PX = 14;
+/** A wider pass of the Moon is not marked: one and a half times its sphere of influence. */
+const NEAR_MOON_KM = 100_000;
 /** Halvings that find where the path leaves the picture. */
 const EDGE_STEPS = 10;
 /** Marks nearer than this to the pass or the object are left out, px. */
@@ -52,7 +54,7 @@ function markApproaches(sheet: Sheet, moment: Moment, own: TrajectoryCurve): voi
   const { inks, projector } = sheet;
   for (const approach of moment.report?.approaches ?? []) {
     const { body, distanceKm, outcome, tdbSeconds } = approach;
-    if (body !== 'Earth' && body !== 'Moon') continue;
+    if (body !== 'Earth' && !(body === 'Moon' && distanceKm < NEAR_MOON_KM)) continue;
     const point = pointOf(sheet, own, tdbSeconds);
     if (point === null || distanceKm * (projector.focalPx / point.depthKm) < LEAST_PASS_PX)
       continue;
