@@ -1,4 +1,5 @@
 import { SECONDS_PER_DAY } from '../constants';
+import { EPHEMERIS_COVERAGE } from '../ephemeris';
 import { tdbSecondsFromEpoch } from '../time/convert';
 import type { Epoch, TimeScale } from '../time/epoch';
 import { symmetric } from '../uncertainty/covariance';
@@ -19,9 +20,10 @@ import type {
 import { AXES, CENTRES, GM_SETS, SCALES } from './vocabulary';
 
 /** The packed ephemeris, as days MJD TDB: what an epoch must lie within. */
-const FIRST_MJD = 36912;
-const LAST_MJD = 73488;
-const COVERAGE = '1959-12-10 to 2060-01-28';
+const mjdOf = (tdbSeconds: number): number => tdbSeconds / SECONDS_PER_DAY + 51544.5;
+const FIRST_MJD = mjdOf(EPHEMERIS_COVERAGE.fromTdbSeconds);
+const LAST_MJD = mjdOf(EPHEMERIS_COVERAGE.toTdbSeconds);
+const COVERAGE = EPHEMERIS_COVERAGE.text;
 
 const ELEMENT_FIELDS: FieldName[] = [
   'eccentricity',
@@ -275,8 +277,7 @@ function readSpan(f: Fielding, epoch: Epoch | null): OrbitCase['span'] {
   const to = at('spanTo', 'search to');
   if (epoch === null || (from === null && to === null)) return null;
   const middle = tdbSecondsFromEpoch(epoch);
-  const first = (FIRST_MJD - 51544.5) * SECONDS_PER_DAY;
-  const last = (LAST_MJD - 51544.5) * SECONDS_PER_DAY;
+  const { fromTdbSeconds: first, toTdbSeconds: last } = EPHEMERIS_COVERAGE;
   const span = {
     fromTdbSeconds: from ?? Math.max(first, Math.min(middle, to ?? middle) - 30 * SECONDS_PER_DAY),
     toTdbSeconds: to ?? Math.min(last, Math.max(middle, from ?? middle) + 365.25 * SECONDS_PER_DAY),
