@@ -49,5 +49,6 @@ export function offset(seconds: number, stepS: number): string {
   const sign = seconds < 0 ? MINUS : '+';
   const [unitS, unit] =
     stepS < HALF_HOUR_S ? [60, 'min'] : stepS < DAY_S ? [3600, 'h'] : [DAY_S, 'd'];
-  return `${sign}${withUnit(String(Math.abs(seconds) / unitS), unit)}`;
+  const size = Math.abs(seconds) / unitS;
+  return `${sign}${withUnit(grouped(size, Number.isInteger(size) ? 0 : 1), unit)}`;
 }

@@ -180,30 +180,41 @@ function drawTicks(sheet: Sheet, moment: Moment, scene: SceneName, own: Trajecto
   }
 }
 
-/** Offsets from the pass between which the path is on the picture. */
+/**
+ * Offsets from the pass between which the path is on the picture: the stretch around the pass, or
+ * around the object where the pass is off the picture; null when neither is on it.
+ */
 function seenOffsets(sheet: Sheet, own: TrajectoryCurve, at: number): [number, number] | null {
+  const { parameters, xyz, count } = points;
   const here = new Float64Array(3);
-  const isSeen = (parameter: number): boolean => {
-    own.at(parameter, here, 0);
-    const point = sheet.projector.project(vec3(here));
+  const isOn = (p: Vec3): boolean => {
+    const point = sheet.projector.project(p);
     return point !== null && sheet.projector.shows(point);
   };
-  const seen = [...points.parameters.subarray(0, points.count)].filter(isSeen);
-  if (seen.length === 0) return null;
-  const edge = (inside: number, neighbour: number): number => {
-    let [on, off] = [inside, neighbour];
-    for (let i = 0; i < EDGE_STEPS && !isSeen(off); i++) {
-      const middle = (on + off) / 2;
-      if (isSeen(middle)) on = middle;
-      else off = middle;
-    }
-    return own.timeAt(on) - at;
+  const isSeen = (parameter: number): boolean => {
+    own.at(parameter, here, 0);
+    return isOn(vec3(here));
   };
-  const first = points.parameters.indexOf(seen[0]);
-  const last = points.parameters.indexOf(seen[seen.length - 1]);
+  const middle = [own.parameterAt(at), own.parameterAt(sheet.tdbSeconds)].find(isSeen);
+  if (middle === undefined) return null;
+  let next = 0;
+  while (next < count && parameters[next] <= middle) next += 1;
+  let last = next;
+  while (last < count && isOn(vec3(xyz, 3 * last))) last += 1;
+  let first = next - 1;
+  while (first >= 0 && isOn(vec3(xyz, 3 * first))) first -= 1;
+  const edge = (inside: number, outside: number): number => {
+    let [on, off] = [inside, outside];
+    for (let i = 0; i < EDGE_STEPS && !isSeen(off); i++) {
+      const half = (on + off) / 2;
+      if (isSeen(half)) on = half;
+      else off = half;
+    }
+    return own.timeAt(isSeen(off) ? off : on) - at;
+  };
   return [
-    edge(seen[0], points.parameters[Math.max(0, first - 1)]),
-    edge(seen[seen.length - 1], points.parameters[Math.min(points.count - 1, last + 1)]),
+    edge(first + 1 < next ? parameters[first + 1] : middle, parameters[Math.max(0, first)]),
+    edge(last > next ? parameters[last - 1] : middle, parameters[Math.min(count - 1, last)]),
   ];
 }
 

@@ -1,5 +1,6 @@
 import type { SceneName } from '../plate/scene-source';
 import type { Palette } from '../theme/tokens';
+import { SAMPLE } from '../worker/core-values';
 import type { Camera } from './camera';
 import { drawEarthScene, earthSceneGlobes } from './earth-scene';
 import { GlobeInk } from './globe-ink';
@@ -68,6 +69,7 @@ export class Painter {
       stamps,
       projector,
       inks,
+      tdbSeconds: moment.sample[SAMPLE.tdbSeconds],
       pixelRatio: picture.pixelRatio,
       labels: [],
       taken: [...picture.taken],

@@ -11,14 +11,16 @@ const SAME_POINT_PX = 0.02;
 /** Nothing is drawn nearer to the eye than this share of the camera's distance. */
 const NEAREST_SHARE = 1e-7;
 
+/** Room that every pen writes in: one line is drawn at a time. */
+const strip = new Float64Array(3 * 4096);
+const points = new CurvePoints();
+
 /** Draws lines of the scene on the picture: cuts them to it, takes away what globes hide. */
 export class Pen {
-  private readonly strip = new Float64Array(3 * 4096);
   private stripCount = 0;
   private drawnPx = 0;
   private stroke: Stroke | null = null;
   private hiddenBy: readonly Occluder[] = [];
-  private readonly points = new CurvePoints();
   private readonly part: Share = { from: 0, to: 1 };
   /** Start and end of the segment at hand from the eye: ICRF axes, then right, up, forward. */
   private a: Vec3 = [0, 0, 0];
@@ -37,14 +39,14 @@ export class Pen {
 
   /** A curve of the scene, with as many points as its picture needs. */
   curve(curve: Curve, stroke: Stroke, hiddenBy = this.globes): void {
-    decimate(curve, this.projector, this.points);
-    this.line(this.points.xyz, this.points.count, stroke, hiddenBy);
+    decimate(curve, this.projector, points);
+    this.line(points.xyz, points.count, stroke, hiddenBy);
   }
 
   /** A curve on the face of the first globe: seen where the face turns to the eye. */
   curveOnGlobe(curve: Curve, stroke: Stroke): void {
-    decimate(curve, this.projector, this.points);
-    this.lineOnGlobe(this.points.xyz, this.points.count, stroke);
+    decimate(curve, this.projector, points);
+    this.lineOnGlobe(points.xyz, points.count, stroke);
   }
 
   /** A straight line between two points of the scene. */
@@ -177,7 +179,6 @@ export class Pen {
   }
 
   private push(x: number, y: number): void {
-    const { strip } = this;
     const at = 3 * this.stripCount;
     if (this.stripCount > 0) {
       const step = Math.hypot(x - strip[at - 3], y - strip[at - 2]);
@@ -196,7 +197,7 @@ export class Pen {
   }
 
   private flush(): void {
-    if (this.stroke !== null) this.lines.strip(this.strip, this.stripCount, this.stroke);
+    if (this.stroke !== null) this.lines.strip(strip, this.stripCount, this.stroke);
     this.stripCount = 0;
   }
 }

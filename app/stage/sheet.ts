@@ -14,6 +14,8 @@ export interface Sheet {
   readonly projector: Projector;
   readonly stamps: StampBuffer;
   readonly inks: Inks;
+  /** The moment that is drawn, TDB seconds past J2000. */
+  readonly tdbSeconds: number;
   /** Device pixels per px. */
   readonly pixelRatio: number;
   readonly labels: Label[];

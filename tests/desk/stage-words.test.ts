@@ -92,6 +92,7 @@ describe('the figures of the scenes', () => {
     expect(plain(offset(-4200, 600))).toBe('−70 min');
     expect(plain(offset(5400, 1800))).toBe('+1.5 h');
     expect(plain(offset(-2592000, 864000))).toBe('−30 d');
+    expect(plain(offset(155_520_000, 31_104_000))).toBe('+1 800 d');
   });
 });
 
