@@ -35,7 +35,7 @@ export function distanceToFrame(radiusKm: number): number {
   return radiusKm / Math.tan(HALF_FIELD_RAD);
 }
 
-export interface CameraAxes {
+interface CameraAxes {
   /** Rightwards, upwards and into the picture; unit vectors, ICRF axes. */
   readonly right: Vec3;
   readonly up: Vec3;
@@ -55,7 +55,7 @@ export function eyeOf(camera: Camera): Vec3 {
 }
 
 /** Unit vector, ICRF axes, of a direction in the ecliptic of J2000. */
-export function directionOf(longitudeRad: number, latitudeRad: number): Vec3 {
+function directionOf(longitudeRad: number, latitudeRad: number): Vec3 {
   const c = Math.cos(latitudeRad);
   return eclipticToIcrf([
     c * Math.cos(longitudeRad),

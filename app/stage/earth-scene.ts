@@ -47,7 +47,7 @@ const HALF_MONTH_S = 13.66 * SECONDS_PER_DAY;
 /** The axis stands out of the globe by this share of its radius. */
 const AXIS_REACH = 1.22;
 
-export interface EarthGlobes {
+interface EarthGlobes {
   readonly earth: GlobeInk;
   readonly moon: GlobeInk;
 }

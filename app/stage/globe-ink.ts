@@ -86,7 +86,7 @@ const HATCH_PX = 4;
 /** Below this radius the hatching is only a tint, px. */
 const HATCHED_FROM_PX = 12;
 
-export interface GlobeLook {
+interface GlobeLook {
   readonly day: readonly [number, number, number];
   readonly land: readonly [number, number, number];
   readonly ink: readonly [number, number, number];

@@ -5,7 +5,7 @@ import type { Stroke } from './line-buffer';
 
 export type Rgb = readonly [number, number, number];
 
-export function rgbOf(hex: string): Rgb {
+function rgbOf(hex: string): Rgb {
   const value = Number.parseInt(hex.slice(1), 16);
   return [(value >> 16) & 255, (value >> 8) & 255, value & 255];
 }

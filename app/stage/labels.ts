@@ -33,7 +33,7 @@ export interface Box {
   readonly bottom: number;
 }
 
-export interface PlacedLabel extends Label {
+interface PlacedLabel extends Label {
   readonly box: Box;
 }
 
@@ -85,7 +85,7 @@ function sidesOf(label: Label, last: number | undefined): number[] {
 }
 
 /** The place of a label on one of its sides. */
-export function labelBox(label: Label, widthPx: number, side: readonly [number, number]): Box {
+function labelBox(label: Label, widthPx: number, side: readonly [number, number]): Box {
   const height = HEIGHT_PX[label.style];
   const x = label.x + side[0] * (label.gap + widthPx / 2);
   const y = label.y + side[1] * (label.gap + height / 2);

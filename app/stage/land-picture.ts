@@ -7,7 +7,7 @@ import land from 'world-atlas/land-110m.json';
 const LAND = land as unknown as Topology<{ land: GeometryCollection }>;
 
 /** Share of land, 0 to 255, by rows from the south pole up, each from 180° W to 180° E. */
-export interface LandLevel {
+interface LandLevel {
   readonly data: Uint8Array;
   readonly width: number;
   readonly height: number;

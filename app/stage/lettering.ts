@@ -18,7 +18,7 @@ const MARGIN_PX = 3;
 const HEIGHT_PX = 17;
 
 /** Where a word lies in the atlas, device pixels. */
-export interface Word {
+interface Word {
   readonly left: number;
   readonly top: number;
   readonly width: number;

@@ -27,7 +27,7 @@ export interface Stroke {
 }
 
 /** Well over what the fullest scene was seen to need; strokes beyond it are left out. */
-export const MOST_VERTICES = 16384;
+const MOST_VERTICES = 16384;
 /** Room beside the line for its faded edge, px. */
 const FEATHER_PX = 1;
 /** Below this the corner of two pieces is too sharp for a mitre: the strip begins anew. */

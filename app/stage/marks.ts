@@ -14,7 +14,7 @@ const RAYS = 16;
 const LOZENGE_PX = 6.5;
 
 /** Keeps the lettering off a mark. */
-export function keepClear(sheet: Sheet, point: PicturePoint, radiusPx: number): void {
+function keepClear(sheet: Sheet, point: PicturePoint, radiusPx: number): void {
   sheet.taken.push({
     left: point.x - radiusPx,
     right: point.x + radiusPx,

@@ -80,7 +80,7 @@ function approachWords(
 }
 
 /** The points before and after a parameter, both with the curve's own point there. */
-export function splitAt(
+function splitAt(
   curve: TrajectoryCurve,
   all: CurvePoints,
   parameter: number,

@@ -17,7 +17,7 @@ import { drawSunScene, sunSceneGlobes } from './sun-scene';
 
 /** Draws a whole scene at a moment: lines, marks, words and globes as meshes for three. */
 
-export interface Picture {
+interface Picture {
   readonly widthPx: number;
   readonly heightPx: number;
   /** Device pixels per px. */

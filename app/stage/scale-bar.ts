@@ -3,7 +3,7 @@ import { AU_KM, EARTH_RADIUS_KM } from '../worker/core-values';
 
 /** A bar of a round length. */
 
-export interface ScaleBar {
+interface ScaleBar {
   readonly lengthPx: number;
   readonly lengthKm: number;
   readonly text: string;

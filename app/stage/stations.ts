@@ -48,7 +48,7 @@ export function frameRadiusKm(
 }
 
 /** The object's place in a scene, km from the scene's centre, ICRF axes. */
-export function objectPlace(scene: SceneName, sample: Float64Array): Vec3 {
+function objectPlace(scene: SceneName, sample: Float64Array): Vec3 {
   const geocentric = vec3(sample, SAMPLE.object);
   return scene === 'earth' ? geocentric : add(geocentric, vec3(sample, SAMPLE.earth));
 }
@@ -98,7 +98,7 @@ function ridingCamera(object: Vec3): Camera {
 }
 
 /** Ecliptic longitude and latitude of a direction, ICRF axes. */
-export function anglesOf(v: Vec3): Pick<Camera, 'longitudeRad' | 'latitudeRad'> {
+function anglesOf(v: Vec3): Pick<Camera, 'longitudeRad' | 'latitudeRad'> {
   const [x, y, z] = icrfToEcliptic(v);
   return { longitudeRad: Math.atan2(y, x), latitudeRad: Math.atan2(z, Math.hypot(x, y)) };
 }

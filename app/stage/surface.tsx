@@ -7,7 +7,7 @@ import { SceneObjects } from './SceneObjects';
 /** Whether a scene can be drawn: WebGL is there, was never there, or has been taken away. */
 export type Drawing = 'drawn' | 'missing' | 'lost';
 
-export interface SurfaceEvents {
+interface SurfaceEvents {
   /** Called before each frame, to fill the painter. */
   frame(painter: Painter): void;
   drawing(drawing: Drawing): void;

@@ -12,7 +12,7 @@ export interface TrajectoryCurve extends Curve {
 }
 
 /** Which states add up to the path: offset in SAMPLE and sign. */
-export type PathTerms = readonly (readonly [offset: number, sign: 1 | -1])[];
+type PathTerms = readonly (readonly [offset: number, sign: 1 | -1])[];
 
 /** The object about the Earth. */
 export const OBJECT_GEOCENTRIC: PathTerms = [[SAMPLE.object, 1]];

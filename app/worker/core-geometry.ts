@@ -4,7 +4,6 @@ export {
   EARTH_FLATTENING,
   ENTRY_INTERFACE_ALTITUDE_KM,
   GM_KM3_S2,
-  MOON_RADIUS_KM,
 } from '../../core/constants';
 export { ECLIPTIC_POLE_ICRF, eclipticToIcrf, icrfToEcliptic } from '../../core/frames/ecliptic';
 export { itrfFromGeodetic } from '../../core/frames/geodetic';
