@@ -84,10 +84,12 @@ function Axes(props: {
   heightPx: number;
 }) {
   const { geometry, axes, widthPx, heightPx } = props;
-  const { x, y } = geometry;
+  const { x, y, aim } = geometry;
   const { across, upright, uprightPointsDown } = AXES_WORDS[axes];
   const tip = uprightPointsDown ? heightPx - 8 : 8;
   const back = uprightPointsDown ? -7 : 7;
+  // The aim's words stand on its own side.
+  const nameSide = aim.x > x ? -1 : 1;
   return (
     <>
       <path className="plane-axis" d={`M0 ${y}H${widthPx}M${x} 0V${heightPx}`} />
@@ -96,7 +98,13 @@ function Axes(props: {
       <text className="plane-axis-name" x={widthPx - 12} y={y - 9} textAnchor="end">
         {across}
       </text>
-      <text className="plane-axis-name" x={x + 9} y={tip + back} dy="0.35em">
+      <text
+        className="plane-axis-name"
+        x={x + nameSide * 9}
+        y={tip + back}
+        dy="0.35em"
+        textAnchor={nameSide > 0 ? 'start' : 'end'}
+      >
         {upright}
       </text>
     </>
@@ -183,10 +191,15 @@ function Aim(props: {
   const words = `B ${distanceWords(km)}`;
   const half = (words.length * LETTER_PX) / 2;
   const hasRoomBeside = outward > 0 ? aim.x + 2 * half + 12 < widthPx : aim.x - 2 * half - 12 > 0;
+  // Clear of the upright axis and its name.
+  const clear = x + outward * (half + 22);
   const label = hasRoomBeside
     ? { x: aim.x + outward * (half + 11), y: aim.y }
     : {
-        x: Math.min(Math.max(aim.x, half + 4), widthPx - half - 4),
+        x: Math.min(
+          Math.max(half + 4, outward > 0 ? Math.max(aim.x, clear) : Math.min(aim.x, clear)),
+          widthPx - half - 4,
+        ),
         y: aim.y + (dy > 0 ? 16 : -16),
       };
   return (

@@ -35,52 +35,54 @@ function Plane({ approach }: { approach: Approach }) {
   const zoom = (factor: number) => setHalfKm((half) => limitedHalfKm(approach, half * factor));
   return (
     <div className="plane">
-      <div ref={sheet} className="plane-sheet">
-        <PlaneSheet approach={approach} axes={axes} halfKm={halfKm} size={size} zoom={zoom} />
-      </div>
-      <div className="plane-side">
-        <div className="plane-controls">
-          <fieldset className="choice">
-            <legend className="only-spoken">Axes of the target plane</legend>
-            {AXES.map(({ value, word }) => (
-              <label key={value}>
-                <input
-                  type="radio"
-                  name={name}
-                  checked={axes === value}
-                  onChange={() => setAxes(value)}
-                />
-                {word}
-              </label>
-            ))}
-          </fieldset>
-          <div className="plane-zoom">
-            <button
-              type="button"
-              className="button"
-              aria-label="Show more of the plane"
-              onClick={() => zoom(ZOOM_STEP)}
-            >
-              −
-            </button>
-            <button
-              type="button"
-              className="button"
-              aria-label="Show less of the plane, larger"
-              onClick={() => zoom(1 / ZOOM_STEP)}
-            >
-              +
-            </button>
-            <button
-              type="button"
-              className="button"
-              onClick={() => setHalfKm(fittingHalfKm(approach))}
-            >
-              Fit
-            </button>
-          </div>
+      <div className="plane-body">
+        <div ref={sheet} className="plane-sheet">
+          <PlaneSheet approach={approach} axes={axes} halfKm={halfKm} size={size} zoom={zoom} />
         </div>
-        <PlaneFigures approach={approach} />
+        <div className="plane-side">
+          <div className="plane-controls">
+            <fieldset className="choice">
+              <legend className="only-spoken">Axes of the target plane</legend>
+              {AXES.map(({ value, word }) => (
+                <label key={value}>
+                  <input
+                    type="radio"
+                    name={name}
+                    checked={axes === value}
+                    onChange={() => setAxes(value)}
+                  />
+                  {word}
+                </label>
+              ))}
+            </fieldset>
+            <div className="plane-zoom">
+              <button
+                type="button"
+                className="button"
+                aria-label="Show more of the plane"
+                onClick={() => zoom(ZOOM_STEP)}
+              >
+                −
+              </button>
+              <button
+                type="button"
+                className="button"
+                aria-label="Show less of the plane, larger"
+                onClick={() => zoom(1 / ZOOM_STEP)}
+              >
+                +
+              </button>
+              <button
+                type="button"
+                className="button"
+                onClick={() => setHalfKm(fittingHalfKm(approach))}
+              >
+                Fit
+              </button>
+            </div>
+          </div>
+          <PlaneFigures approach={approach} />
+        </div>
       </div>
     </div>
   );

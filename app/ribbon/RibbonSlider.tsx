@@ -132,6 +132,14 @@ export function RibbonSlider({ geometry, widthPx }: { geometry: RibbonGeometry; 
     >
       <svg width={widthPx} height={RIBBON_HEIGHT_PX} aria-hidden="true" focusable="false">
         <RibbonPlot geometry={geometry} />
+      </svg>
+      <svg
+        className="ribbon-moving"
+        width={widthPx}
+        height={RIBBON_HEIGHT_PX}
+        aria-hidden="true"
+        focusable="false"
+      >
         <path ref={line} className="ribbon-playhead" />
         <circle ref={dot} className="ribbon-dot" r={4.5} />
       </svg>

@@ -4,7 +4,7 @@ import { advance, type Pace, REDUCED_STEP } from './pace';
 import type { TimeScale } from './time-scale';
 
 /** A frame that comes later than this (a hidden page) counts as this long, s. */
-const LONGEST_FRAME_S = 0.1;
+const LONGEST_FRAME_S = 0.5;
 
 /** Moves the clock along the ribbon while the desk plays; the frame loop runs only then. */
 export function usePlay(scale: TimeScale | null, pace: Pace): void {
