@@ -1,5 +1,6 @@
+import fc from 'fast-check';
 import { beforeAll, describe, expect, it } from 'vitest';
-import { BODY_INDEX } from '../../../core/constants';
+import { AU_KM, BODY_INDEX } from '../../../core/constants';
 import { createForceModel } from '../../../core/dynamics/force-model';
 import {
   createPropagator,
@@ -61,6 +62,28 @@ describe('the n-body integration', () => {
     const deep = fromEarth([9000, 0, 2000], [1, 11, 2]);
     const out = run(START, deep, START - 40 * DAY);
     expect(distance(run(START - 40 * DAY, out.end, START).end, deep)).toBeLessThan(1e-2);
+  });
+
+  it('comes back to its start from anywhere among the inner planets, in either direction', () => {
+    const unit = { noNaN: true, min: -1, max: 1 };
+    const three = fc.tuple(fc.double(unit), fc.double(unit), fc.double(unit));
+    fc.assert(
+      fc.property(three, three, fc.constantFrom(1, -1), (place, speed, direction) => {
+        const distanceAu = Math.hypot(...place);
+        fc.pre(distanceAu > 0.3);
+        // At least 0.3 au from the Earth, at most 35 km/s slower or faster than it.
+        const state = fromEarth(
+          place.map((x) => x * AU_KM),
+          speed.map((x) => x * 20),
+        );
+        const goal = START + direction * 200 * DAY;
+        const there = run(START, state, goal);
+        // 1e-14 of 1.5e8 km a step, 60 steps each way, stretched a few times by the Sun's pull: 1e-3 km;
+        // one of many orbits may pass the Sun within a few radii, which stretches it tenfold more.
+        expect(distance(run(goal, there.end, START).end, state)).toBeLessThan(1e-2);
+      }),
+      { seed: 853, numRuns: 40 },
+    );
   });
 
   it('agrees between the dense output and a fresh step inside every step', () => {
