@@ -78,7 +78,7 @@ function lonLat(sample: Float64Array): LonLat {
 }
 
 /** The points beneath the object and beneath the Sun at a moment within the trajectory's span. */
-export interface PointsBeneath {
+interface PointsBeneath {
   tdbSeconds: number;
   object: LonLat;
   altitudeKm: number;

@@ -28,7 +28,7 @@ export interface PlaneGeometry {
   ticks: { across: PlaneTick[]; upright: PlaneTick[] };
 }
 
-export interface PlaneTick {
+interface PlaneTick {
   /** Along its axis, px from the left or from the top. */
   px: number;
   words: string;

@@ -12,7 +12,7 @@ import { frame, type Pen, PLATE_FONTS } from './pen';
 import { withText } from './png-text';
 
 /** What the plate is made from: a snapshot of the desk, and nothing that moves. */
-export interface PlateInput extends SceneRequest {
+interface PlateInput extends SceneRequest {
   report: Report;
   trajectory: Trajectory;
   palette: Palette;

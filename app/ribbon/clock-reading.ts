@@ -5,7 +5,7 @@ import type { Anchor } from './anchor';
 import { distanceWords, momentWords, spanWords } from './words';
 
 /** What the ribbon says about the moment on the clock. */
-export interface ClockReading {
+interface ClockReading {
   /** UTC; to the millisecond within one time scale of the passage, else to the second. */
   moment: string;
   distance: string;

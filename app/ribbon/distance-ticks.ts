@@ -9,13 +9,13 @@ import {
 import type { DistanceScale } from './distance-scale';
 import { distanceWords } from './words';
 
-export interface DistanceTick {
+interface DistanceTick {
   km: number;
   words: string;
 }
 
 /** Distances with a name of their own: the left-hand axis. */
-export const NAMED_DISTANCES: readonly DistanceTick[] = [
+const NAMED_DISTANCES: readonly DistanceTick[] = [
   { km: EARTH_RADIUS_KM, words: 'surface' },
   { km: GEOSYNCHRONOUS_RADIUS_KM, words: 'geosynchronous' },
   { km: MOON_MEAN_DISTANCE_KM, words: 'Moon' },

@@ -29,7 +29,7 @@ export interface RibbonGeometry {
 }
 
 /** Sizes of a ribbon's sheet, px. */
-export interface RibbonSheet {
+interface RibbonSheet {
   widthPx: number;
   heightPx: number;
   /** Margins that hold the axes' words. */
