@@ -32,6 +32,8 @@ export default defineConfig({
         extends: true,
         test: {
           name: 'page',
+          // A real browser in software rendering, on a machine that may be busy.
+          testTimeout: 180_000,
           include: ['tests/desk/browser/**/*.test.ts'],
           globalSetup: 'tests/desk/browser/serve.ts',
           fileParallelism: false,
