@@ -164,4 +164,6 @@ export function readDesk(text: string): DeskContent | null {
   };
 }
 
-export const looksLikeCaseFile = (text: string): boolean => /^\s*\{/.test(text);
+/** Other JSON (a state with its keys in quotes) is read as free text. */
+export const looksLikeCaseFile = (text: string): boolean =>
+  /^\s*\{/.test(text) && /"(?:format|case)"\s*:/.test(text);

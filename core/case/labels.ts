@@ -5,22 +5,28 @@ import type { FieldName } from './types';
 export interface Label {
   /** Null: a known value that is not used (mean motion, aphelion, period…). */
   field: FieldName | null;
-  /** What stands behind it. */
-  kind: 'number' | 'epoch';
+  /**
+   * What stands behind it: an instant, a number of the body (whose unit is its own), or one of the
+   * state (whose unit is said for all).
+   */
+  kind: 'epoch' | 'body' | 'state';
   pattern: RegExp;
 }
 
 /** A unit in brackets, then "=" or ":". */
 const SIGN = String.raw`\s*(?:[\[(][^\])]{0,12}[\])])?\s*[:=]\s*`;
-/** At the start of a line, behind a comma or in a column of its own a label may stand without a sign. */
-const BARE = String.raw`(?<=^[\s#*|]*|[,;\t|]\s*|\s{2})`;
+/**
+ * At the start of a line, behind a comma, in a column of its own or behind a number a label may
+ * stand without a sign.
+ */
+const BARE = String.raw`(?<=^[\s#*|]{0,12}|[,;\t|]\s*|\s{2}|\d\s)`;
 
 function label(
   field: FieldName | null,
   words: string,
   {
     bare = false,
-    kind = 'number',
+    kind = 'state',
     flags = 'giu',
   }: { bare?: boolean; kind?: Label['kind']; flags?: string } = {},
 ): Label {
@@ -69,13 +75,13 @@ export const LABELS: readonly Label[] = [
   label('trueAnomaly', 'true anomaly|ta|nu|ν|f', { bare: true }),
   label(null, 'mean motion|n|aphelion distance|ad|period|pr', { bare: true }),
   label(null, 'Q|P|LT|RG|RR', { flags: 'gu' }),
-  label('a1', 'a1', { bare: true }),
-  label('a2', 'a2', { bare: true }),
-  label('a3', 'a3', { bare: true }),
-  label('absoluteMagnitude', 'absolute magnitude|H', { flags: 'gu', bare: true }),
-  label('slopeParameter', 'slope parameter|G', { flags: 'gu', bare: true }),
-  label('diameter', 'diameter(?:_m)?', { bare: true }),
-  label('albedo', 'albedo', { bare: true }),
-  label('density', 'density(?:_kg_m3)?', { bare: true }),
-  label('strength', 'strength(?:_pa)?', { bare: true }),
+  label('a1', 'a1', { bare: true, kind: 'body' }),
+  label('a2', 'a2', { bare: true, kind: 'body' }),
+  label('a3', 'a3', { bare: true, kind: 'body' }),
+  label('absoluteMagnitude', 'absolute magnitude|H', { flags: 'gu', bare: true, kind: 'body' }),
+  label('slopeParameter', 'slope parameter|G', { flags: 'gu', bare: true, kind: 'body' }),
+  label('diameter', 'diameter(?:_m)?', { bare: true, kind: 'body' }),
+  label('albedo', 'albedo', { bare: true, kind: 'body' }),
+  label('density', 'density(?:_kg_m3)?', { bare: true, kind: 'body' }),
+  label('strength', 'strength(?:_pa)?', { bare: true, kind: 'body' }),
 ];

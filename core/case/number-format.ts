@@ -30,7 +30,10 @@ export function readToken(token: string, format: NumberFormat): string[] | null 
   return WITH_COMMA.test(text) ? [text.replace(',', '.')] : null;
 }
 
-/** Whether a comma in a token could be a decimal one: commas followed by a blank part a list. */
-export function hasInnerComma(token: string): boolean {
-  return /\d,\d/.test(token);
+/**
+ * Whether the numbers of a text could have decimal commas: a comma between digits, or points that
+ * can only group. Commas followed by a blank part a list.
+ */
+export function mayBeDecimalComma(text: string): boolean {
+  return /\d,\d|\d\.\d{3}\.\d{3}(?!\d)/.test(text);
 }

@@ -31,10 +31,10 @@ function rawOf(text: string, choices: Choices): RawCase {
     return withProblems(readOpm(entries, 'opm-xml'), problems, entries.length > 0);
   }
   if (
-    /^\s*CCSDS_O[A-Z]M_VERS\s*=/m.test(text) ||
-    /^\s*(?:CENTER_NAME|REF_FRAME|X_DOT)\s*=/m.test(text)
+    /^[ \t\uFEFF]*CCSDS_O[A-Z]M_VERS[ \t]*=/im.test(text) ||
+    /^[ \t\uFEFF]*(?:CENTER_NAME|REF_FRAME|X_DOT)[ \t]*=/m.test(text)
   ) {
-    const other = /^\s*CCSDS_(OEM|OMM|OCM)_VERS/m.exec(text);
+    const other = /^[ \t\uFEFF]*CCSDS_(OEM|OMM|OCM)_VERS/im.exec(text);
     if (other !== null) {
       const raw = emptyRaw('opm-kvn');
       raw.problems.push(
