@@ -1,5 +1,6 @@
 import type { OrbitCase, ReadResult } from './case/types';
 import type { Report } from './report/report';
+import type { CarryClones } from './uncertainty/clones';
 
 /** What goes into an assessment and what streams out of it. */
 
@@ -29,4 +30,36 @@ export interface AssessHost {
   /** Awaited between chunks of work, so that a message (cancel, a new case) can get through. */
   pause(): Promise<void>;
   cancelled(): boolean;
+}
+
+/** What streams out of the estimate of the impact probability, after the assessment. */
+export type EstimateEvent =
+  /** Share done, 0 to 1, and what is being done. */
+  | { type: 'progress'; fraction: number; note: string }
+  | {
+      type: 'clones';
+      /** Index of the principal approach, whose points these are. */
+      approach: number;
+      /** Clones carried so far, and wanted. */
+      count: number;
+      wanted: number;
+      /** Of those carried: reached the ground of the Earth within the span. */
+      impacts: number;
+      /** Clopper–Pearson, of the probability of impact. */
+      interval95: [number, number];
+      /** New points, CLONE_POINT.size numbers each; not of every clone when there are very many. */
+      points: Float32Array;
+      /** Drawn from the covariance, or by the rare-event estimate about the impacts. */
+      drawn: 'plain' | 'rare';
+    }
+  | { type: 'report'; report: Report };
+
+/** What the estimate asks of whoever runs it. */
+export interface EstimateHost {
+  carry: CarryClones;
+  /** How many batches may be asked for at once: the number of carriers. */
+  parallel: number;
+  emit(event: EstimateEvent): void;
+  /** True ends the run with what is known so far; it can be continued. */
+  stopped(): boolean;
 }

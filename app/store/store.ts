@@ -1,6 +1,7 @@
 import { createStore, type StoreApi } from 'zustand/vanilla';
 import type { Choices, ReadResult } from '../../core/case/types';
 import type { Report } from '../../core/report/report';
+import { CloneCloud } from '../worker/clone-cloud';
 import { Trajectory } from '../worker/trajectory';
 
 /** Slow intent: what the person asked for and what has come back. No per-frame state. */
@@ -18,6 +19,18 @@ export interface RunState {
   fraction: number;
   note: string;
   /** What went wrong, in a sentence; null unless status is 'failed'. */
+  error: string | null;
+}
+
+export interface EstimateState {
+  status: 'idle' | 'running' | 'stopped' | 'done' | 'failed';
+  /** Share done, 0 to 1, and what is being done. */
+  fraction: number;
+  note: string;
+  count: number;
+  wanted: number;
+  impacts: number;
+  interval95: [number, number] | null;
   error: string | null;
 }
 
@@ -40,6 +53,10 @@ export interface DeskStore {
   reportIsStale: boolean;
   /** Streamed states of the current run; a new object for each run. Mutable: watch `version`. */
   trajectory: Trajectory;
+  /** Clones of the principal approach; a new object for each case. Mutable: watch `version`. */
+  clones: CloneCloud;
+  /** The estimate of the impact probability that follows the assessment. */
+  estimate: EstimateState;
   /** Ids of the findings chosen for the plate. Kept in a case file. */
   plateFindings: string[];
   playing: boolean;
@@ -57,6 +74,17 @@ export type DeskStoreApi = StoreApi<DeskStore>;
 
 export const IDLE_RUN: RunState = { status: 'idle', fraction: 0, note: '', error: null };
 
+export const IDLE_ESTIMATE: EstimateState = {
+  status: 'idle',
+  fraction: 0,
+  note: '',
+  count: 0,
+  wanted: 0,
+  impacts: 0,
+  interval95: null,
+  error: null,
+};
+
 export function createDeskStore(initial: Partial<DeskStore> = {}): DeskStoreApi {
   return createStore<DeskStore>(() => ({
     text: '',
@@ -66,6 +94,8 @@ export function createDeskStore(initial: Partial<DeskStore> = {}): DeskStoreApi 
     report: null,
     reportIsStale: false,
     trajectory: new Trajectory(),
+    clones: new CloneCloud(),
+    estimate: IDLE_ESTIMATE,
     plateFindings: [],
     playing: false,
     theme: 'auto',

@@ -77,7 +77,7 @@ export function certaintyFinding(main: Approach | null): Finding {
     );
   }
   const [low, high] = given.distance3SigmaKm;
-  const probability = main.impactProbability?.firstOrder;
+  const probability = main.impactProbability?.firstOrder ?? undefined;
   const hit =
     probability === undefined
       ? ''

@@ -126,6 +126,80 @@ const uncertainty = v.object({
   stretchingEarthRadiiPerSigma: v.nullable(finite),
 });
 
+const interval = (description: string) =>
+  v.pipe(v.tuple([finite, finite]), v.description(description));
+const count = v.pipe(v.number(), v.integer(), v.minValue(0));
+
+export const ESTIMATES = ['first-order', 'ensemble', 'rare-event'] as const;
+
+/** Probability of impact by each method that was used, and the one to go by. */
+const probabilityKeys = {
+  firstOrder: v.nullable(
+    number(
+      'Gaussian of the target plane over the disc of the impact radius; null without a plane.',
+    ),
+  ),
+  ensemble: v.optional(
+    v.object({
+      count,
+      impacts: count,
+      value: finite,
+      interval95: interval('Clopper–Pearson, 95 %.'),
+    }),
+  ),
+  rareEvent: v.optional(
+    v.object({
+      method: v.string(),
+      value: finite,
+      relativeError: v.nullable(number('1 σ, of the sampling; null where no impact was found.')),
+      samples: count,
+    }),
+  ),
+  adopted: v.optional(
+    v.object({
+      value: finite,
+      range95: interval('Of the sampling, 95 %.'),
+      from: v.picklist(ESTIMATES),
+      why: text('Why this one, and whether the others agree.'),
+    }),
+  ),
+};
+
+/** Impacts of one body within some days of one another, from the clones. */
+const impactDate = v.object({
+  body: bodyName,
+  ...instant,
+  firstUtc: v.string(),
+  lastUtc: v.string(),
+  approach: v.nullable(
+    number('Index into approaches; null where the nominal orbit makes no such approach.'),
+  ),
+  value: number('Probability of impact on this date.'),
+  range95: interval('Of the sampling, 95 %.'),
+  excessSpeedKmS: v.nullable(finite),
+  impactSpeedKmS: number('At the entry interface (the Moon: at the surface), mean of the impacts.'),
+});
+
+/** Over the whole span, impacts of the Earth. */
+const impactProbability = v.object({
+  ...probabilityKeys,
+  dates: v.array(impactDate),
+  seed: v.nullable(count),
+  /** Null where nothing speaks against it. */
+  reliability: v.nullable(text('Where the estimate stops being reliable, and why.')),
+});
+
+/** On the line of variations, from clones carried by the n-body model. */
+const lineOfVariations = v.array(
+  v.object({
+    sigma: number('Distance along the line at the epoch, in standard deviations.'),
+    bDotTKm: finite,
+    bDotRKm: finite,
+    tdbSeconds: finite,
+    distanceKm: finite,
+  }),
+);
+
 const approach = v.object({
   body: bodyName,
   ...instant,
@@ -146,11 +220,8 @@ const approach = v.object({
   entry: v.optional(entry),
   surfaceImpact: v.optional(surfaceImpact),
   uncertainty: v.optional(uncertainty),
-  impactProbability: v.optional(
-    v.object({
-      firstOrder: number('Gaussian of the target plane over the disc of the impact radius.'),
-    }),
-  ),
+  impactProbability: v.optional(v.object(probabilityKeys)),
+  lineOfVariations: v.optional(lineOfVariations),
   /** Heliocentric elements before and after the pass, where the body is the Earth and inside its sphere of influence. */
   orbitBefore: v.optional(elements),
   orbitAfter: v.optional(elements),
@@ -308,6 +379,8 @@ export const reportSchema = v.object({
     ),
   ),
   comparison: v.nullable(comparison),
+  /** Absent without a covariance, and until it has been estimated. */
+  impactProbability: v.optional(impactProbability),
   findings: v.array(finding),
   cautions: v.array(v.string()),
   fingerprint: text('SHA-256, hex, of the canonical JSON without madeAt and fingerprint.'),
@@ -319,6 +392,9 @@ export type Crossing = v.InferOutput<typeof crossing>;
 export type Entry = v.InferOutput<typeof entry>;
 export type SurfaceImpact = v.InferOutput<typeof surfaceImpact>;
 export type ApproachUncertainty = v.InferOutput<typeof uncertainty>;
+export type ImpactProbability = v.InferOutput<typeof impactProbability>;
+export type ImpactDate = v.InferOutput<typeof impactDate>;
+export type LineOfVariations = v.InferOutput<typeof lineOfVariations>;
 export type Finding = v.InferOutput<typeof finding>;
 export type ClassicalResult = v.InferOutput<typeof classical>;
 export type Comparison = v.InferOutput<typeof comparison>;
