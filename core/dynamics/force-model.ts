@@ -46,7 +46,10 @@ const CENTURY_S = 36525 * 86400;
  */
 export class ForceModel {
   private readonly gm: Float64Array;
-  private readonly bodies = new Float64Array(36);
+  /** GM of each body as a point mass, the Earth's with its oblateness: 0 leaves the body's pull out. */
+  readonly pull: Float64Array;
+  /** Of the last evaluation: positions of all bodies (11 × 3), km, and the Sun's velocity (3), km/s. */
+  readonly bodies = new Float64Array(36);
   private readonly pole = new Float64Array(3);
   private readonly forces: Float64Array | null;
   /** 1.5 J2 R² of the Sun, km². */
@@ -61,6 +64,7 @@ export class ForceModel {
     options: ForceModelOptions,
   ) {
     this.gm = Float64Array.from(BODIES, (body) => GM_KM3_S2[options.gm][body]);
+    this.pull = Float64Array.from(this.gm);
     this.solarOblateness = 1.5 * SUN_J2[options.gm] * BODY_RADIUS_KM.Sun ** 2;
     const forces = options.nonGravitational;
     this.forces = forces === null ? null : Float64Array.of(forces.a1, forces.a2, forces.a3);
@@ -76,7 +80,7 @@ export class ForceModel {
    * @throws       EphemerisRangeError outside the ephemeris
    */
   derivative(base: number, offset: number, y: Float64Array, out: Float64Array, at: number): void {
-    const { bodies, gm } = this;
+    const { bodies, pull } = this;
     this.ephemeris.positionsAndSunVelocity(base, offset, bodies);
     this.evaluations += 1;
     const x = y[0];
@@ -91,7 +95,7 @@ export class ForceModel {
       const dy = bodies[i * 3 + 1] - yy;
       const dz = bodies[i * 3 + 2] - z;
       const d2 = dx * dx + dy * dy + dz * dz;
-      const k = gm[i] / (d2 * Math.sqrt(d2));
+      const k = pull[i] / (d2 * Math.sqrt(d2));
       ax += k * dx;
       ay += k * dy;
       az += k * dz;
@@ -166,7 +170,7 @@ export class ForceModel {
     const sine = (gx * px + gy * py + gz * pz) / q;
     // Below the surface, where only trial steps go, the term is held: it would outgrow all else.
     const held = Math.max(q2, LOWEST_OBLATE_KM * LOWEST_OBLATE_KM);
-    const k = (1.5 * EARTH_J2 * this.gm[2] * EARTH_RADIUS_KM * EARTH_RADIUS_KM) / (held * held);
+    const k = (1.5 * EARTH_J2 * this.pull[2] * EARTH_RADIUS_KM * EARTH_RADIUS_KM) / (held * held);
     const radial = (k * (5 * sine * sine - 1)) / q;
     const polar = 2 * k * sine;
     out[at + 3] += radial * gx - polar * px;

@@ -20,7 +20,10 @@ import { earthPole, LOWEST_OBLATE_KM, OBLATENESS_REGION_KM } from './force-model
  */
 export class ForcePartials {
   private readonly gm: Float64Array;
-  private readonly bodies = new Float64Array(36);
+  /** GM of each body as a point mass, the Earth's with its oblateness: 0 leaves the body's pull out. */
+  readonly pull: Float64Array;
+  private readonly own = new Float64Array(36);
+  private bodies: Float64Array = this.own;
   private readonly pole = new Float64Array(3);
   /** Derivatives by place and by velocity (3 × 3, by rows), and by A1, A2, A3 (3 × 3, a column each). */
   readonly place = new Float64Array(9);
@@ -32,6 +35,7 @@ export class ForcePartials {
     set: GmSet,
   ) {
     this.gm = Float64Array.from(BODIES, (body) => GM_KM3_S2[set][body]);
+    this.pull = Float64Array.from(this.gm);
   }
 
   /**
@@ -41,15 +45,26 @@ export class ForcePartials {
    * @param y            barycentric ICRF state, km and km/s (6)
    */
   evaluate(base: number, offset: number, y: Float64Array): void {
-    const { bodies, gm, place } = this;
-    this.ephemeris.positionsAndSunVelocity(base, offset, bodies);
+    this.ephemeris.positionsAndSunVelocity(base, offset, this.own);
+    this.differentiate(this.own, base + offset, y);
+  }
+
+  /**
+   * The same where the bodies' places are known.
+   *
+   * @param bodies     positions (11 × 3), km, then the Sun's velocity (3), km/s
+   * @param tdbSeconds TDB seconds past J2000
+   */
+  differentiate(bodies: Float64Array, tdbSeconds: number, y: Float64Array): void {
+    const { pull, place } = this;
+    this.bodies = bodies;
     place.fill(0);
     for (let i = 0; i < 11; i++) {
       const x = bodies[i * 3] - y[0];
       const yy = bodies[i * 3 + 1] - y[1];
       const z = bodies[i * 3 + 2] - y[2];
       const d2 = x * x + yy * yy + z * z;
-      const k = gm[i] / (d2 * Math.sqrt(d2));
+      const k = pull[i] / (d2 * Math.sqrt(d2));
       const t = (3 * k) / d2;
       place[0] += t * x * x - k;
       place[1] += t * x * yy;
@@ -62,7 +77,7 @@ export class ForcePartials {
     place[6] = place[2];
     place[7] = place[5];
     this.addSun(y);
-    this.addEarth(base + offset, y);
+    this.addEarth(tdbSeconds, y);
   }
 
   private addSun(y: Float64Array): void {
@@ -108,7 +123,7 @@ export class ForcePartials {
     const u = g[0] * pole[0] + g[1] * pole[1] + g[2] * pole[2];
     const q5 = q2 * q2 * Math.sqrt(q2);
     const q7 = q5 * q2;
-    const k = 1.5 * EARTH_J2 * this.gm[BODY_INDEX.Earth] * EARTH_RADIUS_KM * EARTH_RADIUS_KM;
+    const k = 1.5 * EARTH_J2 * this.pull[BODY_INDEX.Earth] * EARTH_RADIUS_KM * EARTH_RADIUS_KM;
     const radial = (5 * u * u) / q7 - 1 / q5;
     for (let i = 0; i < 3; i++) {
       for (let j = 0; j < 3; j++) {
