@@ -14,6 +14,7 @@ import {
   earthPole,
   type ForceModel,
   type NonGravitationalForce,
+  OBLATENESS_REGION_KM,
 } from './force-model';
 import { PLACE_ROWS, VELOCITY_ROWS } from './nystrom';
 import { ForcePartials } from './partials';
@@ -30,8 +31,6 @@ const STEP_POWER = 1 / 9;
 const LINEAR_ERROR_KM = 1e-3;
 const LEAST_LINEAR_SPAN_S = 30 * 86400;
 const MOST_LINEAR_SPAN_S = 365.25 * 86400;
-/** Nearer than this to the Earth its oblateness is taken at each clone's own place, km. */
-const OBLATENESS_KM = 2e6;
 const BODY_COUNT = BODIES.length;
 const RADII = Float64Array.from(BODIES, (body) => BODY_RADIUS_KM[body]);
 const EARTH = BODY_INDEX.Earth;
@@ -149,7 +148,7 @@ export class CloneField {
       if (inner > 2 * this.spread && second < this.linearTolerance * inner ** 4) continue;
       if (body === EARTH) {
         this.earthAt = this.nearCount;
-        this.oblate = inner < OBLATENESS_KM;
+        this.oblate = inner < OBLATENESS_REGION_KM;
       }
       this.near[this.nearCount] = body;
       this.nearGm[this.nearCount] = this.gm[body];
