@@ -36,6 +36,8 @@ import {
 import { approachSection, classicalSection, elementsSection } from './report/sections';
 import { jdFromTdbSeconds } from './time/convert';
 import { uncertaintiesOf } from './uncertainty/approaches';
+import type { ClonePlan } from './uncertainty/clones';
+import { factorOf } from './uncertainty/factor';
 
 /** Thrown when the host says the assessment is no longer wanted. */
 export class AssessmentCancelled extends Error {
@@ -44,6 +46,18 @@ export class AssessmentCancelled extends Error {
     super('The assessment was stopped.');
     this.name = 'AssessmentCancelled';
   }
+}
+
+/** What the estimate of the impact probability starts from. */
+export interface EstimateBasis {
+  plan: ClonePlan;
+  report: Report;
+}
+
+export interface Assessed {
+  report: Report;
+  /** Null without a covariance. */
+  estimate: EstimateBasis | null;
 }
 
 const DAY = SECONDS_PER_DAY;
@@ -71,15 +85,16 @@ const SAME_PASS_S = 10 * DAY;
  * @param input     the text, its reading and the case; the time of making is handed in
  * @param ephemeris filled with the files the span needs, as it goes
  * @param host      fetches files, takes events, lets messages through, says when to stop
- * @returns         the sealed report, also emitted as the last event
+ * @returns         the sealed report, also emitted as the last event, and what the estimate of the
+ *                  impact probability starts from
  * @throws          AssessmentCancelled; EphemerisRangeError when the epoch or the asked span is not
  *                  covered; StepCollapse when the integration cannot go on
  */
-export async function runAssessment(
+export async function assess(
   input: AssessInput,
   ephemeris: Ephemeris,
   host: AssessHost,
-): Promise<Report> {
+): Promise<Assessed> {
   const orbit = input.case;
   const epoch = epochOf(orbit);
   const gm = GM_KM3_S2[orbit.model.gm];
@@ -153,7 +168,49 @@ export async function runAssessment(
   };
   const report = sealReport({ ...draft, ...writeFindings(draft) });
   host.emit({ type: 'report', report });
-  return report;
+  return {
+    report,
+    estimate: estimateBasis(orbit, normalised, ephemeris, report, span.to(forward.events)),
+  };
+}
+
+/** The report alone. */
+export async function runAssessment(
+  input: AssessInput,
+  ephemeris: Ephemeris,
+  host: AssessHost,
+): Promise<Report> {
+  return (await assess(input, ephemeris, host)).report;
+}
+
+/** What the clones are drawn from; null without a covariance, or where nothing lies ahead. */
+function estimateBasis(
+  orbit: OrbitCase,
+  normalised: NormalisedCase,
+  ephemeris: Ephemeris,
+  report: Report,
+  toTdbSeconds: number,
+): EstimateBasis | null {
+  const { covariance, epochTdbSeconds, a1KmS2, a2KmS2, a3KmS2 } = normalised;
+  if (covariance === null || toTdbSeconds <= epochTdbSeconds) return null;
+  const { factor, dimension } = factorOf(covariance.matrix, 9);
+  if (dimension === 0) return null;
+  const forcesUncertain = factor.subarray(6 * dimension).some((value) => value !== 0);
+  return {
+    report,
+    plan: {
+      gm: orbit.model.gm,
+      epochTdbSeconds,
+      toTdbSeconds,
+      state: barycentric(normalised, ephemeris),
+      forces:
+        orbit.nonGravitational === null && !forcesUncertain
+          ? null
+          : Float64Array.of(a1KmS2, a2KmS2, a3KmS2),
+      factor,
+      dimension,
+    },
+  };
 }
 
 const ENTRY_RADIUS_KM = EARTH_RADIUS_KM + ENTRY_INTERFACE_ALTITUDE_KM;
