@@ -57,7 +57,7 @@ export function carryBatch(
     for (let lane = 0; lane < lanes; lane++) {
       const clone = clones[lane];
       if (watch.see(clone, step, lane)) ended[clone] = 1;
-      for (let k = 0; k < 6; k++) states[clone * 6 + k] = step.end[lane * 6 + k];
+      for (let k = 0; k < 6; k++) states[clone * 6 + k] = step.to[lane * 6 + k];
     }
   }
 
@@ -92,7 +92,7 @@ export function carryBatch(
           continue;
         }
         clones[lanes] = clone;
-        for (let k = 0; k < 6; k++) step.start[lanes * 6 + k] = states[clone * 6 + k];
+        for (let k = 0; k < 6; k++) step.from[lanes * 6 + k] = states[clone * 6 + k];
         if (deviations !== null) {
           for (let k = 0; k < 3; k++) step.deviations[lanes * 3 + k] = deviations[clone * 3 + k];
         }

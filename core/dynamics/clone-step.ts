@@ -1,7 +1,6 @@
-import type { CloneField } from './clone-field';
+import { type CloneField, oblateAcceleration } from './clone-field';
 import { DENSE_DOUBLES } from './dop853';
 import { ALL_STAGES, DENSE, NODES, STAGES, WEIGHTS } from './dop853-coefficients';
-import { LOWEST_OBLATE_KM } from './force-model';
 import { PLACE_ROWS, VELOCITY_ROWS } from './nystrom';
 
 /** Clones that go side by side through the stages: enough for the processor to overlap their roots. */
@@ -9,7 +8,6 @@ export const LANES = 8;
 const END = STAGES;
 /** Numbers of one lane's accelerations. */
 const LANE = ALL_STAGES * 3;
-const LEAST2 = LOWEST_OBLATE_KM * LOWEST_OBLATE_KM;
 const ROW_STARTS = Int32Array.from(PLACE_ROWS.starts);
 /** Where the acceleration of each entry's stage begins in a lane. */
 const ROW_PLACES = Int32Array.from(PLACE_ROWS.stages, (stage) => stage * 3);
@@ -25,9 +23,12 @@ export class CloneStep {
   private readonly placeWeights = new Float64Array(PLACE_ROWS.weights.length);
   private readonly weights = new Float64Array(STAGES);
   private readonly nodes = new Float64Array(ALL_STAGES);
-  /** States at the start and the end of the step last made, 6 for each lane. */
-  readonly start = new Float64Array(LANES * 6);
-  readonly end = new Float64Array(LANES * 6);
+  /** The same from the field's origin. */
+  private readonly start = new Float64Array(LANES * 6);
+  private readonly end = new Float64Array(LANES * 6);
+  /** Barycentric states at the start and the end of the step last made, 6 for each lane. */
+  readonly from = new Float64Array(LANES * 6);
+  readonly to = new Float64Array(LANES * 6);
   /** Deviations of A1 to A3, km/s², 3 for each lane; used when `hasDeviations`. */
   readonly deviations = new Float64Array(LANES * 3);
   hasDeviations = false;
@@ -44,9 +45,13 @@ export class CloneStep {
     for (let i = 0; i < ALL_STAGES; i++) this.nodes[i] = NODES[i] * h;
   }
 
-  /** Makes the step of the first lanes, from `start` to `end`. Hot loop. */
+  /** Makes the step of the first lanes, from `from` to `to`. Hot loop. */
   make(lanes: number): void {
-    const { start, end, f, weights } = this;
+    const { from, to: reached, start, end, f, weights } = this;
+    const { originAtStart, originAtEnd } = this.field;
+    for (let lane = 0; lane < lanes; lane++) {
+      for (let k = 0; k < 6; k++) start[lane * 6 + k] = from[lane * 6 + k] - originAtStart[k];
+    }
     this.evaluate(0, STAGES, 0, lanes);
     for (let lane = 0; lane < lanes; lane++) {
       const to = lane * 6;
@@ -56,6 +61,7 @@ export class CloneStep {
         for (let j = 0; j < STAGES; j++) v += weights[j] * f[lane * LANE + j * 3 + k];
         end[to + 3 + k] = v;
       }
+      for (let k = 0; k < 6; k++) reached[to + k] = end[to + k] + originAtEnd[k];
     }
   }
 
@@ -151,22 +157,17 @@ export class CloneStep {
   }
 
   private addOblateness(stage: number, out: number, x: number, y: number, z: number): void {
-    const { field, f } = this;
-    const { pole, nearPlaces, earthAt, oblateness } = field;
+    const { pole, nearPlaces, earthAt, oblateness } = this.field;
     const at = (earthAt * ALL_STAGES + stage) * 3;
-    const gx = x - nearPlaces[at];
-    const gy = y - nearPlaces[at + 1];
-    const gz = z - nearPlaces[at + 2];
-    const q2 = gx * gx + gy * gy + gz * gz;
-    const along = gx * pole[0] + gy * pole[1] + gz * pole[2];
-    // Below the surface, where only trial steps go, the term is held.
-    const held = Math.max(q2, LEAST2);
-    const k = oblateness / (held * held * Math.sqrt(q2));
-    const radial = k * ((5 * along * along) / q2 - 1);
-    const polar = 2 * k * along;
-    f[out] += radial * gx - polar * pole[0];
-    f[out + 1] += radial * gy - polar * pole[1];
-    f[out + 2] += radial * gz - polar * pole[2];
+    oblateAcceleration(
+      oblateness,
+      pole,
+      x - nearPlaces[at],
+      y - nearPlaces[at + 1],
+      z - nearPlaces[at + 2],
+      this.f,
+      out,
+    );
   }
 
   private addForces(stage: number, lane: number): void {
@@ -181,14 +182,20 @@ export class CloneStep {
     }
   }
 
-  /** Dense output of a lane's step, in the form that `evaluateDense` takes, to `out`. */
-  dense(lane: number, out: Float64Array): void {
+  /**
+   * Dense output of a lane's step, measured from the field's origin.
+   *
+   * @param out     receives the polynomials that `evaluateDense` takes
+   * @param startAt receives the state they start from (6)
+   */
+  dense(lane: number, out: Float64Array, startAt: Float64Array): void {
     const { field, f, start, end, velocities } = this;
     field.prepareDense();
     this.evaluate(END, ALL_STAGES, lane, lane + 1);
     const h = field.length;
     const at = lane * 6;
     const own = lane * LANE;
+    for (let k = 0; k < 6; k++) startAt[k] = start[at + k];
     for (let stage = 0; stage < ALL_STAGES; stage++) {
       for (let k = 0; k < 3; k++) {
         let sum = 0;

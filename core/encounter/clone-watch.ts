@@ -46,6 +46,7 @@ export class ApproachWatch {
   private readonly start = new Float64Array(6);
   private readonly state = new Float64Array(6);
   private readonly body = new Float64Array(6);
+  private readonly origin = new Float64Array(6);
   private readonly relative = new Float64Array(6);
   private readonly entries = new Map<number, Moment>();
   private readonly watched: WatchedBody[];
@@ -77,14 +78,13 @@ export class ApproachWatch {
     const { bodiesAtStart, bodiesAtEnd } = this.field;
     for (const target of this.nearby) {
       const at = target.index * 6;
-      const before = towards(step.start, lane * 6, bodiesAtStart, at);
-      const after = towards(step.end, lane * 6, bodiesAtEnd, at);
-      const end2 = distance2(step.end, lane * 6, bodiesAtEnd, at);
+      const before = towards(step.from, lane * 6, bodiesAtStart, at);
+      const after = towards(step.to, lane * 6, bodiesAtEnd, at);
+      const end2 = distance2(step.to, lane * 6, bodiesAtEnd, at);
       const low = target.index === EARTH ? AIR_KM : target.radiusKm;
       const turned = before < 0 && after >= 0;
       if (!turned && end2 > low * low) continue;
-      step.dense(lane, this.dense);
-      for (let k = 0; k < 6; k++) this.start[k] = step.start[lane * 6 + k];
+      step.dense(lane, this.dense, this.start);
       if (this.look(clone, target, turned)) return true;
     }
     return false;
@@ -138,10 +138,11 @@ export class ApproachWatch {
 
   /** State relative to the body at a place in the step, in `relative`. */
   private at({ index }: WatchedBody, u: number): void {
-    const { state, body, relative } = this;
+    const { state, body, origin, relative } = this;
     evaluateDense(this.dense, this.start, u, state);
     this.field.bodyState(index, u, body);
-    for (let k = 0; k < 6; k++) relative[k] = state[k] - body[k];
+    this.field.origin(u, origin);
+    for (let k = 0; k < 6; k++) relative[k] = origin[k] - body[k] + state[k];
   }
 
   /** Geodetic altitude over an ellipsoid about the pole of date, km. */

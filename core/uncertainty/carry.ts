@@ -29,7 +29,11 @@ export function createCarrier(plan: ClonePlan, ephemeris: Ephemeris): Carrier {
     ephemeris,
     plan.gm,
     forces === null ? null : { a1: forces[0], a2: forces[1], a3: forces[2] },
-    plan.toTdbSeconds - plan.epochTdbSeconds,
+    {
+      fromTdbSeconds: plan.epochTdbSeconds,
+      toTdbSeconds: plan.toTdbSeconds,
+      state: plan.state,
+    },
   );
   const forcesUncertain = plan.factor.subarray(6 * dimension).some((value) => value !== 0);
   return {
