@@ -5,7 +5,7 @@ import type { Approach, Finding, Report } from './report';
 
 export type FindingsDraft = Pick<
   Report,
-  'case' | 'model' | 'classical' | 'approaches' | 'principal' | 'comparison'
+  'case' | 'model' | 'classical' | 'approaches' | 'principal' | 'comparison' | 'impactProbability'
 >;
 
 export const N_BODY: Finding['basis'] = {

@@ -12,6 +12,7 @@ import {
   speedFinding,
   targetPlaneFinding,
 } from './pass-findings';
+import { probabilityFindings } from './probability-findings';
 import type { Finding } from './report';
 
 const CIVIL_PROTECTION_CAUTION =
@@ -31,7 +32,8 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
   const reachesAir = draft.approaches.some(
     (item) => item.body === 'Earth' && item.outcome !== 'pass',
   );
-  const caution = reachesAir ? CIVIL_PROTECTION_CAUTION : null;
+  const mayHit = (draft.impactProbability?.adopted?.value ?? 0) > 0;
+  const caution = reachesAir || mayHit ? CIVIL_PROTECTION_CAUTION : null;
   const mainCaution = main?.body === 'Earth' ? caution : null;
   const moon = main === null ? null : nearMoon(draft, main);
   const answer = main === null ? nothingFound(draft) : answerOf(main, moon);
@@ -53,6 +55,7 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
     moidFinding(draft),
     othersFinding(draft, main),
     certaintyFinding(main),
+    ...probabilityFindings(draft, caution),
     assumptionsFinding(draft),
   ].filter((item) => item !== null);
   return {

@@ -1,0 +1,173 @@
+import type { EstimateBasis } from './assess';
+import { BODY_INDEX, SECONDS_PER_DAY } from './constants';
+import type { EstimateHost } from './events';
+import { clopperPearson } from './math/beta';
+import { normalsOf } from './math/random';
+import { sealReport } from './report/canonical';
+import { writeFindings } from './report/findings';
+import { probabilitySection } from './report/probability-section';
+import type { Report } from './report/report';
+import { CLONE_POINT, CLONE_ROW, type CloneOutcomes } from './uncertainty/clones';
+import { groupImpacts, hitsEarth, impactsOf } from './uncertainty/tally';
+
+/** Clones in a batch: part of what the result depends on, so it never changes with the machine. */
+const BATCH = 512;
+/** A clone's approach this far from the nominal one is another approach, s. */
+const SAME_APPROACH_S = 30 * SECONDS_PER_DAY;
+/** Stream of the random numbers of the plain clones. */
+const PLAIN_STREAM = 0;
+
+interface PlainSample {
+  count: number;
+  /** Of the Earth. */
+  impacts: number;
+  /** Impacts of any body, CLONE_ROW.size numbers each. */
+  rows: Float64Array;
+}
+
+/**
+ * The estimate of the impact probability of one case: clones carried by the n-body model.
+ *
+ * The same seed and number of clones give the same result, whatever carries them and in however many
+ * runs.
+ */
+export class Estimate {
+  private batches = 0;
+  private plain: PlainSample = { count: 0, impacts: 0, rows: new Float64Array(0) };
+
+  constructor(
+    private readonly basis: EstimateBasis,
+    private readonly seed: number,
+  ) {}
+
+  /** Clones carried so far. */
+  get count(): number {
+    return this.plain.count;
+  }
+
+  /**
+   * Carries clones until there are as many as wanted.
+   *
+   * @param wanted number of clones in all, rounded up to whole batches
+   * @param host   carries batches, takes events, says when to stop
+   * @returns      the report with the estimate in it; with what is known so far when it was stopped
+   */
+  async run(wanted: number, host: EstimateHost): Promise<Report> {
+    await this.carryPlain(wanted, host);
+    const report = this.report();
+    host.emit({ type: 'report', report });
+    return report;
+  }
+
+  private async carryPlain(wanted: number, host: EstimateHost): Promise<void> {
+    const goal = Math.ceil(wanted / BATCH);
+    const { dimension } = this.basis.plan;
+    const found: Float64Array[] = [this.plain.rows];
+    const fly = async (batch: number): Promise<{ batch: number; outcomes: CloneOutcomes }> => {
+      const z = new Float64Array(BATCH * dimension);
+      normalsOf(this.seed, PLAIN_STREAM, batch * BATCH, BATCH, dimension, z);
+      return { batch, outcomes: await host.carry(z) };
+    };
+    // Batches are taken in their order, so that a stop leaves a whole number of them.
+    const flying: Promise<{ batch: number; outcomes: CloneOutcomes }>[] = [];
+    let next = this.batches;
+    while (this.batches < goal) {
+      while (next < goal && flying.length < host.parallel && !host.stopped()) {
+        flying.push(fly(next));
+        next += 1;
+      }
+      const first = flying.shift();
+      if (first === undefined) break;
+      const { batch, outcomes } = await first;
+      this.batches += 1;
+      const impacts = impactsOf(outcomes.rows);
+      found.push(impacts);
+      let earth = 0;
+      for (let at = 0; at < impacts.length; at += CLONE_ROW.size) {
+        if (hitsEarth(impacts, at)) earth += 1;
+      }
+      this.plain = {
+        count: this.plain.count + outcomes.count,
+        impacts: this.plain.impacts + earth,
+        rows: this.plain.rows,
+      };
+      host.emit({
+        type: 'progress',
+        fraction: this.batches / goal,
+        note: 'carrying clones',
+      });
+      this.emitPoints(outcomes.rows, batch * BATCH, goal * BATCH, 'plain', host);
+    }
+    this.plain = { ...this.plain, rows: joined(found) };
+  }
+
+  /** Sends the points at the principal approach of what was carried. */
+  private emitPoints(
+    rows: Float64Array,
+    firstClone: number,
+    wanted: number,
+    drawn: 'plain' | 'rare',
+    host: EstimateHost,
+  ): void {
+    const { report } = this.basis;
+    const { count, impacts } = this.plain;
+    const principal = report.principal === null ? null : report.approaches[report.principal];
+    if (report.principal === null || principal === null) return;
+    const body = BODY_INDEX[principal.body];
+    const points: number[] = [];
+    for (let at = 0; at < rows.length; at += CLONE_ROW.size) {
+      const laterS = rows[at + CLONE_ROW.tdbSeconds] - principal.tdbSeconds;
+      const bT = rows[at + CLONE_ROW.bDotTKm];
+      if (rows[at + CLONE_ROW.body] !== body || Math.abs(laterS) > SAME_APPROACH_S) continue;
+      if (Number.isNaN(bT)) continue;
+      const point = new Array<number>(CLONE_POINT.size);
+      point[CLONE_POINT.clone] = firstClone + rows[at + CLONE_ROW.clone];
+      point[CLONE_POINT.bDotTKm] = bT;
+      point[CLONE_POINT.bDotRKm] = rows[at + CLONE_ROW.bDotRKm];
+      point[CLONE_POINT.laterS] = laterS;
+      point[CLONE_POINT.distanceKm] = rows[at + CLONE_ROW.distanceKm];
+      point[CLONE_POINT.speedKmS] = rows[at + CLONE_ROW.speedKmS];
+      point[CLONE_POINT.outcome] = rows[at + CLONE_ROW.outcome];
+      points.push(...point);
+    }
+    host.emit({
+      type: 'clones',
+      approach: report.principal,
+      count,
+      wanted,
+      impacts,
+      interval95: clopperPearson(impacts, count, 0.95),
+      points: Float32Array.from(points),
+      drawn,
+    });
+  }
+
+  private report(): Report {
+    const { report: base, plan } = this.basis;
+    const { fingerprint: _, findings: __, cautions: ___, ...sections } = base;
+    const draft = {
+      ...sections,
+      ...probabilitySection({
+        report: base,
+        epochTdbSeconds: plan.epochTdbSeconds,
+        seed: this.seed,
+        plain: this.plain,
+        plainGroups: groupImpacts(this.plain.rows, null),
+        rare: null,
+        rareGroups: [],
+        lines: new Map(),
+      }),
+    };
+    return sealReport({ ...draft, ...writeFindings(draft) });
+  }
+}
+
+function joined(parts: readonly Float64Array[]): Float64Array {
+  const out = new Float64Array(parts.reduce((sum, part) => sum + part.length, 0));
+  let at = 0;
+  for (const part of parts) {
+    out.set(part, at);
+    at += part.length;
+  }
+  return out;
+}
