@@ -1,13 +1,16 @@
 import { readFile, writeFile } from 'node:fs/promises';
 import { parseArgs } from 'node:util';
-import { AssessmentCancelled, runAssessment } from './assess';
+import { type Assessed, AssessmentCancelled, assess } from './assess';
 import { readCase } from './case/read';
 import { type Choices, FIELD_NAMES, type ReadResult } from './case/types';
 import { Trajectory } from './dynamics/trajectory';
-import { createEphemeris } from './ephemeris';
+import { createEphemeris, type Ephemeris, loadEphemeris } from './ephemeris';
+import { Estimate, MOST_CLONES } from './estimate';
 import { reportJsonText } from './report/canonical';
 import { writeEphemerisCsv } from './report/ephemeris-csv';
 import { writeOem } from './report/oem';
+import type { Report } from './report/report';
+import { createCarrier } from './uncertainty/carry';
 
 /** Case on standard input, report on standard output; errors on standard error with exit code 2. */
 
@@ -16,6 +19,8 @@ const USAGE = `Usage: npm run -s assess -- [options] < case.txt > report.json
   --from DATE        start of the search (default: 30 days before the epoch)
   --to DATE          end of the search (default: see model.span.rule in the report)
   --set FIELD=VALUE  sets a field of the case, as an edit on the page does (may be repeated)
+  --clones N         clones of the impact probability estimate (default 10000; 0 for none)
+  --seed S           seed of its random numbers (default 1)
   --oem FILE         also writes the trajectory as a CCSDS OEM
   --csv FILE         also writes the ephemeris as CSV
   --made-at TIME     time of making written in the report (default: now)
@@ -67,6 +72,44 @@ async function readStandardInput(): Promise<string> {
   return Buffer.concat(chunks).toString('utf8');
 }
 
+async function fetchFile(name: string): Promise<ArrayBuffer> {
+  const bytes = await readFile(new URL(`../public/ephemeris/${name}`, import.meta.url));
+  return bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength);
+}
+
+function wholeNumber(
+  option: string,
+  given: string | undefined,
+  otherwise: number,
+  most: number,
+): number {
+  if (given === undefined) return otherwise;
+  const value = Number(given);
+  if (!/^\d+$/.test(given) || value > most) {
+    throw new Refused(`${option} ${given}: expected a whole number from 0 to ${most}`);
+  }
+  return value;
+}
+
+/** The report with the estimate of the impact probability, where there is a covariance for it. */
+async function estimated(
+  { report, estimate: basis }: Assessed,
+  clones: number,
+  seed: number,
+  ephemeris: Ephemeris,
+): Promise<Report> {
+  if (basis === null || clones === 0) return report;
+  const { plan } = basis;
+  await loadEphemeris(ephemeris, plan.epochTdbSeconds, plan.toTdbSeconds, fetchFile);
+  const carrier = createCarrier(plan, ephemeris);
+  return new Estimate(basis, seed).run(clones, {
+    carry: async (z) => carrier.carry(z),
+    parallel: 1,
+    emit: () => {},
+    stopped: () => false,
+  });
+}
+
 async function main(): Promise<void> {
   const { values } = parseArgs({
     options: {
@@ -74,6 +117,8 @@ async function main(): Promise<void> {
       from: { type: 'string' },
       to: { type: 'string' },
       set: { type: 'string', multiple: true },
+      clones: { type: 'string' },
+      seed: { type: 'string' },
       oem: { type: 'string' },
       csv: { type: 'string' },
       'made-at': { type: 'string' },
@@ -93,19 +138,19 @@ async function main(): Promise<void> {
   const reading = readCase(text, choicesOf(values));
   if (reading.case === null) throw new Refused(whyNot(reading));
   const trajectory = new Trajectory();
-  const report = await runAssessment(
+  const clones = wholeNumber('--clones', values.clones, 10_000, MOST_CLONES);
+  const seed = wholeNumber('--seed', values.seed, 1, 2 ** 32 - 1);
+  const ephemeris = createEphemeris();
+  const assessed = await assess(
     {
       text,
       reading,
       case: reading.case,
       madeAt: values['made-at'] ?? new Date().toISOString(),
     },
-    createEphemeris(),
+    ephemeris,
     {
-      fetchFile: async (name) => {
-        const bytes = await readFile(new URL(`../public/ephemeris/${name}`, import.meta.url));
-        return bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength);
-      },
+      fetchFile,
       emit: (event) => {
         if (event.type === 'states') trajectory.append(event.direction, event.samples);
       },
@@ -113,6 +158,7 @@ async function main(): Promise<void> {
       cancelled: () => false,
     },
   );
+  const report = await estimated(assessed, clones, seed, ephemeris);
   const samples = trajectory.samples();
   if (values.oem !== undefined) await writeFile(values.oem, writeOem(report, samples));
   if (values.csv !== undefined) await writeFile(values.csv, writeEphemerisCsv(samples));

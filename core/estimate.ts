@@ -10,8 +10,10 @@ import type { Report } from './report/report';
 import { CLONE_POINT, CLONE_ROW, type CloneOutcomes } from './uncertainty/clones';
 import { groupImpacts, hitsEarth, impactsOf } from './uncertainty/tally';
 
+/** More clones take longer than anyone waits, and sharpen nothing that matters. */
+export const MOST_CLONES = 1_000_000;
 /** Clones in a batch: part of what the result depends on, so it never changes with the machine. */
-const BATCH = 512;
+const BATCH = 500;
 /** A clone's approach this far from the nominal one is another approach, s. */
 const SAME_APPROACH_S = 30 * SECONDS_PER_DAY;
 /** Stream of the random numbers of the plain clones. */
