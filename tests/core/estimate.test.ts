@@ -1,0 +1,77 @@
+import { describe, expect, it } from 'vitest';
+import { DEMOS } from '../../app/desk/demos';
+import { Estimate } from '../../core/estimate';
+import type { EstimateEvent, EstimateHost } from '../../core/events';
+import { assessText, withCovariance } from '../helpers/estimate';
+
+/** An invented pass whose covariance is wide enough that some clones hit. */
+const WIDE = withCovariance(DEMOS[0].text, 60 ** 2);
+const SHORT = { spanTo: '2031-06-10' };
+
+/** Carriers that answer late and out of turn. */
+function outOfTurn(host: EstimateHost, parallel: number): EstimateHost {
+  let asked = 0;
+  return {
+    ...host,
+    parallel,
+    carry: async (z) => {
+      const own = asked++;
+      const outcomes = await host.carry(z);
+      for (let i = 0; i < (own % parallel) * 3; i++) await Promise.resolve();
+      return outcomes;
+    },
+  };
+}
+
+describe('the estimate', () => {
+  it('gives the same report whatever the number of carriers', async () => {
+    const { basis, host } = await assessText(WIDE, SHORT);
+    const one = await new Estimate(basis, 1).run(3000, host);
+    const many = await new Estimate(basis, 1).run(3000, outOfTurn(host, 5));
+    expect(one.impactProbability?.ensemble?.impacts).toBeGreaterThan(30);
+    expect(many).toEqual(one);
+  });
+
+  it('goes on where it was stopped, to the same report as in one run', async () => {
+    const { basis, host } = await assessText(WIDE, SHORT);
+    const whole = await new Estimate(basis, 1).run(3000, host);
+    const estimate = new Estimate(basis, 1);
+    let carried = 0;
+    const stopped = await estimate.run(3000, {
+      ...host,
+      emit: (event) => {
+        if (event.type === 'clones' && event.drawn === 'plain') carried = event.count;
+      },
+      stopped: () => carried >= 1000,
+    });
+    expect(stopped.impactProbability?.ensemble?.count).toBe(1000);
+    expect(estimate.count).toBe(1000);
+    expect(await estimate.run(3000, host)).toEqual(whole);
+  });
+
+  it('draws other clones with another seed', async () => {
+    const { basis, host } = await assessText(WIDE, SHORT);
+    const a = await new Estimate(basis, 1).run(1000, host);
+    const b = await new Estimate(basis, 2).run(1000, host);
+    expect(b.impactProbability?.seed).toBe(2);
+    expect(b.fingerprint).not.toBe(a.fingerprint);
+  });
+
+  it('tells of every batch: counts that grow, impacts, interval and points of the principal pass', async () => {
+    const { basis, host } = await assessText(WIDE, SHORT);
+    const events: EstimateEvent[] = [];
+    const report = await new Estimate(basis, 1).run(1500, {
+      ...host,
+      emit: (event) => events.push(event),
+    });
+    const clones = events.flatMap((event) =>
+      event.type === 'clones' && event.drawn === 'plain' ? [event] : [],
+    );
+    expect(clones.map((event) => event.count)).toEqual([500, 1000, 1500]);
+    expect(clones.map((event) => event.points.length / 7)).toEqual([500, 500, 500]);
+    const last = clones[clones.length - 1];
+    expect(last.impacts).toBe(report.impactProbability?.ensemble?.impacts);
+    expect(last.interval95).toEqual(report.impactProbability?.ensemble?.interval95);
+    expect(events.at(-1)).toEqual({ type: 'report', report });
+  });
+});
