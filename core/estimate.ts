@@ -8,7 +8,7 @@ import { writeFindings } from './report/findings';
 import { probabilitySection } from './report/probability-section';
 import type { Report } from './report/report';
 import { CLONE_POINT, CLONE_ROW, type CloneOutcomes } from './uncertainty/clones';
-import { groupImpacts, hitsEarth, impactsOf } from './uncertainty/tally';
+import { ImpactTally } from './uncertainty/tally';
 
 /** More clones take longer than anyone waits, and sharpen nothing that matters. */
 export const MOST_CLONES = 1_000_000;
@@ -16,16 +16,11 @@ export const MOST_CLONES = 1_000_000;
 const BATCH = 500;
 /** A clone's approach this far from the nominal one is another approach, s. */
 const SAME_APPROACH_S = 30 * SECONDS_PER_DAY;
+/** Clones whose points are sent to be drawn. */
+const DRAWN_CLONES = 20_000;
+const NO_ROWS = new Float64Array(0);
 /** Stream of the random numbers of the plain clones. */
 const PLAIN_STREAM = 0;
-
-interface PlainSample {
-  count: number;
-  /** Of the Earth. */
-  impacts: number;
-  /** Impacts of any body, CLONE_ROW.size numbers each. */
-  rows: Float64Array;
-}
 
 /**
  * The estimate of the impact probability of one case: clones carried by the n-body model.
@@ -35,7 +30,8 @@ interface PlainSample {
  */
 export class Estimate {
   private batches = 0;
-  private plain: PlainSample = { count: 0, impacts: 0, rows: new Float64Array(0) };
+  private readonly tally = new ImpactTally();
+  private carried = 0;
 
   constructor(
     private readonly basis: EstimateBasis,
@@ -44,7 +40,7 @@ export class Estimate {
 
   /** Clones carried so far. */
   get count(): number {
-    return this.plain.count;
+    return this.carried;
   }
 
   /**
@@ -64,7 +60,6 @@ export class Estimate {
   private async carryPlain(wanted: number, host: EstimateHost): Promise<void> {
     const goal = Math.ceil(wanted / BATCH);
     const { dimension } = this.basis.plan;
-    const found: Float64Array[] = [this.plain.rows];
     const fly = async (batch: number): Promise<{ batch: number; outcomes: CloneOutcomes }> => {
       const z = new Float64Array(BATCH * dimension);
       normalsOf(this.seed, PLAIN_STREAM, batch * BATCH, BATCH, dimension, z);
@@ -82,25 +77,16 @@ export class Estimate {
       if (first === undefined) break;
       const { batch, outcomes } = await first;
       this.batches += 1;
-      const impacts = impactsOf(outcomes.rows);
-      found.push(impacts);
-      let earth = 0;
-      for (let at = 0; at < impacts.length; at += CLONE_ROW.size) {
-        if (hitsEarth(impacts, at)) earth += 1;
-      }
-      this.plain = {
-        count: this.plain.count + outcomes.count,
-        impacts: this.plain.impacts + earth,
-        rows: this.plain.rows,
-      };
+      this.carried += outcomes.count;
+      this.tally.add(outcomes.rows);
       host.emit({
         type: 'progress',
         fraction: this.batches / goal,
         note: 'carrying clones',
       });
-      this.emitPoints(outcomes.rows, batch * BATCH, goal * BATCH, 'plain', host);
+      const drawn = batch * BATCH < DRAWN_CLONES ? outcomes.rows : NO_ROWS;
+      this.emitPoints(drawn, batch * BATCH, goal * BATCH, 'plain', host);
     }
-    this.plain = { ...this.plain, rows: joined(found) };
   }
 
   /** Sends the points at the principal approach of what was carried. */
@@ -112,7 +98,8 @@ export class Estimate {
     host: EstimateHost,
   ): void {
     const { report } = this.basis;
-    const { count, impacts } = this.plain;
+    const count = this.carried;
+    const impacts = this.tally.earth;
     const principal = report.principal === null ? null : report.approaches[report.principal];
     if (report.principal === null || principal === null) return;
     const body = BODY_INDEX[principal.body];
@@ -153,8 +140,8 @@ export class Estimate {
         report: base,
         epochTdbSeconds: plan.epochTdbSeconds,
         seed: this.seed,
-        plain: this.plain,
-        plainGroups: groupImpacts(this.plain.rows, null),
+        plain: { count: this.carried, impacts: this.tally.earth },
+        plainGroups: this.tally.groups(),
         rare: null,
         rareGroups: [],
         lines: new Map(),
@@ -162,14 +149,4 @@ export class Estimate {
     };
     return sealReport({ ...draft, ...writeFindings(draft) });
   }
-}
-
-function joined(parts: readonly Float64Array[]): Float64Array {
-  const out = new Float64Array(parts.reduce((sum, part) => sum + part.length, 0));
-  let at = 0;
-  for (const part of parts) {
-    out.set(part, at);
-    at += part.length;
-  }
-  return out;
 }

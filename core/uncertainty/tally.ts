@@ -33,16 +33,6 @@ export const impactTime = (rows: Float64Array, at: number): number => {
   return Number.isNaN(entry) ? rows[at + CLONE_ROW.groundTdbSeconds] : entry;
 };
 
-/** The rows of a batch that are impacts. */
-export function impactsOf(rows: Float64Array): Float64Array {
-  const kept: number[] = [];
-  for (let at = 0; at < rows.length; at += SIZE) {
-    if (rows[at + CLONE_ROW.outcome] !== CLONE_OUTCOME.impact) continue;
-    for (let k = 0; k < SIZE; k++) kept.push(rows[at + k]);
-  }
-  return Float64Array.from(kept);
-}
-
 /**
  * Groups impacts by body and date, in order of time.
  *
@@ -110,7 +100,47 @@ function groupOf(rows: Float64Array, weights: Float64Array | null, members: numb
   };
 }
 
-/** Whether a row is of an impact of the Earth. */
-export const hitsEarth = (rows: Float64Array, at: number): boolean =>
-  rows[at + CLONE_ROW.body] === BODY_INDEX.Earth &&
-  rows[at + CLONE_ROW.outcome] === CLONE_OUTCOME.impact;
+/** Impacts whose rows are kept: enough for any map of them, and little memory. */
+const MOST_ROWS = 50_000;
+
+/** Impacts of plain clones, batch after batch: all are counted, the first are kept. */
+export class ImpactTally {
+  private readonly kept: Float64Array[] = [];
+  private keptRows = 0;
+  /** Impacts by body and whole day since J2000. */
+  private readonly days = new Map<number, number>();
+  /** Of the Earth. */
+  earth = 0;
+
+  /** Takes the rows of a batch that are impacts. */
+  add(rows: Float64Array): void {
+    for (let at = 0; at < rows.length; at += SIZE) {
+      if (rows[at + CLONE_ROW.outcome] !== CLONE_OUTCOME.impact) continue;
+      const body = rows[at + CLONE_ROW.body];
+      if (body === BODY_INDEX.Earth) this.earth += 1;
+      const day = dayKey(body, impactTime(rows, at));
+      this.days.set(day, (this.days.get(day) ?? 0) + 1);
+      if (this.keptRows < MOST_ROWS) {
+        this.kept.push(rows.slice(at, at + SIZE));
+        this.keptRows += 1;
+      }
+    }
+  }
+
+  /** Groups of the kept rows, each with the number of all impacts on its days. */
+  groups(): ImpactGroup[] {
+    const rows = new Float64Array(this.keptRows * SIZE);
+    for (const [i, row] of this.kept.entries()) rows.set(row, i * SIZE);
+    return groupImpacts(rows, null).map((group) => {
+      let count = 0;
+      const from = dayKey(group.body, group.firstTdbSeconds - GAP_S);
+      const to = dayKey(group.body, group.lastTdbSeconds + GAP_S);
+      for (const [day, impacts] of this.days) if (day >= from && day <= to) count += impacts;
+      return { ...group, count };
+    });
+  }
+}
+
+const DAYS = 1e6;
+const dayKey = (body: number, tdbSeconds: number): number =>
+  body * DAYS + DAYS / 2 + Math.floor(tdbSeconds / SECONDS_PER_DAY);
