@@ -122,4 +122,50 @@ VX: 28.1880960708 VY: -9.6407204978 VZ: -4.1360048751
 H = 29.0
 `,
   },
+  {
+    id: 'may-hit',
+    title: 'A possible impact',
+    note: 'Invented. A first solution with a wide covariance: some of what it allows hits.',
+    text: `CCSDS_OPM_VERS = 3.0
+COMMENT An invented object on an invented approach: nothing in the sky follows this orbit.
+CREATION_DATE = 2031-03-01T09:00:00
+ORIGINATOR = SKIMLINE DEMO
+OBJECT_NAME = Invented G, may hit
+OBJECT_ID = INVENTED-G
+CENTER_NAME = SUN
+REF_FRAME = ICRF
+TIME_SYSTEM = TDB
+EPOCH = 2031-03-01T00:00:00.000
+X = -116968342.9423 [km]
+Y = 10740112.8277 [km]
+Z = 19883009.1765 [km]
+X_DOT = -17.3091705923 [km/s]
+Y_DOT = -23.9733256970 [km/s]
+Z_DOT = -10.7018195987 [km/s]
+COV_REF_FRAME = RTN
+CX_X = 1.44e6
+CY_X = 0.0
+CY_Y = 2.304e7
+CZ_X = 0.0
+CZ_Y = 0.0
+CZ_Z = 1.0e6
+CX_DOT_X = 0.0
+CX_DOT_Y = 0.0
+CX_DOT_Z = 0.0
+CX_DOT_X_DOT = 2.56e-7
+CY_DOT_X = 0.0
+CY_DOT_Y = 0.0
+CY_DOT_Z = 0.0
+CY_DOT_X_DOT = 0.0
+CY_DOT_Y_DOT = 4.0e-8
+CZ_DOT_X = 0.0
+CZ_DOT_Y = 0.0
+CZ_DOT_Z = 0.0
+CZ_DOT_X_DOT = 0.0
+CZ_DOT_Y_DOT = 0.0
+CZ_DOT_Z_DOT = 6.4e-8
+USER_DEFINED_H = 22.6
+USER_DEFINED_G = 0.15
+`,
+  },
 ];
