@@ -69,8 +69,8 @@ export function carryBatch(
     let to = until;
     while (members > 0 && offset < to) {
       const left = to - offset;
-      field.survey(states, group, members, base, offset, toTdbSeconds - base - offset);
-      field.nearSteps(states, group, members, Math.min(left, field.farStep()), wishes);
+      field.group.survey(states, group, members, base, offset, toTdbSeconds - base - offset);
+      field.group.nearSteps(states, group, members, Math.min(left, field.group.farStep()), wishes);
       const deepest = depth === MOST_DEPTH;
       let length = Math.max(
         SHORTEST_STEP_S,

@@ -94,7 +94,8 @@ export class CloneStep {
    */
   private evaluate(from: number, to: number, firstLane: number, lanes: number): void {
     const { field, start, f, placeWeights, nodes, hasDeviations } = this;
-    const { place, pull, gradient, nearPlaces, nearGm, nearCount, oblate } = field;
+    const { place, pull, gradient, nearPlaces } = field;
+    const { nearGm, nearCount, oblate } = field.group;
     for (let stage = from; stage < to; stage++) {
       const s3 = stage * 3;
       const s9 = stage * 9;
@@ -157,8 +158,8 @@ export class CloneStep {
   }
 
   private addOblateness(stage: number, out: number, x: number, y: number, z: number): void {
-    const { pole, nearPlaces, earthAt, oblateness } = this.field;
-    const at = (earthAt * ALL_STAGES + stage) * 3;
+    const { pole, nearPlaces, oblateness, group } = this.field;
+    const at = (group.earthAt * ALL_STAGES + stage) * 3;
     oblateAcceleration(
       oblateness,
       pole,

@@ -69,13 +69,14 @@ export class ApproachWatch {
     this.base = base;
     this.offset = offset;
     this.nearby = this.watched.filter(({ index, limitKm }) =>
-      this.field.mayComeWithin(index, limitKm),
+      this.field.group.mayComeWithin(index, limitKm, this.field.length),
     );
   }
 
   /** @returns true when the clone ends on a surface in this step */
   see(clone: number, step: CloneStep, lane: number): boolean {
-    const { bodiesAtStart, bodiesAtEnd } = this.field;
+    const { bodiesAtEnd } = this.field;
+    const bodiesAtStart = this.field.group.bodies;
     for (const target of this.nearby) {
       const at = target.index * 6;
       const before = towards(step.from, lane * 6, bodiesAtStart, at);
