@@ -34,8 +34,8 @@ const PATH_NODES = Float64Array.from(PATH_STAGES, (stage) => NODES[stage]);
  *
  * At each stage of the step the bodies' places are evaluated once. The group's near bodies are left to
  * each clone; the pull of all others, relativity, the Sun's oblateness and the non-gravitational terms
- * are linearised about the group's middle, which is carried along: what that leaves out stays below a
- * metre in the time that is left (a year at most).
+ * are linearised about the group's middle, which is carried along: what that leaves out stays below
+ * 20 m in the time that is left (a year at most).
  */
 export class CloneField {
   private readonly model: ForceModel;

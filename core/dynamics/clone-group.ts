@@ -5,7 +5,7 @@ import type { ReferencePath } from './reference-path';
 
 /**
  * Steps are this much of d/√(v² + GM/d) for a body whose GM/v² is one kilometre; see `reach`. Measured:
- * 0.01 km at an encounter 75 days ahead. Longer spans let errors grow and get shorter steps.
+ * 0.003 km at an encounter 75 days ahead. Longer spans let errors grow and get shorter steps.
  */
 const STEP_SCALE = 1.0;
 const STEP_SPAN_S = 75 * 86400;
@@ -16,7 +16,7 @@ const NEAR_REFERENCE = 0.2;
 /** Local error that sets the steps grows as their ninth power. */
 const STEP_POWER = 1 / 9;
 /** What leaving out the second order of a distant body's pull may move a clone by, km. */
-const LINEAR_ERROR_KM = 1e-3;
+const LINEAR_ERROR_KM = 0.02;
 const LEAST_LINEAR_SPAN_S = 30 * 86400;
 const MOST_LINEAR_SPAN_S = 365.25 * 86400;
 const SHORTEST_REFERENCE_S = 1;
