@@ -8,7 +8,8 @@ import { writeFindings } from './report/findings';
 import { probabilitySection } from './report/probability-section';
 import type { Report } from './report/report';
 import { CLONE_POINT, CLONE_ROW, type CloneOutcomes } from './uncertainty/clones';
-import { ImpactTally } from './uncertainty/tally';
+import { estimateRareEvent, linesOfVariations, type RareEvent } from './uncertainty/rare-event';
+import { groupImpacts, ImpactTally } from './uncertainty/tally';
 
 /** More clones take longer than anyone waits, and sharpen nothing that matters. */
 export const MOST_CLONES = 1_000_000;
@@ -19,6 +20,10 @@ const SAME_APPROACH_S = 30 * SECONDS_PER_DAY;
 /** Clones whose points are sent to be drawn. */
 const DRAWN_CLONES = 20_000;
 const NO_ROWS = new Float64Array(0);
+/** Fewer impacts than these leave too wide an interval: the rare-event estimate follows. */
+const ENOUGH_IMPACTS = 30;
+/** Aim of the rare-event estimate, 1 σ relative. */
+const RARE_RELATIVE_ERROR = 0.08;
 /** Stream of the random numbers of the plain clones. */
 const PLAIN_STREAM = 0;
 
@@ -32,11 +37,21 @@ export class Estimate {
   private batches = 0;
   private readonly tally = new ImpactTally();
   private carried = 0;
+  private rare: RareEvent | null = null;
+  private lines: RareEvent['lines'] | null = null;
 
   constructor(
     private readonly basis: EstimateBasis,
     private readonly seed: number,
   ) {}
+
+  /** The nominal orbit's passes of the Earth that lie ahead. */
+  private get passes(): Report['approaches'] {
+    const { report, plan } = this.basis;
+    return report.approaches.filter(
+      (item) => item.body === 'Earth' && item.tdbSeconds > plan.epochTdbSeconds,
+    );
+  }
 
   /** Clones carried so far. */
   get count(): number {
@@ -52,9 +67,42 @@ export class Estimate {
    */
   async run(wanted: number, host: EstimateHost): Promise<Report> {
     await this.carryPlain(wanted, host);
+    if (!host.stopped()) await this.estimateRest(host);
     const report = this.report();
     host.emit({ type: 'report', report });
     return report;
+  }
+
+  /** Lines of variations; and where plain clones hit too seldom, the rare-event estimate. */
+  private async estimateRest(host: EstimateHost): Promise<void> {
+    const { carry, parallel, stopped } = host;
+    const nominal = this.passes.map(({ tdbSeconds }) => ({ tdbSeconds, direction: null }));
+    if (this.tally.earth >= ENOUGH_IMPACTS) {
+      this.rare = null;
+      this.lines ??= await linesOfVariations({
+        carry,
+        parallel,
+        dimension: this.basis.plan.dimension,
+        nominal,
+        stopped,
+      });
+      return;
+    }
+    if (this.rare !== null) return;
+    const rare = await estimateRareEvent({
+      dimension: this.basis.plan.dimension,
+      seed: this.seed,
+      parallel,
+      carry,
+      nominal,
+      relativeError: RARE_RELATIVE_ERROR,
+      progress: (note, fraction) => host.emit({ type: 'progress', fraction, note }),
+      stopped,
+    });
+    if (stopped()) return;
+    this.rare = rare;
+    this.lines = rare.lines;
+    this.emitPoints(rare.impacts.rows, 0, this.carried, 'rare', host);
   }
 
   private async carryPlain(wanted: number, host: EstimateHost): Promise<void> {
@@ -132,19 +180,25 @@ export class Estimate {
   }
 
   private report(): Report {
-    const { report: base, plan } = this.basis;
-    const { fingerprint: _, findings: __, cautions: ___, ...sections } = base;
+    const { report, plan } = this.basis;
+    const { rare } = this;
+    const { fingerprint: _, findings: __, cautions: ___, ...sections } = report;
     const draft = {
       ...sections,
       ...probabilitySection({
-        report: base,
+        report,
         epochTdbSeconds: plan.epochTdbSeconds,
         seed: this.seed,
         plain: { count: this.carried, impacts: this.tally.earth },
         plainGroups: this.tally.groups(),
-        rare: null,
-        rareGroups: [],
-        lines: new Map(),
+        rare,
+        rareGroups: rare === null ? [] : groupImpacts(rare.impacts.rows, rare.impacts.weights),
+        lines: new Map(
+          (this.lines ?? []).map(({ nominal, points }) => [
+            report.approaches.indexOf(this.passes[nominal]),
+            points.filter((point) => !Number.isNaN(point.bDotTKm)),
+          ]),
+        ),
       }),
     };
     return sealReport({ ...draft, ...writeFindings(draft) });

@@ -103,11 +103,10 @@ export async function estimateRareEvent(options: RareEventOptions): Promise<Rare
   const pilot = new MixtureSampling(carrier, [origin], [1], options.seed, PILOT_STREAM);
   await pilot.draw(1);
   const scans = await scanLines(carrier, options);
-  const lines = options.nominal.map(({ tdbSeconds }, nominal) => ({
-    nominal,
-    points: lineThrough(scans.of[nominal] ?? NO_SCAN, tdbSeconds),
-  }));
-  const common = { lines, reliability: reliabilityOf(scans.all) };
+  const common = {
+    lines: linesThrough(scans.of, options.nominal),
+    reliability: reliabilityOf(scans.all),
+  };
   if (pilot.hits.length > OFTEN * pilot.samples) {
     while (
       plainRelativeError(pilot.hits.length, pilot.samples) > options.relativeError &&
@@ -137,12 +136,30 @@ export async function estimateRareEvent(options: RareEventOptions): Promise<Rare
   };
 }
 
+/** The lines of variations of the nominal approaches alone. */
+export async function linesOfVariations(
+  options: Pick<RareEventOptions, 'dimension' | 'parallel' | 'carry' | 'nominal' | 'stopped'>,
+): Promise<RareEvent['lines']> {
+  const carrier = new Carrier(options.carry, options.parallel);
+  return linesThrough((await scanLines(carrier, options)).of, options.nominal);
+}
+
+function linesThrough(
+  scans: readonly (LineScan | null)[],
+  nominal: RareEventOptions['nominal'],
+): RareEvent['lines'] {
+  return nominal.map(({ tdbSeconds }, i) => ({
+    nominal: i,
+    points: lineThrough(scans[i] ?? NO_SCAN, tdbSeconds),
+  }));
+}
+
 const NO_SCAN: LineScan = { direction: new Float64Array(0), clones: [] };
 
 /** Scans the lines of the nominal approaches, those of one direction once. */
 async function scanLines(
   carrier: Carrier,
-  { nominal, dimension, stopped }: RareEventOptions,
+  { nominal, dimension, stopped }: Pick<RareEventOptions, 'nominal' | 'dimension' | 'stopped'>,
 ): Promise<{ all: LineScan[]; of: (LineScan | null)[] }> {
   const all: LineScan[] = [];
   const of: (LineScan | null)[] = [];
