@@ -1,6 +1,7 @@
 import type { Choices, OrbitCase, ReadResult } from '../../core/case/types';
-import type { AssessEvent } from '../../core/events';
-import type { DeskState, ExportKind, Request, Response, WireError } from './messages';
+import type { AssessEvent, EstimateEvent } from '../../core/events';
+import type { DeskState, ExportKind, Request, Response } from './messages';
+import { WorkerError } from './wire-error';
 
 /** One end of the line to a worker; a test hands in its own. */
 export interface Port {
@@ -13,18 +14,6 @@ export interface Port {
 export class WorkerDied extends Error {
   readonly code = 'worker-died';
   override name = 'WorkerDied';
-}
-
-/** An error thrown in the worker, with the name, code and stack it had there. */
-export class WorkerError extends Error {
-  readonly code: string | null;
-
-  constructor(error: WireError) {
-    super(error.message);
-    this.name = error.name;
-    this.code = error.code;
-    if (error.stack !== null) this.stack = error.stack;
-  }
 }
 
 export interface ReadAnswer {
@@ -52,10 +41,27 @@ export interface Assessment {
   cancel(): void;
 }
 
+export interface EstimateRequest {
+  /** Clones wanted in all. */
+  clones: number;
+  seed: number;
+}
+
+export interface EstimateRun {
+  /** Done also after a stop. Rejects with WorkerError or WorkerDied. */
+  outcome: Promise<'done' | 'cancelled'>;
+  /** Ends with what is known so far, which is still told. */
+  stop(): void;
+  /** Nothing more of it is told. */
+  cancel(): void;
+}
+
 export interface WorkerClient {
   read(text: string, choices: Choices): Promise<ReadAnswer>;
   /** Starts an assessment; one that still runs is cancelled, and says so, at once. */
   assess(request: AssessRequest, onEvent: (event: AssessEvent) => void): Assessment;
+  /** Estimates the impact probability of the last finished assessment, or carries that on. */
+  estimate(request: EstimateRequest, onEvent: (event: EstimateEvent) => void): EstimateRun;
   exportFile(kind: ExportKind, madeAt: string, desk: DeskState | null): Promise<ExportedFile>;
   /** Ends the worker; what is pending is rejected. The next request starts a new one. */
   close(): void;
@@ -72,6 +78,7 @@ export function createWorkerClient(openPort: () => Port): WorkerClient {
   let nextId = 1;
   let port: Port | null = null;
   let running: Assessment | null = null;
+  let estimating: Assessment | null = null;
 
   function open(): Port {
     const opened = openPort();
@@ -80,7 +87,7 @@ export function createWorkerClient(openPort: () => Port): WorkerClient {
         if (port !== opened) return;
         const request = pending.get(message.id);
         if (request === undefined) return;
-        if (message.type !== 'event') pending.delete(message.id);
+        if (!isEvent(message)) pending.delete(message.id);
         if (message.type === 'error') request.fail(new WorkerError(message.error));
         else request.answer(message);
       },
@@ -96,6 +103,7 @@ export function createWorkerClient(openPort: () => Port): WorkerClient {
     port?.close();
     port = null;
     running = null;
+    estimating = null;
     const lost = [...pending.values()];
     pending.clear();
     for (const request of lost) request.fail(new WorkerDied(reason));
@@ -119,6 +127,31 @@ export function createWorkerClient(openPort: () => Port): WorkerClient {
     });
   }
 
+  /** Sends a request that is answered by a stream of events and its end. */
+  function start(request: Request, onEvent: (message: Response) => void): Assessment {
+    const { id } = request;
+    let settle: (outcome: 'done' | 'cancelled') => void = () => {};
+    const outcome = new Promise<'done' | 'cancelled'>((resolve, reject) => {
+      settle = resolve;
+      pending.set(id, {
+        answer(message) {
+          if (isEvent(message)) onEvent(message);
+          else resolve(message.type === 'done' ? 'done' : 'cancelled');
+        },
+        fail: reject,
+      });
+    });
+    send(request);
+    return {
+      outcome,
+      cancel() {
+        if (!pending.delete(id)) return;
+        send({ type: 'cancel', id });
+        settle('cancelled');
+      },
+    };
+  }
+
   open();
   return {
     read(text, choices) {
@@ -128,29 +161,25 @@ export function createWorkerClient(openPort: () => Port): WorkerClient {
     },
     assess(request, onEvent) {
       running?.cancel();
-      const id = nextId++;
-      let settle: (outcome: 'done' | 'cancelled') => void = () => {};
-      const outcome = new Promise<'done' | 'cancelled'>((resolve, reject) => {
-        settle = resolve;
-        pending.set(id, {
-          answer(message) {
-            if (message.type === 'event') onEvent(message.event);
-            else resolve(message.type === 'done' ? 'done' : 'cancelled');
-          },
-          fail: reject,
-        });
+      estimating?.cancel();
+      running = start({ type: 'assess', id: nextId++, ...request }, (message) => {
+        if (message.type === 'event') onEvent(message.event);
       });
-      const own: Assessment = {
-        outcome,
-        cancel() {
-          if (!pending.delete(id)) return;
-          send({ type: 'cancel', id });
-          settle('cancelled');
+      return running;
+    },
+    estimate(request, onEvent) {
+      estimating?.cancel();
+      const id = nextId++;
+      const own = start({ type: 'estimate', id, ...request }, (message) => {
+        if (message.type === 'estimate-event') onEvent(message.event);
+      });
+      estimating = own;
+      return {
+        ...own,
+        stop() {
+          if (pending.has(id)) send({ type: 'stop-estimate', id });
         },
       };
-      running = own;
-      send({ type: 'assess', id, ...request });
-      return own;
     },
     exportFile(kind, madeAt, desk) {
       return ask({ type: 'export', id: nextId++, kind, madeAt, desk }, (message) =>
@@ -163,6 +192,10 @@ export function createWorkerClient(openPort: () => Port): WorkerClient {
       end('The worker was closed.');
     },
   };
+}
+
+function isEvent(message: Response): boolean {
+  return message.type === 'event' || message.type === 'estimate-event';
 }
 
 /** The line to the real worker. The page's base travels in the worker's name. */

@@ -1,9 +1,19 @@
 import type { Choices, OrbitCase, ReadResult } from '../../core/case/types';
-import type { AssessEvent, AssessHost, AssessInput } from '../../core/events';
+import type {
+  AssessEvent,
+  AssessHost,
+  AssessInput,
+  EstimateEvent,
+  EstimateHost,
+} from '../../core/events';
 import type { Report } from '../../core/report/report';
+import type { ClonePlan } from '../../core/uncertainty/clones';
+import { createEstimateStream } from './estimate-stream';
 import { fileStem, slug } from './file-name';
-import type { DeskState, ExportKind, Request, Response, WireError } from './messages';
+import type { DeskState, ExportKind, Request, Response } from './messages';
+import type { CarrierPool } from './pool';
 import { Trajectory } from './trajectory';
+import { toWireError } from './wire-error';
 
 /** Writers of the files that are handed over. */
 export interface Writers {
@@ -13,16 +23,29 @@ export interface Writers {
   writeCaseFile(orbit: OrbitCase, desk: DeskState): string;
 }
 
-export interface DispatcherDeps<Ephemeris> {
+/** Clones of one case, carried in as many runs as are asked for. */
+export interface RunningEstimate {
+  run(wanted: number, host: EstimateHost): Promise<Report>;
+}
+
+export interface DispatcherDeps<Ephemeris, Basis extends { plan: ClonePlan }> {
   readCase(text: string, choices: Choices): ReadResult;
   /** What a case file says of the desk; null for any other text. */
   readDesk(text: string): DeskState | null;
-  runAssessment(input: AssessInput, ephemeris: Ephemeris, host: AssessHost): Promise<Report>;
+  assess(
+    input: AssessInput,
+    ephemeris: Ephemeris,
+    host: AssessHost,
+  ): Promise<{ report: Report; estimate: Basis | null }>;
+  createEstimate(basis: Basis, seed: number): RunningEstimate;
+  pool: CarrierPool;
   writers: Writers;
   ephemeris: Ephemeris;
   fetchFile(name: string): Promise<ArrayBuffer>;
   post(message: Response, transfer: Transferable[]): void;
   pause(): Promise<void>;
+  /** A steady clock, ms. */
+  now(): number;
 }
 
 /** An export was asked for before there was anything to write. */
@@ -31,13 +54,10 @@ class NothingToExport extends Error {
   override name = 'NothingToExport';
 }
 
-/** An error in the form that crosses between threads. */
-function toWireError(error: unknown): WireError {
-  if (!(error instanceof Error)) {
-    return { name: 'Error', message: String(error), code: null, stack: null };
-  }
-  const code = 'code' in error && typeof error.code === 'string' ? error.code : null;
-  return { name: error.name, message: error.message, code, stack: error.stack ?? null };
+/** There is no finished assessment with a covariance. */
+class NothingToEstimate extends Error {
+  readonly code = 'nothing-to-estimate';
+  override name = 'NothingToEstimate';
 }
 
 interface Run {
@@ -45,25 +65,36 @@ interface Run {
   live: boolean;
 }
 
-interface Finished {
+interface EstimateRun extends Run {
+  stopped: boolean;
+}
+
+interface Finished<Basis> {
   report: Report;
   trajectory: Trajectory;
+  basis: Basis | null;
+  estimate: { seed: number; clones: RunningEstimate } | null;
 }
 
 /**
- * Answers the page's requests: reads cases, runs one assessment at a time, writes files.
+ * Answers the page's requests: reads cases, runs one assessment at a time and one estimate of the
+ * last one, writes files.
  *
- * A new assessment, or a cancel with the id of the running one, silences the old one at once: it is
- * answered `cancelled`, and nothing of it is posted after that even while it still winds down.
+ * A new assessment, or a cancel with the id of what runs, silences the old one and its estimate at
+ * once: it is answered `cancelled`, and nothing of it is posted after that even while it still winds
+ * down. A stopped estimate tells its report, and the next request carries it on.
  * Pure but for what is handed in, so the same tests run it straight and behind a port.
  *
  * @returns the handler of requests; its promise settles when the request has been answered
  */
-export function createDispatcher<Ephemeris>(
-  deps: DispatcherDeps<Ephemeris>,
+export function createDispatcher<Ephemeris, Basis extends { plan: ClonePlan }>(
+  deps: DispatcherDeps<Ephemeris, Basis>,
 ): (request: Request) => Promise<void> {
   let run: Run | null = null;
-  let finished: Finished | null = null;
+  let finished: Finished<Basis> | null = null;
+  let estimating: EstimateRun | null = null;
+  /** Settles when no estimate is winding down any more. */
+  let estimated: Promise<void> = Promise.resolve();
   let lastCase: OrbitCase | null = null;
 
   function silence(): void {
@@ -73,8 +104,16 @@ export function createDispatcher<Ephemeris>(
     run = null;
   }
 
+  function silenceEstimate(): void {
+    if (estimating === null) return;
+    estimating.live = false;
+    deps.post({ type: 'cancelled', id: estimating.id }, []);
+    estimating = null;
+  }
+
   async function assess(request: Extract<Request, { type: 'assess' }>): Promise<void> {
     silence();
+    silenceEstimate();
     const own: Run = { id: request.id, live: true };
     run = own;
     const trajectory = new Trajectory();
@@ -91,9 +130,9 @@ export function createDispatcher<Ephemeris>(
     const { text, reading, madeAt } = request;
     try {
       const input = { text, reading, case: request.case, madeAt };
-      const report = await deps.runAssessment(input, deps.ephemeris, host);
+      const { report, estimate } = await deps.assess(input, deps.ephemeris, host);
       if (!own.live) return;
-      finished = { report, trajectory };
+      finished = { report, trajectory, basis: estimate, estimate: null };
       deps.post({ type: 'done', id: own.id }, []);
     } catch (error) {
       if (!own.live) return;
@@ -101,6 +140,58 @@ export function createDispatcher<Ephemeris>(
     } finally {
       if (run === own) run = null;
     }
+  }
+
+  async function estimate(request: Extract<Request, { type: 'estimate' }>): Promise<void> {
+    silenceEstimate();
+    const own: EstimateRun = { id: request.id, live: true, stopped: false };
+    estimating = own;
+    // Two runs of the same clones must not mix: the one before finishes its batches first.
+    const before = estimated;
+    let finish: () => void = () => {};
+    estimated = new Promise((resolve) => {
+      finish = resolve;
+    });
+    try {
+      await before;
+      if (own.live) await carry(request, own);
+      if (own.live) deps.post({ type: 'done', id: own.id }, []);
+    } catch (error) {
+      if (own.live) deps.post({ type: 'error', id: own.id, error: toWireError(error) }, []);
+    } finally {
+      if (estimating === own) estimating = null;
+      finish();
+    }
+  }
+
+  async function carry(
+    { clones, seed }: Extract<Request, { type: 'estimate' }>,
+    own: EstimateRun,
+  ): Promise<void> {
+    const of = finished;
+    if (of === null || of.basis === null) {
+      throw new NothingToEstimate(
+        'There are no clones to carry: they are drawn from the covariance of an assessed case.',
+      );
+    }
+    if (of.estimate?.seed !== seed) {
+      of.estimate = { seed, clones: deps.createEstimate(of.basis, seed) };
+    }
+    const stream = createEstimateStream(
+      (event) => deps.post({ type: 'estimate-event', id: own.id, event }, transferOf(event)),
+      deps.now,
+    );
+    const report = await of.estimate.clones.run(clones, {
+      carry: deps.pool.carryFor(of.basis.plan),
+      parallel: deps.pool.parallel,
+      stopped: () => own.stopped || !own.live,
+      emit(event) {
+        if (own.live) stream.take(event);
+      },
+    });
+    if (!own.live) return;
+    stream.flush();
+    of.report = report;
   }
 
   function write(
@@ -146,6 +237,12 @@ export function createDispatcher<Ephemeris>(
     if (request.type === 'assess') return assess(request);
     if (request.type === 'cancel') {
       if (run?.id === request.id) silence();
+      if (estimating?.id === request.id) silenceEstimate();
+      return;
+    }
+    if (request.type === 'estimate') return estimate(request);
+    if (request.type === 'stop-estimate') {
+      if (estimating?.id === request.id) estimating.stopped = true;
       return;
     }
     try {
@@ -164,6 +261,7 @@ export function createDispatcher<Ephemeris>(
   };
 }
 
-function transferOf(event: AssessEvent): Transferable[] {
-  return event.type === 'states' ? [event.samples.buffer] : [];
+function transferOf(event: AssessEvent | EstimateEvent): Transferable[] {
+  if (event.type === 'states') return [event.samples.buffer];
+  return event.type === 'clones' ? [event.points.buffer] : [];
 }

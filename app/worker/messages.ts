@@ -1,5 +1,6 @@
 import type { Choices, OrbitCase, ReadResult } from '../../core/case/types';
-import type { AssessEvent } from '../../core/events';
+import type { AssessEvent, EstimateEvent } from '../../core/events';
+import type { WireError } from './wire-error';
 
 /** Everything that crosses between the page and the worker. Each request carries its id. */
 
@@ -17,7 +18,12 @@ export type Request =
     }
   /** Files written from the last finished assessment (the case file: from the given desk state). */
   | { type: 'export'; id: number; kind: ExportKind; madeAt: string; desk: DeskState | null }
-  | { type: 'cancel'; id: number };
+  /** Drops the running assessment or estimate with this id; nothing more of it is told. */
+  | { type: 'cancel'; id: number }
+  /** Carries clones of the last finished assessment until there are so many. */
+  | { type: 'estimate'; id: number; clones: number; seed: number }
+  /** Ends the estimate with this id where it is; it tells its report and can be continued. */
+  | { type: 'stop-estimate'; id: number };
 
 /** What the desk keeps in a case file beside the case itself. */
 export interface DeskState {
@@ -27,16 +33,10 @@ export interface DeskState {
   plateFindings: string[];
 }
 
-export interface WireError {
-  name: string;
-  message: string;
-  code: string | null;
-  stack: string | null;
-}
-
 export type Response =
   | { type: 'read'; id: number; result: ReadResult; desk: DeskState | null }
   | { type: 'event'; id: number; event: AssessEvent }
+  | { type: 'estimate-event'; id: number; event: EstimateEvent }
   | { type: 'done'; id: number }
   | { type: 'cancelled'; id: number }
   | { type: 'export'; id: number; fileName: string; mediaType: string; text: string }

@@ -1,33 +1,18 @@
-import { runAssessment } from '../../core/assess';
+import { assess } from '../../core/assess';
 import { readDesk, writeCaseFile } from '../../core/case/case-file';
 import { readCase } from '../../core/case/read';
 import { createEphemeris } from '../../core/ephemeris';
+import { Estimate } from '../../core/estimate';
 import { reportJsonText } from '../../core/report/canonical';
 import { writeEphemerisCsv } from '../../core/report/ephemeris-csv';
 import { writeOem } from '../../core/report/oem';
+import { openCarrierPort, openLocalCarrierPort } from './carrier-ports';
 import { createDispatcher } from './dispatcher';
+import { fetchFile } from './fetch-file';
 import type { Request } from './messages';
+import { createCarrierPool } from './pool';
 
 /** The worker's entry: wires the dispatcher to this thread. */
-
-/** A packed ephemeris file could not be had. */
-class EphemerisFileError extends Error {
-  readonly code = 'ephemeris-file';
-  override name = 'EphemerisFileError';
-}
-
-async function fetchFile(name: string): Promise<ArrayBuffer> {
-  // The page names its worker after its own base: the files lie beside the page, not the script.
-  const url = new URL(`ephemeris/${name}`, self.name);
-  const answer = await fetch(url);
-  const isPage = answer.headers.get('content-type')?.startsWith('text/html') ?? false;
-  if (!answer.ok || isPage) {
-    throw new EphemerisFileError(
-      `The ephemeris file ${url.pathname} could not be fetched (${answer.status} ${answer.statusText}). It belongs beside the page, in ephemeris/.`,
-    );
-  }
-  return answer.arrayBuffer();
-}
 
 const pauses: (() => void)[] = [];
 const channel = new MessageChannel();
@@ -41,14 +26,22 @@ function pause(): Promise<void> {
   });
 }
 
+const pool =
+  typeof Worker === 'undefined'
+    ? createCarrierPool(() => openLocalCarrierPort(pause), 1)
+    : createCarrierPool(openCarrierPort, navigator.hardwareConcurrency);
+
 const handle = createDispatcher({
   readCase,
   readDesk,
-  runAssessment,
+  assess,
+  createEstimate: (basis, seed) => new Estimate(basis, seed),
+  pool,
   writers: { reportJsonText, writeOem, writeEphemerisCsv, writeCaseFile },
   ephemeris: createEphemeris(),
   fetchFile,
   pause,
+  now: () => performance.now(),
   post: (message, transfer) => self.postMessage(message, { transfer }),
 });
 
