@@ -1,4 +1,5 @@
 import * as v from 'valibot';
+import { corridorSchema } from './corridor';
 
 /**
  * The report: the one object every figure on the page, the plate and the files comes from.
@@ -381,6 +382,8 @@ export const reportSchema = v.object({
   comparison: v.nullable(comparison),
   /** Absent without a covariance, and until it has been estimated. */
   impactProbability: v.optional(impactProbability),
+  /** Absent where no clone hits the Earth. */
+  corridor: v.optional(corridorSchema),
   findings: v.array(finding),
   cautions: v.array(v.string()),
   fingerprint: text('SHA-256, hex, of the canonical JSON without madeAt and fingerprint.'),
