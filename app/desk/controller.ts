@@ -1,8 +1,9 @@
 import type { Choices, FieldName, OrbitCase, ReadResult } from '../../core/case/types';
 import type { Report } from '../../core/report/report';
 import type { Clock } from '../store/clock';
-import { type DeskStoreApi, IDLE_RUN } from '../store/store';
-import { type Assessment, type WorkerClient, WorkerDied } from '../worker/client';
+import { type DeskStoreApi, type EstimateState, IDLE_ESTIMATE, IDLE_RUN } from '../store/store';
+import { type Assessment, type EstimateRun, type WorkerClient, WorkerDied } from '../worker/client';
+import { CloneCloud } from '../worker/clone-cloud';
 import { fileStem } from '../worker/file-name';
 import type { DeskState, ExportKind } from '../worker/messages';
 import { Trajectory } from '../worker/trajectory';
@@ -11,6 +12,10 @@ import { Trajectory } from '../worker/trajectory';
 const TYPING_REST_MS = 120;
 /** A case is a short text; a larger file was not meant for the sheet. */
 const LARGEST_FILE_BYTES = 1_000_000;
+/** How many clones a new case carries by itself. */
+const CLONES_AT_FIRST = 10_000;
+/** The same case gives the same estimate on every machine; the report names the seed. */
+export const ESTIMATE_SEED = 1;
 /** How many supporting findings a new case puts on the plate by itself. */
 const FINDINGS_ON_PLATE = 5;
 
@@ -56,6 +61,10 @@ export interface Controller {
   openFile(file: Blob): Promise<void>;
   stop(): void;
   runAgain(): void;
+  /** Ends the carrying of clones with what is known so far. */
+  stopEstimate(): void;
+  /** Carries clones until there are so many in all. */
+  continueEstimate(clones: number): void;
   goTo(tdbSeconds: number): void;
   togglePlateFinding(id: string): void;
   /** Writes a file and gives its name; rejects with a sentence when there is nothing to write. */
@@ -70,7 +79,7 @@ interface Shown {
 
 /**
  * Carries the person's text to a report: reads it, runs what is complete, streams the states into
- * the store. The last good report stays, marked stale, until the next one is there; a run that is
+ * the store; where there is a covariance, clones follow, and a report with what they say. The last good report stays, marked stale, until the next one is there; a run that is
  * stopped or fails gives its place back to the trajectory of that report, so that what the page
  * shows always belongs together.
  */
@@ -79,6 +88,7 @@ export function createController(deps: ControllerDeps): Controller {
   /** Counts changes of the case: an answer to an older one is dropped. */
   let turn = 0;
   let run: Assessment | null = null;
+  let estimate: EstimateRun | null = null;
   let typing: ReturnType<typeof setTimeout> | undefined;
   let shown: Shown = { report: null, trajectory: store.getState().trajectory };
   /** The case is a new one, not a change of the one before: the plate's findings start afresh. */
@@ -102,6 +112,7 @@ export function createController(deps: ControllerDeps): Controller {
     clearTimeout(typing);
     run?.cancel();
     run = null;
+    leaveEstimate();
     store.setState({
       run: { ...IDLE_RUN, status: 'reading' },
       trajectory: shown.trajectory,
@@ -109,10 +120,15 @@ export function createController(deps: ControllerDeps): Controller {
     });
   }
 
+  function leaveEstimate(): void {
+    if (estimate === null) return;
+    estimate.cancel();
+    estimate = null;
+    setEstimate({ status: 'stopped', note: '' });
+  }
+
   function fail(error: unknown): void {
-    const message = error instanceof Error ? error.message : String(error);
-    const advice = error instanceof WorkerDied ? ' Run it again to start a new worker.' : '';
-    store.setState({ run: { ...IDLE_RUN, status: 'failed', error: message + advice } });
+    store.setState({ run: { ...IDLE_RUN, status: 'failed', error: inWords(error) } });
   }
 
   /** Takes what a case file says of the desk; a file without a text keeps its own as the text. */
@@ -169,7 +185,56 @@ export function createController(deps: ControllerDeps): Controller {
     const outcome = await own.outcome.finally(() => {
       if (run === own) run = null;
     });
-    if (outcome === 'done') store.setState({ run: { ...IDLE_RUN, status: 'done', fraction: 1 } });
+    if (outcome !== 'done') return;
+    store.setState({ run: { ...IDLE_RUN, status: 'done', fraction: 1 } });
+    const isUncertain = shown.report?.approaches.some((each) => each.uncertainty !== undefined);
+    if (isUncertain === true) void carryClones(CLONES_AT_FIRST);
+  }
+
+  function setEstimate(change: Partial<EstimateState>): void {
+    store.setState({ estimate: { ...store.getState().estimate, ...change } });
+  }
+
+  /** Carries clones of the report shown until there are so many; never rejects. */
+  async function carryClones(wanted: number): Promise<void> {
+    setEstimate({ status: 'running', fraction: 0, note: '', wanted, error: null });
+    const own = client.estimate({ clones: wanted, seed: ESTIMATE_SEED }, (event) => {
+      if (event.type === 'progress') {
+        setEstimate({ fraction: event.fraction, note: event.note });
+      } else if (event.type === 'clones') {
+        const { count, impacts, interval95 } = event;
+        const { clones } = store.getState();
+        clones.append(event.drawn, event.points);
+        // The cloud grows in place; setting it tells those who watch its version.
+        store.setState({ clones });
+        setEstimate({ count, wanted: event.wanted, impacts, interval95 });
+      } else {
+        sharpen(event.report);
+      }
+    });
+    estimate = own;
+    try {
+      const outcome = await own.outcome;
+      if (outcome === 'cancelled') return;
+      const { count } = store.getState().estimate;
+      setEstimate({ status: count < wanted ? 'stopped' : 'done', note: '' });
+    } catch (error) {
+      if (estimate !== own) return;
+      setEstimate({ status: 'failed', note: '', error: inWords(error) });
+      // The assessment is lost with its worker.
+      if (error instanceof WorkerDied) fail(error);
+    } finally {
+      if (estimate === own) estimate = null;
+    }
+  }
+
+  /** Puts the report with the estimate in the place of the one it continues. */
+  function sharpen(report: Report): void {
+    const before = shown.report === null ? [] : firstFindings(shown.report);
+    const { plateFindings } = store.getState();
+    const untouched = before.join() === plateFindings.join();
+    shown = { report, trajectory: shown.trajectory };
+    store.setState({ report, ...(untouched ? { plateFindings: firstFindings(report) } : {}) });
   }
 
   function show(next: Shown & { report: Report }): void {
@@ -179,6 +244,8 @@ export function createController(deps: ControllerDeps): Controller {
       report,
       trajectory,
       reportIsStale: false,
+      clones: new CloneCloud(),
+      estimate: IDLE_ESTIMATE,
       ...(isNewCase ? { plateFindings: firstFindings(report) } : {}),
     });
     isNewCase = false;
@@ -227,6 +294,13 @@ export function createController(deps: ControllerDeps): Controller {
       leaveCase();
       void read();
     },
+    stopEstimate() {
+      estimate?.stop();
+    },
+    continueEstimate(clones) {
+      if (estimate !== null || shown.report === null || store.getState().reportIsStale) return;
+      void carryClones(clones);
+    },
     goTo(tdbSeconds) {
       store.setState({ playing: false });
       clock.set(tdbSeconds);
@@ -257,6 +331,11 @@ export function createController(deps: ControllerDeps): Controller {
     },
   };
   return controller;
+}
+
+function inWords(error: unknown): string {
+  const message = error instanceof Error ? error.message : String(error);
+  return error instanceof WorkerDied ? `${message} Run it again to start a new worker.` : message;
 }
 
 function firstFindings(report: Report): string[] {

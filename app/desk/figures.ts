@@ -22,6 +22,14 @@ export function withUnit(figure: string, unit: string): string {
   return figure + THIN_SPACE + unit;
 }
 
+/** A probability in per cent: two digits of it, or of what is missing to certainty. */
+export function percentage(probability: number): string {
+  const percent = probability * 100;
+  const small = Math.min(percent, 100 - percent);
+  const decimals = small > 0 ? Math.min(20, Math.max(0, 1 - Math.floor(Math.log10(small)))) : 0;
+  return withUnit(grouped(percent, decimals), '%');
+}
+
 /** A constant or a tolerance as it is: no digit is dropped. */
 export function plain(value: number): string {
   return String(value).replaceAll('-', MINUS);

@@ -31,6 +31,7 @@ export interface EstimateState {
   wanted: number;
   impacts: number;
   interval95: [number, number] | null;
+  /** What went wrong, in a sentence; null unless status is 'failed'. */
   error: string | null;
 }
 

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import { createWorkerClient, type Port, WorkerDied, WorkerError } from '../../app/worker/client';
+import { createWorkerClient, type Port, WorkerDied } from '../../app/worker/client';
 import type { Request, Response } from '../../app/worker/messages';
+import { WorkerError } from '../../app/worker/wire-error';
 import { INVENTED_CASE, reading } from './fixtures/report';
 
 interface FakeWorker extends Port {
@@ -140,5 +141,49 @@ describe('the worker client', () => {
     client.close();
     await expect(asked).rejects.toBeInstanceOf(WorkerDied);
     expect(workers[0].closed).toBe(true);
+  });
+
+  it('streams the events of an estimate until done, and hears none of an assessment under its id', async () => {
+    const { client, workers } = setUp();
+    const seen: number[] = [];
+    const run = client.estimate({ clones: 500, seed: 3 }, (event) => {
+      if (event.type === 'progress') seen.push(event.fraction);
+    });
+    const [{ id }] = workers[0].sent;
+    expect(workers[0].sent[0]).toEqual({ type: 'estimate', id, clones: 500, seed: 3 });
+    const event = { type: 'progress' as const, fraction: 0.5, note: '' };
+    workers[0].say({ type: 'estimate-event', id, event });
+    workers[0].say(progress(id, 0.75));
+    workers[0].say({ type: 'done', id });
+    expect(await run.outcome).toBe('done');
+    expect(seen).toEqual([0.5]);
+  });
+
+  it('still hears of an estimate that was asked to stop, and stops it once it is done no more', async () => {
+    const { client, workers } = setUp();
+    const seen: number[] = [];
+    const run = client.estimate({ clones: 500, seed: 1 }, () => seen.push(1));
+    const [{ id }] = workers[0].sent;
+    run.stop();
+    expect(workers[0].sent[1]).toEqual({ type: 'stop-estimate', id });
+    const event = { type: 'progress' as const, fraction: 0.5, note: '' };
+    workers[0].say({ type: 'estimate-event', id, event });
+    workers[0].say({ type: 'done', id });
+    expect(await run.outcome).toBe('done');
+    run.stop();
+    expect(workers[0].sent).toHaveLength(2);
+    expect(seen).toEqual([1]);
+  });
+
+  it('cancels the estimate of the case before when an assessment is started', async () => {
+    const { client, workers } = setUp();
+    const seen: number[] = [];
+    const run = client.estimate({ clones: 500, seed: 1 }, () => seen.push(1));
+    const [{ id }] = workers[0].sent;
+    client.assess(REQUEST, () => {});
+    expect(await run.outcome).toBe('cancelled');
+    const event = { type: 'progress' as const, fraction: 0.5, note: '' };
+    workers[0].say({ type: 'estimate-event', id, event });
+    expect(seen).toEqual([]);
   });
 });

@@ -2,9 +2,14 @@ import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import { createController } from '../../app/desk/controller';
 import { createClock } from '../../app/store/clock';
 import { createDeskStore } from '../../app/store/store';
-import { type AssessRequest, type WorkerClient, WorkerDied } from '../../app/worker/client';
+import {
+  type AssessRequest,
+  type EstimateRequest,
+  type WorkerClient,
+  WorkerDied,
+} from '../../app/worker/client';
 import type { DeskState } from '../../app/worker/messages';
-import type { AssessEvent } from '../../core/events';
+import type { AssessEvent, EstimateEvent } from '../../core/events';
 import type { Finding, Report } from '../../core/report/report';
 import { INVENTED_CASE, inventedReport, reading, samplesAt } from './fixtures/report';
 
@@ -19,6 +24,12 @@ interface Run {
   cancelled: boolean;
 }
 
+interface Carrying extends Omit<Run, 'request' | 'tell'> {
+  request: EstimateRequest;
+  tell(event: EstimateEvent): void;
+  stopped: boolean;
+}
+
 const CASE_FILE: DeskState = {
   text: '1 2 3 4 5 6',
   choices: { centre: 'Sun' },
@@ -31,6 +42,7 @@ function setUp() {
   const clock = createClock();
   const reads: string[] = [];
   const runs: Run[] = [];
+  const estimates: Carrying[] = [];
   const saved: { fileName: string; content: Blob }[] = [];
   const asked: unknown[] = [];
   const client: WorkerClient = {
@@ -40,16 +52,26 @@ function setUp() {
       return { result: reading(text.includes('bad') ? null : INVENTED_CASE), desk };
     },
     assess(request, tell) {
-      let finish: (outcome: 'done' | 'cancelled') => void = () => {};
-      let fail: (error: Error) => void = () => {};
-      const outcome = new Promise<'done' | 'cancelled'>((resolve, reject) => {
-        finish = resolve;
-        fail = reject;
-      });
+      const { outcome, finish, fail } = ending();
       const run: Run = { request, tell, finish, fail, cancelled: false };
       runs.push(run);
       return {
         outcome,
+        cancel() {
+          run.cancelled = true;
+          finish('cancelled');
+        },
+      };
+    },
+    estimate(request, tell) {
+      const { outcome, finish, fail } = ending();
+      const run: Carrying = { request, tell, finish, fail, cancelled: false, stopped: false };
+      estimates.push(run);
+      return {
+        outcome,
+        stop() {
+          run.stopped = true;
+        },
         cancel() {
           run.cancelled = true;
           finish('cancelled');
@@ -71,7 +93,17 @@ function setUp() {
       new Blob([`${report.fingerprint} ${trajectory.count}`]),
     save: (fileName, content) => saved.push({ fileName, content }),
   });
-  return { store, clock, controller, reads, runs, saved, asked, state: store.getState };
+  return { store, clock, controller, reads, runs, estimates, saved, asked, state: store.getState };
+}
+
+function ending() {
+  let finish: (outcome: 'done' | 'cancelled') => void = () => {};
+  let fail: (error: Error) => void = () => {};
+  const outcome = new Promise<'done' | 'cancelled'>((resolve, reject) => {
+    finish = resolve;
+    fail = reject;
+  });
+  return { outcome, finish, fail };
 }
 
 const settle = () => vi.advanceTimersByTimeAsync(0);
@@ -404,5 +436,169 @@ describe('what is handed over', () => {
     await settle();
     await expect(controller.savePlate()).rejects.toMatchObject({ code: 'no-report' });
     expect(saved).toEqual([]);
+  });
+});
+
+describe('the estimate', () => {
+  const uncertain = (changes: Partial<Report> = {}): Report => {
+    const report = inventedReport(changes);
+    const uncertainty = {
+      sigmaDistanceKm: 1,
+      sigmaTimeS: 1,
+      sigmaSpeedKmS: 1,
+      distance3SigmaKm: [1, 2] as [number, number],
+      ellipse: null,
+      stretchingEarthRadiiPerSigma: null,
+    };
+    return { ...report, approaches: report.approaches.map((each) => ({ ...each, uncertainty })) };
+  };
+  const carried = (count: number, wanted: number, impacts = 0): EstimateEvent => ({
+    type: 'clones',
+    approach: 0,
+    count,
+    wanted,
+    impacts,
+    interval95: [0, 0.5],
+    points: new Float32Array(7),
+    drawn: 'plain',
+  });
+
+  it('follows a finished assessment with uncertainties, and not before it is done', async () => {
+    const { controller, runs, estimates, state } = setUp();
+    controller.setText('one', 'replaced');
+    await settle();
+    runs[0].tell(states(0, 86400));
+    runs[0].tell(reported(uncertain()));
+    await settle();
+    expect(estimates).toHaveLength(0);
+    runs[0].finish('done');
+    await settle();
+    expect(estimates.map(({ request }) => request)).toEqual([{ clones: 10_000, seed: 1 }]);
+    expect(state().run.status).toBe('done');
+    expect(state().estimate).toMatchObject({ status: 'running', count: 0, wanted: 10_000 });
+  });
+
+  it('does not follow an assessment without uncertainties', async () => {
+    const { estimates, state } = await finished();
+    expect(estimates).toHaveLength(0);
+    expect(state().estimate.status).toBe('idle');
+  });
+
+  it('counts the clones and gathers their points', async () => {
+    const { estimates, state } = await finished(uncertain());
+    estimates[0].tell({ type: 'progress', fraction: 0.4, note: 'carrying clones' });
+    estimates[0].tell(carried(4000, 10_000, 12));
+    estimates[0].tell(carried(5000, 10_000, 13));
+    expect(state().estimate).toEqual({
+      status: 'running',
+      fraction: 0.4,
+      note: 'carrying clones',
+      count: 5000,
+      wanted: 10_000,
+      impacts: 13,
+      interval95: [0, 0.5],
+      error: null,
+    });
+    expect(state().clones.points('plain')).toHaveLength(14);
+  });
+
+  it('puts its report in the place of the one it sharpens, and leaves clock and trajectory', async () => {
+    const { clock, estimates, state, controller, saved } = await finished(uncertain());
+    const before = state().trajectory;
+    clock.set(70000);
+    const sharper = uncertain({ fingerprint: 'ffffffffff' });
+    estimates[0].tell(carried(10_000, 10_000));
+    estimates[0].tell({ type: 'report', report: sharper });
+    estimates[0].finish('done');
+    await settle();
+    expect(state()).toMatchObject({ report: sharper, reportIsStale: false });
+    expect(state().trajectory).toBe(before);
+    expect(clock.tdbSeconds).toBe(70000);
+    expect(state().estimate.status).toBe('done');
+    expect(await controller.savePlate()).toContain('ffffffff');
+    expect(await saved[0].content.text()).toBe('ffffffffff 2');
+  });
+
+  it('puts new first findings on the plate unless the person has chosen', async () => {
+    const first = ['a', 'b', 'c', 'd', 'e', 'f'].map(support);
+    const sharper = uncertain({ findings: [support('p'), ...first] });
+    const untouched = await finished(uncertain({ findings: first }));
+    untouched.estimates[0].tell({ type: 'report', report: sharper });
+    expect(untouched.state().plateFindings).toEqual(['p', 'a', 'b', 'c', 'd']);
+    const chosen = await finished(uncertain({ findings: first }));
+    chosen.controller.togglePlateFinding('b');
+    chosen.estimates[0].tell({ type: 'report', report: sharper });
+    expect(chosen.state().plateFindings).toEqual(['a', 'c', 'd', 'e']);
+  });
+
+  it('can be stopped where it is, and carried on with the same seed', async () => {
+    const { controller, estimates, state } = await finished(uncertain());
+    estimates[0].tell(carried(4000, 10_000, 12));
+    controller.stopEstimate();
+    expect(estimates[0].stopped).toBe(true);
+    estimates[0].tell(carried(4500, 10_000, 12));
+    estimates[0].finish('done');
+    await settle();
+    expect(state().estimate).toMatchObject({ status: 'stopped', count: 4500, impacts: 12 });
+    controller.continueEstimate(100_000);
+    expect(estimates[1].request).toEqual({ clones: 100_000, seed: 1 });
+    expect(state().estimate).toMatchObject({ status: 'running', count: 4500, wanted: 100_000 });
+  });
+
+  it('is not started twice', async () => {
+    const { controller, estimates } = await finished(uncertain());
+    controller.continueEstimate(100_000);
+    expect(estimates).toHaveLength(1);
+  });
+
+  it.each(['typed', 'replaced'] as const)(
+    'is cancelled at once when the text is %s',
+    async (how) => {
+      const { controller, estimates, state } = await finished(uncertain());
+      estimates[0].tell(carried(4000, 10_000));
+      const cloud = state().clones;
+      controller.setText('first, changed', how);
+      expect(estimates[0].cancelled).toBe(true);
+      await settle();
+      expect(state().estimate).toMatchObject({ status: 'stopped', count: 4000 });
+      // What is shown belongs together: the clones stay with the old report.
+      expect(state().clones).toBe(cloud);
+      controller.continueEstimate(100_000);
+      expect(estimates).toHaveLength(1);
+    },
+  );
+
+  it('gives a new case a cloud and counts of its own', async () => {
+    const { controller, runs, estimates, state } = await finished(uncertain());
+    estimates[0].tell(carried(4000, 10_000, 3));
+    controller.setText('second', 'replaced');
+    await settle();
+    runs[1].tell(states(0, 86400));
+    runs[1].tell(reported(uncertain()));
+    expect(state().estimate).toMatchObject({ status: 'idle', count: 0, impacts: 0 });
+    expect(state().clones.points('plain')).toHaveLength(0);
+  });
+
+  it('says what went wrong and keeps what is known', async () => {
+    const { controller, estimates, state } = await finished(uncertain());
+    estimates[0].tell(carried(4000, 10_000));
+    estimates[0].fail(new Error('A batch of clones was lost twice.'));
+    await settle();
+    expect(state().estimate).toMatchObject({
+      status: 'failed',
+      count: 4000,
+      error: 'A batch of clones was lost twice.',
+    });
+    expect(state().run.status).toBe('done');
+    controller.continueEstimate(10_000);
+    expect(estimates).toHaveLength(2);
+  });
+
+  it('offers a new run when the worker died with it', async () => {
+    const { estimates, state } = await finished(uncertain());
+    estimates[0].fail(new WorkerDied('The worker stopped.'));
+    await settle();
+    expect(state().run.status).toBe('failed');
+    expect(state().report).not.toBeNull();
   });
 });

@@ -1,29 +1,96 @@
 import * as v from 'valibot';
 import { afterEach, describe, expect, it } from 'vitest';
 import { createDispatcher, type DispatcherDeps } from '../../app/worker/dispatcher';
+import { createEstimateStream } from '../../app/worker/estimate-stream';
 import type { DeskState, Request, Response } from '../../app/worker/messages';
-import { SAMPLE } from '../../core/events';
-import { reportSchema } from '../../core/report/report';
+import { type EstimateEvent, SAMPLE } from '../../core/events';
+import { type Report, reportSchema } from '../../core/report/report';
+import type { ClonePlan } from '../../core/uncertainty/clones';
 import { INVENTED_CASE, inventedReport, reading, samplesAt } from './fixtures/report';
 
 // Expected answers follow from the contract of app/worker/messages.ts, not from the dispatcher.
 
-type Deps = DispatcherDeps<string>;
+type Deps = DispatcherDeps<string, { plan: ClonePlan }>;
 
 const DESK: DeskState = { text: 'x', choices: {}, clockTdbSeconds: 5, plateFindings: ['answer'] };
+
+const PLAN: ClonePlan = {
+  gm: 'DE405',
+  epochTdbSeconds: 0,
+  toTdbSeconds: 1,
+  state: new Float64Array(6),
+  forces: null,
+  factor: new Float64Array(9),
+  dimension: 1,
+};
+
+/** A pool whose every batch is one clone. */
+function fakePool(): Deps['pool'] {
+  const outcomes = { count: 1, rows: new Float64Array(0) };
+  return {
+    parallel: 2,
+    carryFor: (plan) => async () => {
+      if (plan !== PLAN) throw new Error('another plan');
+      await new Promise((resolve) => setImmediate(resolve));
+      return outcomes;
+    },
+    close() {},
+  };
+}
+
+const clonesEvent = (
+  count: number,
+  wanted: number,
+  drawn: 'plain' | 'rare' = 'plain',
+): EstimateEvent => ({
+  type: 'clones',
+  approach: 0,
+  count,
+  wanted,
+  impacts: 0,
+  interval95: [0, 1],
+  points: Float32Array.of(count),
+  drawn,
+});
+
+/** Carries one clone after another and says how many in the fingerprint of its report. */
+function fakeEstimate(seed: number): ReturnType<Deps['createEstimate']> {
+  let count = 0;
+  let runs = 0;
+  return {
+    async run(wanted, host) {
+      runs += 1;
+      if (runs > 1) throw new Error('two runs at once');
+      while (count < wanted && !host.stopped()) {
+        count += (await host.carry(Float64Array.of(0))).count;
+        host.emit(clonesEvent(count, wanted));
+      }
+      runs -= 1;
+      const report = estimated(seed, count);
+      host.emit({ type: 'report', report });
+      return report;
+    },
+  };
+}
+
+const estimated = (seed: number, count: number): Report =>
+  inventedReport({ fingerprint: `seed ${seed}, ${count} clones` });
 
 function fakeDeps(changes: Partial<Deps> = {}): Omit<Deps, 'post'> {
   return {
     readCase: (text) => reading(text === 'bad' ? null : INVENTED_CASE),
     readDesk: (text) => (text.startsWith('{') ? DESK : null),
-    async runAssessment(_input, _ephemeris, host) {
+    async assess(_input, _ephemeris, host) {
       host.emit({ type: 'states', direction: 1, samples: samplesAt(0, 10) });
       await host.pause();
       host.emit({ type: 'states', direction: -1, samples: samplesAt(-10, -20) });
       const report = inventedReport();
       host.emit({ type: 'report', report });
-      return report;
+      return { report, estimate: { plan: PLAN } };
     },
+    createEstimate: (_basis, seed) => fakeEstimate(seed),
+    pool: fakePool(),
+    now: () => 0,
     writers: {
       reportJsonText: (report) => `json ${report.fingerprint} ${report.madeAt}`,
       writeOem: (_report, samples) =>
@@ -107,12 +174,12 @@ const of = (id: number, type: Response['type']) => (response: Response) =>
 function gated() {
   const gates: (() => void)[] = [];
   const deps = fakeDeps({
-    async runAssessment(_input, _ephemeris, host) {
+    async assess(_input, _ephemeris, host) {
       host.emit({ type: 'progress', fraction: 0.1, note: 'before' });
       await new Promise<void>((resolve) => gates.push(resolve));
       host.emit({ type: 'progress', fraction: 0.9, note: host.cancelled() ? 'silenced' : 'live' });
       if (host.cancelled()) throw new Error('stopped');
-      return inventedReport();
+      return { report: inventedReport(), estimate: null };
     },
   });
   return { deps, gates };
@@ -201,7 +268,7 @@ describe.each([
       override name = 'Odd';
     }
     const { send, until } = line(
-      fakeDeps({ runAssessment: () => Promise.reject(new Odd('1066 is not covered')) }),
+      fakeDeps({ assess: () => Promise.reject(new Odd('1066 is not covered')) }),
     );
     send(assess(4));
     const answer = await until(of(4, 'error'));
@@ -256,9 +323,9 @@ describe.each([
     let runs = 0;
     const { send, until } = line(
       fakeDeps({
-        async runAssessment(_input, _ephemeris, host) {
+        async assess(_input, _ephemeris, host) {
           runs += 1;
-          if (runs === 1) return inventedReport();
+          if (runs === 1) return { report: inventedReport(), estimate: null };
           host.emit({ type: 'progress', fraction: 0, note: '' });
           return new Promise(() => {});
         },
@@ -297,15 +364,164 @@ describe.each([
     const { send, until } = line(
       fakeDeps({
         fetchFile: async (name) => new TextEncoder().encode(name).buffer,
-        async runAssessment(input, ephemeris, host) {
+        async assess(input, ephemeris, host) {
           seen.push(input.madeAt, ephemeris, (await host.fetchFile('a.bin')).byteLength);
-          return inventedReport();
+          return { report: inventedReport(), estimate: null };
         },
       }),
     );
     send(assess(1));
     await until(of(1, 'done'));
     expect(seen).toEqual(['2026-03-01T00:00:00Z', 'the ephemeris', 5]);
+  });
+
+  it('estimates on what was assessed, and writes the report of the estimate from then on', async () => {
+    const { send, until, received } = line(fakeDeps());
+    send(assess(1));
+    await until(of(1, 'done'));
+    send({ type: 'estimate', id: 2, clones: 3, seed: 5 });
+    await until(of(2, 'done'));
+    expect(counts(received, 2).at(-1)).toBe(3);
+    expect(reports(received, 2)).toEqual([estimated(5, 3)]);
+    send({ type: 'export', id: 3, kind: 'report-json', madeAt: '', desk: null });
+    expect(await until(of(3, 'export'))).toMatchObject({
+      text: expect.stringContaining('seed 5, 3 clones'),
+    });
+  });
+
+  it('carries on where a stopped estimate is, and starts afresh with another seed', async () => {
+    const { send, until, received } = line(fakeDeps({ now: rising() }));
+    send(assess(1));
+    await until(of(1, 'done'));
+    send({ type: 'estimate', id: 2, clones: 1e9, seed: 5 });
+    await until(of(2, 'estimate-event'));
+    send({ type: 'stop-estimate', id: 2 });
+    await until(of(2, 'done'));
+    const stoppedAt = counts(received, 2).at(-1) ?? 0;
+    expect(reports(received, 2)).toEqual([estimated(5, stoppedAt)]);
+    send({ type: 'estimate', id: 3, clones: stoppedAt + 2, seed: 5 });
+    await until(of(3, 'done'));
+    expect(counts(received, 3)).toEqual([stoppedAt + 1, stoppedAt + 2]);
+    send({ type: 'estimate', id: 4, clones: 2, seed: 6 });
+    await until(of(4, 'done'));
+    expect(counts(received, 4)).toEqual([1, 2]);
+  });
+
+  it.each(['a new assessment', 'a cancel'])('silences a running estimate at %s', async (how) => {
+    const { send, until, received } = line(fakeDeps({ now: rising() }));
+    send(assess(1));
+    await until(of(1, 'done'));
+    send({ type: 'estimate', id: 2, clones: 1e9, seed: 5 });
+    await until(of(2, 'estimate-event'));
+    send(how === 'a cancel' ? { type: 'cancel', id: 2 } : assess(3));
+    await until(of(2, 'cancelled'));
+    const heard = received.filter((r) => r.id === 2).length;
+    // Another run of the same clones waits for the silenced one: the fake throws otherwise.
+    if (how === 'a new assessment') await until(of(3, 'done'));
+    send({ type: 'estimate', id: 4, clones: 1, seed: 5 });
+    await until(of(4, 'done'));
+    expect(received.filter((r) => r.id === 2)).toHaveLength(heard);
+    expect(received.filter(of(2, 'cancelled'))).toHaveLength(1);
+  });
+
+  it('says that there is nothing to estimate without a covariance', async () => {
+    const { send, until } = line(
+      fakeDeps({ assess: async () => ({ report: inventedReport(), estimate: null }) }),
+    );
+    send({ type: 'estimate', id: 1, clones: 1, seed: 1 });
+    expect(await until(of(1, 'error'))).toMatchObject({ error: { code: 'nothing-to-estimate' } });
+    send(assess(2));
+    await until(of(2, 'done'));
+    send({ type: 'estimate', id: 3, clones: 1, seed: 1 });
+    expect(await until(of(3, 'error'))).toMatchObject({ error: { code: 'nothing-to-estimate' } });
+  });
+
+  it('carries the error of a carrier across', async () => {
+    const pool: Deps['pool'] = {
+      parallel: 1,
+      carryFor: () => () => Promise.reject(new RangeError('the carrier is gone')),
+      close() {},
+    };
+    const { send, until } = line(fakeDeps({ pool }));
+    send(assess(1));
+    await until(of(1, 'done'));
+    send({ type: 'estimate', id: 2, clones: 1, seed: 1 });
+    expect(await until(of(2, 'error'))).toMatchObject({
+      error: { name: 'RangeError', message: 'the carrier is gone' },
+    });
+  });
+});
+
+/** A clock on which every look is a second later: nothing is held back. */
+function rising(): () => number {
+  let ms = 0;
+  return () => {
+    ms += 1000;
+    return ms;
+  };
+}
+
+function events(received: Response[], id: number): EstimateEvent[] {
+  return received.flatMap((r) => (r.type === 'estimate-event' && r.id === id ? [r.event] : []));
+}
+const counts = (received: Response[], id: number): number[] =>
+  events(received, id).flatMap((event) => (event.type === 'clones' ? [event.count] : []));
+const reports = (received: Response[], id: number): Report[] =>
+  events(received, id).flatMap((event) => (event.type === 'report' ? [event.report] : []));
+
+describe('the stream of an estimate', () => {
+  function heardAt(...takes: [ms: number, event: EstimateEvent][]) {
+    let ms = 0;
+    const heard: EstimateEvent[] = [];
+    const stream = createEstimateStream(
+      (event) => heard.push(event),
+      () => ms,
+    );
+    for (const [at, event] of takes) {
+      ms = at;
+      stream.take(event);
+    }
+    return { heard, stream };
+  }
+
+  it('tells of the first clones at once and then ten times a second, losing no point', () => {
+    const takes = Array.from({ length: 100 }, (_, i): [number, EstimateEvent] => [
+      i * 10,
+      clonesEvent(i, 100),
+    ]);
+    const { heard, stream } = heardAt(...takes);
+    expect(heard).toHaveLength(10);
+    stream.flush();
+    const points = heard.flatMap((event) => (event.type === 'clones' ? [...event.points] : []));
+    expect(points).toEqual(Array.from({ length: 100 }, (_, i) => i));
+  });
+
+  it('tells the last clones before the report', () => {
+    const { heard } = heardAt(
+      [0, clonesEvent(1, 3)],
+      [1, clonesEvent(2, 3)],
+      [2, clonesEvent(3, 3)],
+      [3, { type: 'report', report: inventedReport() }],
+    );
+    expect(heard.map((event) => (event.type === 'clones' ? event.count : event.type))).toEqual([
+      1,
+      3,
+      'report',
+    ]);
+  });
+
+  it('keeps plain and rare clones apart', () => {
+    const { heard, stream } = heardAt(
+      [0, clonesEvent(1, 3)],
+      [1, clonesEvent(2, 3)],
+      [2, clonesEvent(3, 3, 'rare')],
+    );
+    stream.flush();
+    expect(heard.map((event) => (event.type === 'clones' ? event.drawn : event.type))).toEqual([
+      'plain',
+      'plain',
+      'rare',
+    ]);
   });
 });
 
@@ -314,9 +530,9 @@ it('transfers the samples: the assessment is left with an empty buffer', async (
   const channel = new MessageChannel();
   const handle = createDispatcher({
     ...fakeDeps({
-      async runAssessment(_input, _ephemeris, host) {
+      async assess(_input, _ephemeris, host) {
         host.emit({ type: 'states', direction: 1, samples });
-        return inventedReport();
+        return { report: inventedReport(), estimate: null };
       },
     }),
     post: (message, transfer) => channel.port1.postMessage(message, transfer),

@@ -1,11 +1,22 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import { grouped, plain, utcWords, withUnit } from '../../app/desk/figures';
+import { grouped, percentage, plain, utcWords, withUnit } from '../../app/desk/figures';
 import { NIGHT, PAPER } from '../../app/theme/tokens';
 
 // Expected texts follow the ISO 80000-1 rule (groups of three, thin space) and the calendar.
 
 describe('figures', () => {
+  it.each([
+    [0, '0\u2009%'],
+    [1, '100\u2009%'],
+    [0.0019, '0.19\u2009%'],
+    [0.372, '37\u2009%'],
+    [0.99963, '99.963\u2009%'],
+    [3.689e-6, '0.00037\u2009%'],
+  ])('the probability %d reads %s: two digits, and never certain when it is not', (value, text) => {
+    expect(percentage(value)).toBe(text);
+  });
+
   it.each([
     [0, 0, '0'],
     [999, 0, '999'],

@@ -1,5 +1,6 @@
 import type { Finding, Report } from '../../../core/report/report';
 import { useDeskStore } from '../../store/context';
+import { EstimateLine } from '../EstimateLine';
 import { ApproachesTable } from './ApproachesTable';
 import { Caution } from './Caution';
 import { CrossingsTable } from './CrossingsTable';
@@ -19,6 +20,7 @@ export function Findings() {
           Findings
         </h2>
       </header>
+      <EstimateLine />
       <div className="findings-body">
         <Failure />
         {report === null ? <Nothing /> : <Found report={report} />}

@@ -1,0 +1,98 @@
+import { useState } from 'react';
+import { useDeskStore } from '../store/context';
+import type { EstimateState } from '../store/store';
+import { ESTIMATE_SEED } from './controller';
+import { useController } from './controller-context';
+import { grouped, percentage } from './figures';
+import './estimate-line.css';
+
+/** Numbers of clones that can be asked for. */
+const CHOICES = [1_000, 10_000, 100_000, 1_000_000];
+
+/** How many clones of the uncertain orbit have been carried, how many of them hit, and how to go on. */
+export function EstimateLine() {
+  const controller = useController();
+  const estimate = useDeskStore((state) => state.estimate);
+  const isUncertain = useDeskStore(
+    ({ report }) => report?.approaches.some((each) => each.uncertainty !== undefined) ?? false,
+  );
+  const isStale = useDeskStore((state) => state.reportIsStale);
+  const [chosen, setChosen] = useState(0);
+  if (!isUncertain) return null;
+
+  const { count, status } = estimate;
+  const isRunning = status === 'running';
+  const larger = CHOICES.filter((choice) => choice > count);
+  const goal = larger.includes(chosen) ? chosen : larger[0];
+  const canContinue = !isRunning && !isStale && status !== 'idle' && goal !== undefined;
+  return (
+    <section className="estimate" aria-label="Clones of the uncertain orbit">
+      <p className="estimate-words">{inWords(estimate)}</p>
+      <p className="only-spoken" role="status">
+        {spoken(estimate)}
+      </p>
+      <progress
+        className="estimate-rule"
+        max={1}
+        value={estimate.fraction}
+        aria-label="Share of the clones carried"
+      />
+      <div className="estimate-tools">
+        <span className="estimate-note">
+          {isRunning && estimate.note !== '' ? estimate.note : `seed ${ESTIMATE_SEED}`}
+        </span>
+        <button
+          type="button"
+          className="button"
+          aria-disabled={!isRunning}
+          onClick={() => isRunning && controller.stopEstimate()}
+        >
+          Stop
+        </button>
+        <button
+          type="button"
+          className="button"
+          aria-disabled={!canContinue}
+          onClick={() => canContinue && controller.continueEstimate(goal)}
+        >
+          Carry on
+        </button>
+        <label>
+          to{' '}
+          <select
+            className="estimate-goal figures"
+            aria-label="Number of clones to carry on to"
+            disabled={!canContinue}
+            value={goal ?? ''}
+            onChange={(event) => setChosen(Number(event.target.value))}
+          >
+            {larger.map((choice) => (
+              <option key={choice} value={choice}>
+                {grouped(choice)}
+              </option>
+            ))}
+          </select>
+        </label>
+      </div>
+    </section>
+  );
+}
+
+function inWords({ status, count, wanted, impacts, interval95, error }: EstimateState): string {
+  if (status === 'failed') return `The clones could not be carried: ${error}`;
+  if (status === 'idle') return 'Clones of the orbit, drawn from its covariance, are carried next.';
+  if (interval95 === null || count === 0) return `0 of ${grouped(wanted)} clones carried`;
+  const [low, high] = interval95;
+  const carried =
+    count < wanted ? `${grouped(count)} of ${grouped(wanted)}` : `All ${grouped(count)}`;
+  const reach = `${grouped(impacts)} ${impacts === 1 ? 'reaches' : 'reach'} the ground`;
+  return `${carried} clones carried; ${reach}: ${percentage(impacts / count)} (${percentage(low)} to ${percentage(high)})`;
+}
+
+/** Quarter by quarter, and the outcome. */
+function spoken(estimate: EstimateState): string {
+  if (estimate.status === 'idle') return '';
+  if (estimate.status !== 'running') return inWords(estimate);
+  const quarter = Math.floor(estimate.fraction * 4) * 25;
+  return quarter === 0 ? 'Carrying clones' : `${quarter}\u2009% of the clones carried`;
+}
