@@ -24,6 +24,8 @@ export interface RegionStart {
 
 /** A region this far out holds less than about 1e-11, σ. */
 const FAR_SIGMAS = 6.8;
+/** A search that sees its goal farther out than this after two steps is given up, σ. */
+const GIVE_UP_SIGMAS = 12;
 const MOST_STEPS = 12;
 /** A difference moves the pass by this share of the disc's radius. */
 const PROBE = 0.25;
@@ -61,7 +63,7 @@ export async function findRegion(
     if (map === null) return null;
     tdbSeconds = map.pass.tdbSeconds;
     const next = conditioned(map, d);
-    if (step >= 4 && next.sigmas > FAR_SIGMAS + 3) return null;
+    if (step >= 2 && next.sigmas > GIVE_UP_SIGMAS) return null;
     const chosen = await damped(carrier, map, next.region.mean);
     const isSettled = chosen.damping === 1 && distance2(next.region, z) < 0.1;
     if (step >= 2 && isSettled) {

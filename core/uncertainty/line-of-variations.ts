@@ -1,6 +1,5 @@
 import { BODY_RADIUS_KM } from '../constants';
-import { type CarriedClone, Carrier, type ClonePass, passAt } from './clone-passes';
-import type { CarryClones } from './clones';
+import { type CarriedClone, type Carrier, type ClonePass, passAt } from './clone-passes';
 import type { RegionStart } from './impact-region';
 
 /** Clones along a line through the nominal orbit, and the passes that they string together. */
@@ -27,8 +26,15 @@ const DRAWN_SIGMAS = 5;
 const FIRST_POINTS = 201;
 /** Intervals halved at a time. */
 const ROUND = 96;
-/** An interval whose ends differ by more than this share of their distance (and 3 radii) is halved. */
-const COARSE = 0.5;
+/**
+ * Where the ends of an interval differ by more than this share of their distance (and 3 radii) it is
+ * halved: fine enough that between two clones that pass near, few returns to later passes are missed.
+ */
+const COARSE = 0.015;
+/** A pass that only one end has counts when it is nearer than about half the farthest that are told of. */
+const LONE = 1;
+/** The same, for clones of which it is said that they part: a quarter. */
+const PARTED = 3;
 /** Nearer than this two clones are not told apart, σ. */
 const FINEST_SIGMA = 1e-8;
 const RADIUS_KM = BODY_RADIUS_KM.Earth;
@@ -54,7 +60,7 @@ export async function scanLine(
   let clones = await at(Array.from({ length: FIRST_POINTS }, (_, i) => i * step - REACH_SIGMAS));
   while (clones.length < most && !stopped()) {
     const scored = intervalsOf(clones)
-      .filter((one) => one.score > COARSE && one.to - one.from > FINEST_SIGMA)
+      .filter((one) => one.score > 1 && one.to - one.from > FINEST_SIGMA)
       .sort((a, b) => b.score - a.score)
       .slice(0, Math.min(ROUND, most - clones.length));
     if (scored.length === 0) break;
@@ -67,7 +73,7 @@ export async function scanLine(
 interface Interval {
   from: number;
   to: number;
-  /** How much the passes at its ends differ, in units of their distance and 3 radii. */
+  /** How much the passes at its ends differ, in units of what is tolerated. */
   score: number;
   /** Earliest pass that one end has and the other has not, where that is not for want of distance; else null. */
   partsAtTdbSeconds: number | null;
@@ -94,14 +100,14 @@ function compare(one: CarriedClone, other: CarriedClone, limitKm: number, to: In
     if (match !== null) {
       const apart = Math.hypot(match.aim[0] - pass.aim[0], match.aim[1] - pass.aim[1]);
       const nearest = segmentMinimum(pass.aim, match.aim).distanceKm;
-      to.score = Math.max(to.score, apart / (nearest + 3 * RADIUS_KM));
+      to.score = Math.max(to.score, apart / (nearest + 3 * RADIUS_KM) / COARSE);
       continue;
     }
     // A clone that hit has no later passes.
     if (other.passes.some((its) => its.isImpact && its.tdbSeconds < pass.tdbSeconds)) continue;
     const score = (limitKm - pass.distanceKm) / (pass.distanceKm + 3 * RADIUS_KM);
-    to.score = Math.max(to.score, score);
-    if (score > COARSE) {
+    to.score = Math.max(to.score, score / LONE);
+    if (score > PARTED) {
       to.partsAtTdbSeconds = Math.min(
         to.partsAtTdbSeconds ?? Number.POSITIVE_INFINITY,
         pass.tdbSeconds,
@@ -148,12 +154,21 @@ function strandsOf({ clones }: LineScan): Strung[][] {
   return strands;
 }
 
-/** Where the passes along the line come nearest, every strand's every minimum, nearest first. */
-export function nearestOnLine(scan: LineScan): (RegionStart & { distanceKm: number })[] {
-  const found: (RegionStart & { distanceKm: number })[] = [];
+/** A place on the line where a pass comes near. */
+export interface LineStart extends RegionStart {
+  distanceKm: number;
+  /** How much of the probability may lie there, to put places in order: density over slope and distance. */
+  promise: number;
+}
+
+/** Where the passes along the line come nearest, every strand's every minimum, the most promising first. */
+export function nearestOnLine(scan: LineScan): LineStart[] {
+  const found: LineStart[] = [];
   const add = (sigma: number, tdbSeconds: number, distanceKm: number, slopeKm: number): void => {
     const z = scan.direction.map((u) => u * sigma);
-    found.push({ z, tdbSeconds, direction: scan.direction, slopeKm, distanceKm });
+    const steep = Math.max(slopeKm, RADIUS_KM);
+    const promise = Math.exp(-0.5 * sigma * sigma) / steep / (1 + (distanceKm / RADIUS_KM) ** 2);
+    found.push({ z, tdbSeconds, direction: scan.direction, slopeKm, distanceKm, promise });
   };
   for (const strand of strandsOf(scan)) {
     if (strand.length === 1) {
@@ -177,7 +192,7 @@ export function nearestOnLine(scan: LineScan): (RegionStart & { distanceKm: numb
       add(sigma, tdbSeconds, distanceKm, apart / (b.sigma - a.sigma));
     }
   }
-  return found.sort((a, b) => a.distanceKm - b.distanceKm);
+  return found.sort((a, b) => b.promise - a.promise);
 }
 
 /** The strand of a nominal approach, within 5 σ. */
@@ -212,25 +227,4 @@ function segmentMinimum(
   const free = length2 === 0 ? 0 : -(a[0] * way[0] + a[1] * way[1]) / length2;
   const share = Math.max(0, Math.min(1, free));
   return { distanceKm: Math.hypot(a[0] + share * way[0], a[1] + share * way[1]), share };
-}
-
-/**
- * The sampled line of variations of one approach of the Earth.
- *
- * @param direction  unit vector of greatest stretching in standard normal coordinates
- * @param tdbSeconds of the nominal approach
- * @param most       clones to carry at most, above 201
- * @returns          its points in order of sigma, from −5 to 5 as far as the approach exists
- */
-export async function lineOfVariations(options: {
-  carry: CarryClones;
-  parallel: number;
-  direction: Float64Array;
-  tdbSeconds: number;
-  most: number;
-  stopped(): boolean;
-}): Promise<LinePoint[]> {
-  const carrier = new Carrier(options.carry, options.parallel);
-  const scan = await scanLine(carrier, options.direction, options.most, options.stopped);
-  return lineThrough(scan, options.tdbSeconds);
 }

@@ -48,7 +48,8 @@ export class MixtureSampling {
     return this.batches * this.counts.reduce((sum, count) => sum + count, 0);
   }
 
-  async draw(batches: number): Promise<void> {
+  /** @returns the clones drawn */
+  async draw(batches: number): Promise<CarriedClone[]> {
     const { parts } = this.mixture;
     const d = parts[0].mean.length;
     const normals = new Float64Array(d);
@@ -74,6 +75,7 @@ export class MixtureSampling {
       this.sums[from[i]].hits2 += weight * weight;
     }
     this.batches += batches;
+    return clones;
   }
 
   get value(): number {

@@ -6,6 +6,7 @@ import { findRegion, type ImpactRegion, type RegionStart, stretchingAt } from '.
 import {
   type LinePoint,
   type LineScan,
+  type LineStart,
   lineThrough,
   nearestOnLine,
   partingTime,
@@ -73,8 +74,17 @@ const MOST_PLAIN = 8192;
 /** Lines of this cosine are one line. */
 const SAME_DIRECTION = 0.99;
 const MOST_LINES = 3;
-const LINE_CLONES = [1400, 500, 500];
-const MOST_STARTS = 24;
+const LINE_CLONES = [2000, 600, 600];
+/** Places followed in any case, and at most. */
+const SOME_STARTS = 24;
+const MOST_STARTS = 120;
+/** Places that promise together less than this share of all may be left out. */
+const LEFT_OUT = 0.05;
+/** Dates at which plain clones are followed where the lines led to no impact, and clones of each. */
+const MOST_DATES = 8;
+const CLONES_OF_DATE = 6;
+/** The regions' linear maps give the sampled value within this factor unless they are strongly curved. */
+const CURVED = 3;
 /** Starts looked at together: a fixed number, so that the result depends on no machine. */
 const TOGETHER = 4;
 /** Regions of one date whose centres lie this near are one, in squared Mahalanobis distance. */
@@ -101,12 +111,10 @@ export async function estimateRareEvent(options: RareEventOptions): Promise<Rare
   const origin = gaussian(new Float64Array(options.dimension), identity(options.dimension));
   options.progress('looking where clones pass', 0);
   const pilot = new MixtureSampling(carrier, [origin], [1], options.seed, PILOT_STREAM);
-  await pilot.draw(1);
+  const plain = await pilot.draw(1);
   const scans = await scanLines(carrier, options);
-  const common = {
-    lines: linesThrough(scans.of, options.nominal),
-    reliability: reliabilityOf(scans.all),
-  };
+  const lines = linesThrough(scans.of, options.nominal);
+  const parting = partingOf(scans.all);
   if (pilot.hits.length > OFTEN * pilot.samples) {
     while (
       plainRelativeError(pilot.hits.length, pilot.samples) > options.relativeError &&
@@ -116,22 +124,25 @@ export async function estimateRareEvent(options: RareEventOptions): Promise<Rare
       await pilot.draw(1);
     }
     const relativeError = plainRelativeError(pilot.hits.length, pilot.samples);
-    return { ...sampled(PLAIN, pilot, relativeError, 1, carrier), ...common };
+    return { ...sampled(PLAIN, pilot, relativeError, 1, carrier), lines, reliability: null };
   }
   options.progress('looking for impacting regions', 0.2);
-  const regions = await findRegions(carrier, scans.all, options.stopped);
+  const { regions, isComplete } = await findRegions(carrier, scans.all, plain, options.stopped);
   for (const { clone } of pilot.hits) await cover(carrier, regions, clone);
   if (regions.length === 0) {
     return {
       ...sampled(METHOD, pilot, null, 0, carrier),
-      ...common,
+      lines,
+      reliability: wordsOf(parting, isComplete, false),
       upperBound: boundWithoutHits(pilot.samples),
     };
   }
+  const linear = regions.reduce((sum, { probability }) => sum + probability, 0);
   const sampling = await sampleRegions(carrier, origin, regions, options);
   return {
     ...sampled(METHOD, sampling, sampling.relativeError, regions.length, carrier),
-    ...common,
+    lines,
+    reliability: wordsOf(parting, isComplete, sampling.value * CURVED < linear),
     upperBound: sampling.hits.length === 0 ? boundWithoutHits(pilot.samples) : null,
   };
 }
@@ -184,27 +195,82 @@ async function scanLines(
   return { all, of };
 }
 
-function reliabilityOf(scans: readonly LineScan[]): string | null {
+/** From when on neighbours on the lines part; null where they never do. */
+function partingOf(scans: readonly LineScan[]): number | null {
   const times = scans.flatMap((scan) => partingTime(scan) ?? []);
-  if (times.length === 0) return null;
-  const date = formatIso(Math.min(...times), 'TDB', 0).slice(0, 10);
-  return `From ${date} on, neighbours on the line of variations part for unrelated passes, however near they are: impacts after that date may be missed, and the estimate is a lower bound for them.`;
+  return times.length === 0 ? null : Math.min(...times);
+}
+
+function wordsOf(parting: number | null, isComplete: boolean, isCurved: boolean): string | null {
+  const words: string[] = [];
+  if (parting !== null) {
+    const date = formatIso(parting, 'TDB', 0).slice(0, 10);
+    words.push(
+      `From ${date} on, neighbours on the line of variations part for unrelated passes, however near they are: impacts after that date may be missed, and the estimate is a lower bound for them.`,
+    );
+  }
+  if (!isComplete) {
+    words.push(
+      'More places of the line of variations come near the Earth than could be followed: the estimate is a lower bound.',
+    );
+  }
+  if (isCurved) {
+    words.push(
+      'The impacting regions are so thin and curved that the sample may not cover them: the estimate may be too low, and its stated error too small.',
+    );
+  }
+  return words.length === 0 ? null : words.join(' ');
 }
 
 /** Impacting regions, from the nearest passes along the lines; each once. */
 async function findRegions(
   carrier: Carrier,
   scans: readonly LineScan[],
+  plain: readonly CarriedClone[],
   stopped: () => boolean,
-): Promise<ImpactRegion[]> {
+): Promise<{ regions: ImpactRegion[]; isComplete: boolean }> {
   const regions: ImpactRegion[] = [];
-  const starts = scans.flatMap((scan) => nearestOnLine(scan).slice(0, MOST_STARTS));
-  for (let at = 0; at < starts.length && !stopped(); at += TOGETHER) {
-    const group = starts.slice(at, at + TOGETHER);
-    const found = await Promise.all(group.map((start) => findRegion(carrier, start)));
+  const follow = async (starts: readonly RegionStart[]): Promise<void> => {
+    const found = await Promise.all(starts.map((start) => findRegion(carrier, start)));
     for (const region of found) if (region !== null) addRegion(regions, region);
+  };
+  const starts = scans.flatMap(nearestOnLine).sort((a, b) => b.promise - a.promise);
+  const all = promised(starts);
+  let at = 0;
+  const isLeft = (): boolean => promised(starts.slice(at)) > LEFT_OUT * all;
+  while (at < starts.length && (at < SOME_STARTS || (at < MOST_STARTS && isLeft())) && !stopped()) {
+    await follow(starts.slice(at, at + TOGETHER));
+    at += TOGETHER;
   }
-  return regions;
+  const led = [...regions];
+  for (const { z, tdbSeconds } of nearestOfDates(plain)) {
+    if (stopped()) break;
+    if (led.some((region) => isSameDate(region.tdbSeconds, tdbSeconds))) continue;
+    const start = await stretchingAt(carrier, z, tdbSeconds);
+    if (start !== null) await follow([start]);
+  }
+  return { regions, isComplete: !isLeft() };
+}
+
+const promised = (starts: readonly LineStart[]): number =>
+  starts.reduce((sum, { promise }) => sum + promise, 0);
+
+/** The clones that pass nearest, some of each date, nearest dates first. */
+function nearestOfDates(
+  clones: readonly CarriedClone[],
+): { z: Float64Array; tdbSeconds: number }[] {
+  const passes = clones
+    .flatMap(({ z, passes: own }) =>
+      own.map(({ tdbSeconds, distanceKm }) => ({ z, tdbSeconds, distanceKm })),
+    )
+    .sort((a, b) => a.distanceKm - b.distanceKm);
+  const dates: { tdbSeconds: number; clones: { z: Float64Array; tdbSeconds: number }[] }[] = [];
+  for (const pass of passes) {
+    const date = dates.find(({ tdbSeconds }) => isSameDate(tdbSeconds, pass.tdbSeconds));
+    if (date === undefined) dates.push({ tdbSeconds: pass.tdbSeconds, clones: [pass] });
+    else if (date.clones.length < CLONES_OF_DATE) date.clones.push(pass);
+  }
+  return dates.slice(0, MOST_DATES).flatMap((date) => date.clones);
 }
 
 function addRegion(regions: ImpactRegion[], region: ImpactRegion): void {
