@@ -39,6 +39,7 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
   const answer = main === null ? nothingFound(draft) : answerOf(main, moon);
   const findings = [
     { ...answer, kind: 'answer' as const, caution },
+    ...probabilityFindings(draft, caution),
     ...(main === null
       ? []
       : [
@@ -55,7 +56,6 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
     moidFinding(draft),
     othersFinding(draft, main),
     certaintyFinding(main),
-    ...probabilityFindings(draft, caution),
     assumptionsFinding(draft),
   ].filter((item) => item !== null);
   return {
