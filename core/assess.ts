@@ -114,13 +114,14 @@ export async function assess(
       : forward.reachedTdbSeconds;
   const records = assembleApproaches([...backward.events, ...forward.events], orbit.model.gm);
   const principal = principalOf(records);
-  const uncertainties = uncertaintiesOf(
+  const { approaches: uncertainties, spread } = uncertaintiesOf(
     records,
     [backward, forward],
     normalised.covariance,
     orbit.model.gm,
     ephemeris,
   );
+  if (spread !== null) host.emit({ type: 'spread', rows: spread });
   const classical = classicalEncounter({
     object: { r: normalised.positionKm, v: normalised.velocityKmS },
     earth: earthMoonBarycentre(ephemeris, epoch),

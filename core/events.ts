@@ -20,6 +20,8 @@ export type AssessEvent =
   | { type: 'states'; direction: 1 | -1; samples: Float64Array }
   /** Share of the span done, 0 to 1, and what is being done. */
   | { type: 'progress'; fraction: number; note: string }
+  /** First-order spread of the place along the trajectory, once, where there is a covariance. */
+  | { type: 'spread'; rows: Float64Array }
   | { type: 'report'; report: Report };
 
 /** What the assessment asks of whoever runs it: the page's worker, the command line, a test. */

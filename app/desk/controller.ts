@@ -6,6 +6,7 @@ import { type Assessment, type EstimateRun, type WorkerClient, WorkerDied } from
 import { CloneCloud } from '../worker/clone-cloud';
 import { fileStem } from '../worker/file-name';
 import type { DeskState, ExportKind } from '../worker/messages';
+import { Spread } from '../worker/spread';
 import { Trajectory } from '../worker/trajectory';
 
 /** How long typing must rest before the text is read, ms. */
@@ -167,13 +168,16 @@ export function createController(deps: ControllerDeps): Controller {
 
   async function assess(text: string, reading: ReadResult, orbit: OrbitCase): Promise<void> {
     const trajectory = new Trajectory();
+    let spread: Spread | null = null;
     store.setState({ run: { ...IDLE_RUN, status: 'running' } });
     const own = client.assess({ text, reading, case: orbit, madeAt: now() }, (event) => {
       if (event.type === 'progress') {
         const { fraction, note } = event;
         store.setState({ run: { status: 'running', fraction, note, error: null } });
       } else if (event.type === 'report') {
-        show({ report: event.report, trajectory });
+        show({ report: event.report, trajectory, spread });
+      } else if (event.type === 'spread') {
+        spread = new Spread(event.rows);
       } else {
         trajectory.append(event.direction, event.samples);
         // The trajectory grows in place; setting it tells those who watch its version.
@@ -237,12 +241,13 @@ export function createController(deps: ControllerDeps): Controller {
     store.setState({ report, ...(untouched ? { plateFindings: firstFindings(report) } : {}) });
   }
 
-  function show(next: Shown & { report: Report }): void {
+  function show(next: Shown & { report: Report; spread: Spread | null }): void {
     shown = next;
-    const { report, trajectory } = next;
+    const { report, trajectory, spread } = next;
     store.setState({
       report,
       trajectory,
+      spread,
       reportIsStale: false,
       clones: new CloneCloud(),
       estimate: IDLE_ESTIMATE,

@@ -2,6 +2,7 @@ import { createStore, type StoreApi } from 'zustand/vanilla';
 import type { Choices, ReadResult } from '../../core/case/types';
 import type { Report } from '../../core/report/report';
 import { CloneCloud } from '../worker/clone-cloud';
+import type { Spread } from '../worker/spread';
 import { Trajectory } from '../worker/trajectory';
 
 /** Slow intent: what the person asked for and what has come back. No per-frame state. */
@@ -54,6 +55,8 @@ export interface DeskStore {
   reportIsStale: boolean;
   /** Streamed states of the current run; a new object for each run. Mutable: watch `version`. */
   trajectory: Trajectory;
+  /** Where the report's object may be at each moment; null without a covariance. */
+  spread: Spread | null;
   /** Clones of the principal approach; a new object for each case. Mutable: watch `version`. */
   clones: CloneCloud;
   /** The estimate of the impact probability that follows the assessment. */
@@ -95,6 +98,7 @@ export function createDeskStore(initial: Partial<DeskStore> = {}): DeskStoreApi 
     report: null,
     reportIsStale: false,
     trajectory: new Trajectory(),
+    spread: null,
     clones: new CloneCloud(),
     estimate: IDLE_ESTIMATE,
     plateFindings: [],

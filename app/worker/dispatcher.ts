@@ -263,5 +263,6 @@ export function createDispatcher<Ephemeris, Basis extends { plan: ClonePlan }>(
 
 function transferOf(event: AssessEvent | EstimateEvent): Transferable[] {
   if (event.type === 'states') return [event.samples.buffer];
+  if (event.type === 'spread') return [event.rows.buffer];
   return event.type === 'clones' ? [event.points.buffer] : [];
 }

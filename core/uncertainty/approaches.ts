@@ -10,6 +10,7 @@ import { carried } from '../math/symmetric';
 import { scale, subtract, type Vec3, vec3 } from '../math/vector';
 import type { EpochCovariance } from './covariance';
 import { discProbability } from './disc-probability';
+import { SpreadRecorder } from './spread';
 import { type FirstOrder, firstOrderOf } from './target-ellipse';
 
 /** An approach's first-order uncertainty and probability of impact. */
@@ -19,9 +20,16 @@ export interface RecordUncertainty {
   impactProbability: number | null;
 }
 
+/** What the covariance says, at first order, along the whole trajectory. */
+export interface FirstOrderAnswer {
+  approaches: Map<ApproachRecord, RecordUncertainty>;
+  /** Rows of SPREAD.stride doubles in order of time; null without a covariance. */
+  spread: Float64Array | null;
+}
+
 /**
- * First-order uncertainty of every approach: the variational equations along both legs, and the
- * covariance carried to each.
+ * First-order uncertainty of every approach, and of the place on the way: the variational equations
+ * along both legs, once, and the covariance carried to each.
  *
  * @param records    approaches, each with the event its uncertainty is taken at
  * @param legs       both directions of the integration, from the epoch
@@ -33,9 +41,11 @@ export function uncertaintiesOf(
   covariance: EpochCovariance | null,
   set: GmSet,
   ephemeris: Ephemeris,
-): Map<ApproachRecord, RecordUncertainty> {
+): FirstOrderAnswer {
   const found = new Map<ApproachRecord, RecordUncertainty>();
-  if (covariance === null) return found;
+  if (covariance === null) return { approaches: found, spread: null };
+  const recorder = new SpreadRecorder(ephemeris, covariance.matrix);
+  const before = new Float64Array(6 * PARAMETERS);
   const transition = new Float64Array(6 * PARAMETERS);
   for (const leg of legs) {
     const matrix = new TransitionMatrix(new ForcePartials(ephemeris, set));
@@ -48,10 +58,14 @@ export function uncertaintiesOf(
         const own = carried(transition, covariance.matrix, PARAMETERS);
         found.set(record, uncertaintyOf(record, own, set, ephemeris));
       }
+      before.set(matrix.values);
       matrix.advance(segment);
+      const isLast = segment === leg.segments.at(-1);
+      const end = isLast ? leg.reachedTdbSeconds - segment.baseSeconds : segment.endOffset;
+      recorder.append(segment, before, matrix.values, end);
     }
   }
-  return found;
+  return { approaches: found, spread: recorder.finish() };
 }
 
 function uncertaintyOf(
