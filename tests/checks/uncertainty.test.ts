@@ -1,11 +1,15 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import type { OrbitCase } from '../../core/case/types';
-import { AU_KM, SECONDS_PER_DAY } from '../../core/constants';
+import { AU_KM, BODY_INDEX, SECONDS_PER_DAY } from '../../core/constants';
 import { erfc } from '../../core/math/erfc';
+import { normalsOf } from '../../core/math/random';
+import { eigenSymmetric } from '../../core/math/symmetric';
+import { CLONE_ROW } from '../../core/uncertainty/clones';
 import type { ElementLabel } from '../../core/uncertainty/covariance';
 import { discProbability } from '../../core/uncertainty/disc-probability';
-import { assessCase } from '../helpers/assess';
+import { assessCase, NO_READING } from '../helpers/assess';
+import { estimateOf } from '../helpers/estimate';
 import { publishedCase, secondsOfJd, smallBodyRecord } from '../helpers/record';
 
 const read = (name: string) =>
@@ -98,5 +102,33 @@ describe('the published covariance of the open small-body record', async () => {
     expect(Math.abs((pass?.own.ellipse?.semiMinorKm ?? 0) / 2.97487796273739 - 1)).toBeLessThan(
       1e-2,
     );
+  });
+
+  it('gives that ellipse by clones too, carried for twenty years with their A2, within sampling error', async () => {
+    const { basis, host } = await estimateOf('', NO_READING, orbit);
+    const { plan } = basis;
+    const at = secondsOfJd('2462240.4');
+    const b: [number, number][] = [];
+    const count = 1500;
+    for (let first = 0; first < count; first += 500) {
+      const z = new Float64Array(500 * plan.dimension);
+      normalsOf(5, 0, first, 500, plan.dimension, z);
+      const { rows } = await host.carry(z);
+      for (let row = 0; row < rows.length; row += CLONE_ROW.size) {
+        if (rows[row + CLONE_ROW.body] !== BODY_INDEX.Earth) continue;
+        if (Math.abs(rows[row + CLONE_ROW.tdbSeconds] - at) > SECONDS_PER_DAY) continue;
+        b.push([rows[row + CLONE_ROW.bDotTKm], rows[row + CLONE_ROW.bDotRKm]]);
+      }
+    }
+    expect(b).toHaveLength(count);
+    const mean = [0, 1].map((k) => b.reduce((sum, item) => sum + item[k], 0) / count);
+    const moment = (i: number, j: number): number =>
+      b.reduce((sum, item) => sum + (item[i] - mean[i]) * (item[j] - mean[j]), 0) / (count - 1);
+    const [tt, tr, rr] = [moment(0, 0), moment(0, 1), moment(1, 1)];
+    const { values } = eigenSymmetric(Float64Array.of(tt, tr, tr, rr), 2);
+    // Five standard errors of a standard deviation: 5/√(2n).
+    const error = 5 / Math.sqrt(2 * count);
+    expect(Math.abs(Math.sqrt(values[0]) / 243.974619063745 - 1)).toBeLessThan(error);
+    expect(Math.abs(Math.sqrt(values[1]) / 2.97487796273739 - 1)).toBeLessThan(error);
   });
 });

@@ -16,7 +16,7 @@ export async function fetchPacked(name: string): Promise<ArrayBuffer> {
   return bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength) as ArrayBuffer;
 }
 
-const NO_READING: ReadResult = {
+export const NO_READING: ReadResult = {
   format: null,
   fields: [],
   problems: [],

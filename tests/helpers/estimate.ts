@@ -1,5 +1,6 @@
 import { type Assessed, assess, type EstimateBasis } from '../../core/assess';
 import { readCase } from '../../core/case/read';
+import type { OrbitCase, ReadResult } from '../../core/case/types';
 import { createEphemeris, loadEphemeris } from '../../core/ephemeris';
 import type { EstimateHost } from '../../core/events';
 import { createCarrier } from '../../core/uncertainty/carry';
@@ -12,8 +13,17 @@ export async function assessText(
 ): Promise<{ assessed: Assessed; basis: EstimateBasis; host: EstimateHost }> {
   const reading = readCase(text, choices);
   if (reading.case === null) throw new Error('the case does not read');
+  return estimateOf(text, reading, reading.case);
+}
+
+/** The same for a case that needs no reading. */
+export async function estimateOf(
+  text: string,
+  reading: ReadResult,
+  orbit: OrbitCase,
+): ReturnType<typeof assessText> {
   const ephemeris = createEphemeris();
-  const assessed = await assess({ text, reading, case: reading.case, madeAt: MADE_AT }, ephemeris, {
+  const assessed = await assess({ text, reading, case: orbit, madeAt: MADE_AT }, ephemeris, {
     fetchFile: fetchPacked,
     emit: () => {},
     pause: async () => {},
