@@ -22,11 +22,15 @@ export function EstimateLine() {
 
   const { count, status } = estimate;
   const isRunning = status === 'running';
-  const larger = CHOICES.filter((choice) => choice > count);
+  // What follows the clones may have been stopped when all of them were carried.
+  const larger = CHOICES.filter((each) => each > count || (status === 'stopped' && each === count));
   const goal = larger.includes(chosen) ? chosen : larger[0];
   const canContinue = !isRunning && !isStale && status !== 'idle' && goal !== undefined;
   return (
-    <section className="estimate" aria-label="Clones of the uncertain orbit">
+    <section
+      className={isStale ? 'estimate estimate-old' : 'estimate'}
+      aria-label="Clones of the uncertain orbit"
+    >
       <p className="estimate-words">{inWords(estimate)}</p>
       <p className="only-spoken" role="status">
         {spoken(estimate)}
@@ -38,9 +42,6 @@ export function EstimateLine() {
         aria-label="Share of the clones carried"
       />
       <div className="estimate-tools">
-        <span className="estimate-note">
-          {isRunning && estimate.note !== '' ? estimate.note : `seed ${ESTIMATE_SEED}`}
-        </span>
         <button
           type="button"
           className="button"
@@ -55,27 +56,32 @@ export function EstimateLine() {
           aria-disabled={!canContinue}
           onClick={() => canContinue && controller.continueEstimate(goal)}
         >
-          Carry on
+          Carry on to
         </button>
-        <label>
-          to{' '}
-          <select
-            className="estimate-goal figures"
-            aria-label="Number of clones to carry on to"
-            disabled={!canContinue}
-            value={goal ?? ''}
-            onChange={(event) => setChosen(Number(event.target.value))}
-          >
-            {larger.map((choice) => (
-              <option key={choice} value={choice}>
-                {grouped(choice)}
-              </option>
-            ))}
-          </select>
-        </label>
+        <select
+          className="estimate-goal figures"
+          aria-label="Number of clones to carry on to"
+          disabled={!canContinue}
+          value={goal ?? ''}
+          onChange={(event) => setChosen(Number(event.target.value))}
+        >
+          {larger.map((choice) => (
+            <option key={choice} value={choice}>
+              {grouped(choice)}
+            </option>
+          ))}
+        </select>
       </div>
     </section>
   );
+}
+
+/** What is being done for the estimate; at rest, what it can be repeated with. */
+export function EstimateNote() {
+  const { status, note } = useDeskStore((state) => state.estimate);
+  if (status === 'idle') return null;
+  const words = status === 'running' && note !== '' ? note : `seed of the clones ${ESTIMATE_SEED}`;
+  return <p className="estimate-note">{words}</p>;
 }
 
 function inWords({ status, count, wanted, impacts, interval95, error }: EstimateState): string {

@@ -90,6 +90,8 @@ export function createController(deps: ControllerDeps): Controller {
   let turn = 0;
   let run: Assessment | null = null;
   let estimate: EstimateRun | null = null;
+  /** The person has asked the estimate to end where it is. */
+  let stopping = false;
   let typing: ReturnType<typeof setTimeout> | undefined;
   let shown: Shown = { report: null, trajectory: store.getState().trajectory };
   /** The case is a new one, not a change of the one before: the plate's findings start afresh. */
@@ -201,6 +203,7 @@ export function createController(deps: ControllerDeps): Controller {
 
   /** Carries clones of the report shown until there are so many; never rejects. */
   async function carryClones(wanted: number): Promise<void> {
+    stopping = false;
     setEstimate({ status: 'running', fraction: 0, note: '', wanted, error: null });
     const own = client.estimate({ clones: wanted, seed: ESTIMATE_SEED }, (event) => {
       if (event.type === 'progress') {
@@ -220,8 +223,7 @@ export function createController(deps: ControllerDeps): Controller {
     try {
       const outcome = await own.outcome;
       if (outcome === 'cancelled') return;
-      const { count } = store.getState().estimate;
-      setEstimate({ status: count < wanted ? 'stopped' : 'done', note: '' });
+      setEstimate({ status: stopping ? 'stopped' : 'done', note: '' });
     } catch (error) {
       if (estimate !== own) return;
       setEstimate({ status: 'failed', note: '', error: inWords(error) });
@@ -300,6 +302,7 @@ export function createController(deps: ControllerDeps): Controller {
       void read();
     },
     stopEstimate() {
+      stopping = true;
       estimate?.stop();
     },
     continueEstimate(clones) {

@@ -46,8 +46,7 @@ export function createEstimateStream(
         post(event);
         return;
       }
-      // Progress comes just before the clones it tells of: both go together.
-      if (event.type === 'clones' && now() - postedAt >= POST_EVERY_MS) flush();
+      if (now() - postedAt >= POST_EVERY_MS) flush();
     },
     flush,
   };

@@ -1,6 +1,6 @@
 import type { Finding, Report } from '../../../core/report/report';
 import { useDeskStore } from '../../store/context';
-import { EstimateLine } from '../EstimateLine';
+import { EstimateLine, EstimateNote } from '../EstimateLine';
 import { ApproachesTable } from './ApproachesTable';
 import { Caution } from './Caution';
 import { CrossingsTable } from './CrossingsTable';
@@ -19,6 +19,7 @@ export function Findings() {
         <h2 id="findings-title" className="caps">
           Findings
         </h2>
+        <EstimateNote />
       </header>
       <EstimateLine />
       <div className="findings-body">
