@@ -28,9 +28,11 @@ const FIRST_POINTS = 201;
 const ROUND = 96;
 /**
  * Where the ends of an interval differ by more than this share of their distance (and 3 radii) it is
- * halved: fine enough that between two clones that pass near, few returns to later passes are missed.
+ * halved. The first pass fine enough that between two clones few returns to later passes are missed:
+ * a return shows only on the clones that come back within the watched distance.
  */
-const COARSE = 0.015;
+const FIRST_COARSE = 0.01;
+const LATER_COARSE = 0.1;
 /** A pass that only one end has counts when it is nearer than about half the farthest that are told of. */
 const LONE = 1;
 /** The same, for clones of which it is said that they part: a quarter. */
@@ -98,9 +100,10 @@ function compare(one: CarriedClone, other: CarriedClone, limitKm: number, to: In
   for (const pass of one.passes) {
     const match = passAt(other, pass.tdbSeconds);
     if (match !== null) {
+      const coarse = pass === one.passes[0] ? FIRST_COARSE : LATER_COARSE;
       const apart = Math.hypot(match.aim[0] - pass.aim[0], match.aim[1] - pass.aim[1]);
       const nearest = segmentMinimum(pass.aim, match.aim).distanceKm;
-      to.score = Math.max(to.score, apart / (nearest + 3 * RADIUS_KM) / COARSE);
+      to.score = Math.max(to.score, apart / (nearest + 3 * RADIUS_KM) / coarse);
       continue;
     }
     // A clone that hit has no later passes.
