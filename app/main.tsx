@@ -26,11 +26,12 @@ const controller = createController({
       import('./plate/make-plate'),
       import('./plate/scene-source'),
     ]);
-    const { theme, plateFindings, sunStation, earthStation, namedDistances } =
+    const { theme, spread, plateFindings, sunStation, earthStation, namedDistances } =
       desk.store.getState();
     return makePlate({
       report,
       trajectory,
+      spread,
       palette: paletteOf(theme),
       clockTdbSeconds: desk.clock.tdbSeconds,
       findings: plateFindings,

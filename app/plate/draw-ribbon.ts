@@ -1,7 +1,13 @@
 import type { Report } from '../../core/report/report';
-import { type RibbonGeometry, ribbonGeometry } from '../ribbon/geometry';
+import {
+  bandOutline,
+  type RibbonBand,
+  type RibbonGeometry,
+  ribbonGeometry,
+} from '../ribbon/geometry';
 import { initialOf } from '../ribbon/mark-words';
 import type { PlacedFlag } from '../ribbon/place-flags';
+import type { Spread } from '../worker/spread';
 import type { Trajectory } from '../worker/trajectory';
 import { type Area, frame, measureIn, type Pen, rule, write, writeCaps, writeClear } from './pen';
 
@@ -17,6 +23,7 @@ export function drawRibbon(
   area: Area,
   report: Report,
   trajectory: Trajectory,
+  spread: Spread | null,
   clockTdbSeconds: number,
 ): void {
   const { context, palette } = pen;
@@ -28,9 +35,7 @@ export function drawRibbon(
     17,
     palette.inkSoft,
   );
-  const key = 'dashed: two-body path, no pull of the Earth; thin: the Moon';
-  write(pen, key, end + 18, area.y, { px: 18, italic: true }, palette.inkSoft);
-  const geometry = ribbonGeometry(report, trajectory, 'stretched', {
+  const geometry = ribbonGeometry(report, trajectory, spread, 'stretched', {
     widthPx: area.width,
     heightPx: area.height - CAPS_PX,
     leftPx: 204,
@@ -41,10 +46,13 @@ export function drawRibbon(
     measure: measureIn(pen, FACE),
   });
   if (geometry === null) return;
-  const { plot, time, curves, flags } = geometry;
+  const { plot, time, curves, band, flags } = geometry;
+  const key = `dashed: two-body path, no pull of the Earth; thin: the Moon${band === null ? '' : `; tinted: ${band.words}`}`;
+  write(pen, key, end + 18, area.y, { px: 18, italic: true }, palette.inkSoft);
   context.save();
   context.translate(area.x, area.y + CAPS_PX);
   drawAxes(pen, geometry);
+  if (band !== null) drawBand(pen, band);
   rule(pen, curves.moon, palette.moon, 1.5);
   rule(pen, curves.unperturbed, palette.object, 2, [9, 7]);
   rule(pen, curves.object, palette.object, 3.2);
@@ -53,6 +61,22 @@ export function drawRibbon(
   const x = plot.x0 + Math.min(1, Math.max(0, time.unitAt(clockTdbSeconds))) * sheet.width;
   rule(pen, [x, plot.y0, x, plot.y1 + 8], palette.ink, 2);
   for (const flag of flags) drawFlag(pen, flag);
+  context.restore();
+}
+
+function drawBand(pen: Pen, band: RibbonBand): void {
+  const { context, palette } = pen;
+  const outline = bandOutline(band);
+  context.save();
+  context.beginPath();
+  for (let i = 0; i < outline.length; i += 2) context.lineTo(outline[i], outline[i + 1]);
+  context.closePath();
+  context.fillStyle = palette.object;
+  context.globalAlpha = 0.13;
+  context.fill();
+  context.globalAlpha = 0.75;
+  rule(pen, band.low, palette.object, 1.2);
+  rule(pen, band.high, palette.object, 1.2);
   context.restore();
 }
 

@@ -1,5 +1,6 @@
 import type { Report } from '../../core/report/report';
 import type { Palette } from '../theme/tokens';
+import type { Spread } from '../worker/spread';
 import type { Trajectory } from '../worker/trajectory';
 import { drawFindings } from './draw-findings';
 import { drawFoot } from './draw-foot';
@@ -15,6 +16,8 @@ import { withText } from './png-text';
 interface PlateInput extends SceneRequest {
   report: Report;
   trajectory: Trajectory;
+  /** Of the report; null without a covariance. */
+  spread: Spread | null;
   palette: Palette;
   /** Ids of the findings chosen for the plate. */
   findings: readonly string[];
@@ -73,7 +76,7 @@ function withinPath(input: PlateInput): PlateInput {
  */
 function drawPlate(pen: Pen, input: PlateInput): void {
   const { context, palette } = pen;
-  const { report, trajectory, clockTdbSeconds } = input;
+  const { report, trajectory, spread, clockTdbSeconds } = input;
   context.fillStyle = palette.ground;
   context.fillRect(0, 0, WIDTH_PX, HEIGHT_PX);
   frame(pen, { x: 22, y: 22, width: WIDTH_PX - 44, height: HEIGHT_PX - 44 }, palette.ink, 3);
@@ -87,7 +90,7 @@ function drawPlate(pen: Pen, input: PlateInput): void {
   const second = LEFT + SCENE_WIDTH + GUTTER;
   drawScene(pen, { x: second, y: upper, width: SCENE_WIDTH, height }, 'earth', input);
   const ribbon = { x: LEFT, y: lower, width: 2 * SCENE_WIDTH + GUTTER, height: LOWER_HEIGHT };
-  drawRibbon(pen, ribbon, report, trajectory, clockTdbSeconds);
+  drawRibbon(pen, ribbon, report, trajectory, spread, clockTdbSeconds);
   const column = { x: COLUMN_LEFT, width: RIGHT - COLUMN_LEFT };
   const chosen = report.findings.filter(
     (finding) => finding.kind !== 'answer' && input.findings.includes(finding.id),

@@ -1,15 +1,16 @@
 import { memo } from 'react';
-import type { RibbonGeometry } from './geometry';
+import { bandOutline, type RibbonBand, type RibbonGeometry } from './geometry';
 import { initialOf } from './mark-words';
 import type { Box, PlacedFlag } from './place-flags';
 
 /** The ribbon's still parts: axes, curves, flags. Drawn when the geometry changes, not by the clock. */
 export const RibbonPlot = memo(function RibbonPlot({ geometry }: { geometry: RibbonGeometry }) {
-  const { plot, curves, flags } = geometry;
+  const { plot, curves, band, flags } = geometry;
   return (
     <>
       <DistanceAxes geometry={geometry} />
       <TimeAxis geometry={geometry} />
+      {band !== null && <BandPart band={band} plot={plot} />}
       <path className="ribbon-moon" d={polyline(curves.moon)} />
       <path className="ribbon-unperturbed" d={polyline(curves.unperturbed)} />
       <path className="ribbon-curve" d={polyline(curves.object)} />
@@ -29,6 +30,22 @@ function polyline(points: Float64Array): string {
     path += `${i === 0 ? 'M' : 'L'}${points[i].toFixed(1)} ${points[i + 1].toFixed(1)}`;
   }
   return path;
+}
+
+/** A key of its own: the band is named where the plot is empty, at its foot. */
+function BandPart({ band, plot }: { band: RibbonBand; plot: Box }) {
+  const [x, y] = [plot.x0 + 9, plot.y1 - 10];
+  return (
+    <>
+      <path className="ribbon-band" d={`${polyline(bandOutline(band))}Z`} />
+      <path className="ribbon-band-edge" d={polyline(band.low) + polyline(band.high)} />
+      <path className="ribbon-band" d={`M${x} ${y - 4}h18v8h-18Z`} />
+      <path className="ribbon-band-edge" d={`M${x} ${y - 4}h18m0 8h-18`} />
+      <text className="ribbon-words" x={x + 24} y={y} dy="0.33em">
+        {band.words}
+      </text>
+    </>
+  );
 }
 
 function DistanceAxes({ geometry }: { geometry: RibbonGeometry }) {

@@ -1,8 +1,10 @@
 import type { Report } from '../../core/report/report';
 import type { RibbonTime } from '../store/store';
 import { SAMPLE } from '../worker/core-values';
+import type { Spread } from '../worker/spread';
 import type { Trajectory } from '../worker/trajectory';
 import { type Anchor, anchorOf } from './anchor';
+import { bandAlong } from './band';
 import { type CurveKind, distanceCurve, distanceIn } from './curve';
 import { type DistanceScale, ribbonDistanceScale } from './distance-scale';
 import { decadeTicks, namedTicks, spreadLabels } from './distance-ticks';
@@ -19,6 +21,8 @@ export interface RibbonGeometry {
   anchor: Anchor;
   /** Pairs of x and y, px. */
   curves: Record<CurveKind, Float64Array>;
+  /** Where the object's curve may run, cut to the plot; null without a covariance. */
+  band: RibbonBand | null;
   /** In order of time; words or a date that would touch their neighbours are null. */
   timeTicks: { x: number; words: string | null; date: string | null }[];
   /** Lines at named distances, with the height of their words. */
@@ -26,6 +30,13 @@ export interface RibbonGeometry {
   /** Powers of ten, the same way. */
   decades: { y: number; textY: number; words: string }[];
   flags: PlacedFlag[];
+}
+
+export interface RibbonBand {
+  /** Pairs of x and y, px: the lower edge of the distance and the upper. */
+  low: Float64Array;
+  high: Float64Array;
+  words: string;
 }
 
 /** Sizes of a ribbon's sheet, px. */
@@ -43,17 +54,21 @@ interface RibbonSheet {
 }
 
 const SLOTS = 300;
+/** A band nowhere wider than this is hidden by its curve, px. */
+const LEAST_BAND_PX = 2.5;
 
 /** Least room for a time tick, in rows of text. */
 const TICK_ROWS = 4.2;
 
 /**
  * @param report the report of this trajectory; null while it is still being computed
+ * @param spread of this report; null without a covariance
  * @returns      null while there is no trajectory
  */
 export function ribbonGeometry(
   report: Report | null,
   trajectory: Trajectory,
+  spread: Spread | null,
   kind: RibbonTime,
   sheet: RibbonSheet,
 ): RibbonGeometry | null {
@@ -86,6 +101,10 @@ export function ribbonGeometry(
     unperturbed: toPixels(raw.unperturbed),
     moon: toPixels(raw.moon),
   };
+  const range = spread === null ? null : bandAlong(raw.object, spread, trajectory);
+  const cut = (points: Float64Array): Float64Array =>
+    toPixels(points).map((value, i) => (i % 2 === 0 ? value : Math.max(value, plot.y0)));
+  const band = range === null ? null : wordedBand(cut(range.low), cut(range.high));
   const scratch = new Float64Array(SAMPLE.stride);
   const marks = inOrderOfImportance(report === null ? [] : eventsOf(report)).map(
     (event): Mark => ({
@@ -100,6 +119,7 @@ export function ribbonGeometry(
     distance,
     anchor,
     curves,
+    band,
     timeTicks: datedTicks(time, anchor, kind, plot, xAt, sheet),
     named: spreadTicks(namedTicks(distance), yAt, plot, sheet.rowPx),
     decades: spreadTicks(decadeTicks(distance), yAt, plot, sheet.rowPx),
@@ -111,6 +131,25 @@ export function ribbonGeometry(
       measure: sheet.measure,
     }),
   };
+}
+
+function wordedBand(low: Float64Array, high: Float64Array): RibbonBand {
+  let widest = 0;
+  for (let i = 1; i < low.length; i += 2) widest = Math.max(widest, low[i] - high[i]);
+  const words = widest < LEAST_BAND_PX ? '3 σ band, thinner than the line' : '3 σ band';
+  return { low, high, words };
+}
+
+/** The band as a closed line: along its lower edge and back along the upper. */
+export function bandOutline({ low, high }: RibbonBand): Float64Array {
+  const count = high.length / 2;
+  const outline = new Float64Array(4 * count);
+  outline.set(low);
+  for (let i = 0; i < count; i++) {
+    outline[2 * (count + i)] = high[2 * (count - 1 - i)];
+    outline[2 * (count + i) + 1] = high[2 * (count - 1 - i) + 1];
+  }
+  return outline;
 }
 
 function largestOf(points: Float64Array): number {

@@ -16,6 +16,9 @@ export const RIBBON_HEIGHT_PX = 158;
 export function useRibbonGeometry(widthPx: number): RibbonGeometry | null {
   const trajectory = useDeskStore((state) => state.trajectory);
   const report = useDeskStore(reportOfTrajectory);
+  const spread = useDeskStore((state) =>
+    reportOfTrajectory(state) === null ? null : state.spread,
+  );
   const kind = useDeskStore((state) => state.ribbonTime);
   const version = useSlowVersion();
   const fonts = useFontsLoaded();
@@ -23,7 +26,7 @@ export function useRibbonGeometry(widthPx: number): RibbonGeometry | null {
     // Named so that the geometry is made anew when the trajectory has grown or the type has come.
     const drawing = { version, fonts };
     if (widthPx === 0 || drawing.version < 0) return null;
-    return ribbonGeometry(report, trajectory, kind, {
+    return ribbonGeometry(report, trajectory, spread, kind, {
       widthPx,
       heightPx: RIBBON_HEIGHT_PX,
       leftPx: 112,
@@ -33,7 +36,7 @@ export function useRibbonGeometry(widthPx: number): RibbonGeometry | null {
       rowPx: TEXT_PX + 1,
       measure: createMeasure(`400 ${TEXT_PX}px ${FONT_TEXT}`),
     });
-  }, [report, trajectory, kind, widthPx, version, fonts]);
+  }, [report, trajectory, spread, kind, widthPx, version, fonts]);
 }
 
 /** The trajectory's version, told at most every REDRAW_MS. */
