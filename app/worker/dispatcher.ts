@@ -20,6 +20,7 @@ export interface Writers {
   reportJsonText(report: Report): string;
   writeOem(report: Report, samples: Float64Array): string;
   writeEphemerisCsv(samples: Float64Array): string;
+  corridorGeoJson(report: Report): string;
   writeCaseFile(orbit: OrbitCase, desk: DeskState): string;
 }
 
@@ -229,6 +230,17 @@ export function createDispatcher<Ephemeris, Basis extends { plan: ClonePlan }>(
           fileName: `${stem}-ephemeris.csv`,
           mediaType: 'text/csv',
           text: deps.writers.writeEphemerisCsv(samples),
+        };
+      case 'corridor-geojson':
+        if (report.corridor === undefined) {
+          throw new NothingToExport(
+            'There is no corridor to write: no clone that has been carried reaches the ground.',
+          );
+        }
+        return {
+          fileName: `${stem}-corridor.geojson`,
+          mediaType: 'application/geo+json',
+          text: deps.writers.corridorGeoJson(report),
         };
     }
   }

@@ -4,7 +4,7 @@ import type { WireError } from './wire-error';
 
 /** Everything that crosses between the page and the worker. Each request carries its id. */
 
-export type ExportKind = 'report-json' | 'oem' | 'ephemeris-csv' | 'case-file';
+export type ExportKind = 'report-json' | 'oem' | 'ephemeris-csv' | 'corridor-geojson' | 'case-file';
 
 export type Request =
   | { type: 'read'; id: number; text: string; choices: Choices }

@@ -5,6 +5,7 @@ import { createEphemeris } from '../../core/ephemeris';
 import { Estimate } from '../../core/estimate';
 import { reportJsonText } from '../../core/report/canonical';
 import { writeEphemerisCsv } from '../../core/report/ephemeris-csv';
+import { corridorGeoJson } from '../../core/report/geojson';
 import { writeOem } from '../../core/report/oem';
 import { openCarrierPort, openLocalCarrierPort } from './carrier-ports';
 import { createDispatcher } from './dispatcher';
@@ -37,7 +38,7 @@ const handle = createDispatcher({
   assess,
   createEstimate: (basis, seed) => new Estimate(basis, seed),
   pool,
-  writers: { reportJsonText, writeOem, writeEphemerisCsv, writeCaseFile },
+  writers: { reportJsonText, writeOem, writeEphemerisCsv, corridorGeoJson, writeCaseFile },
   ephemeris: createEphemeris(),
   fetchFile,
   pause,

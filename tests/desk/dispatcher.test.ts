@@ -6,6 +6,7 @@ import type { DeskState, Request, Response } from '../../app/worker/messages';
 import { type EstimateEvent, SAMPLE } from '../../core/events';
 import { type Report, reportSchema } from '../../core/report/report';
 import type { ClonePlan } from '../../core/uncertainty/clones';
+import { sampleCorridor } from '../core/report/corridor-sample';
 import { INVENTED_CASE, inventedReport, reading, samplesAt } from './fixtures/report';
 
 // Expected answers follow from the contract of app/worker/messages.ts, not from the dispatcher.
@@ -96,6 +97,7 @@ function fakeDeps(changes: Partial<Deps> = {}): Omit<Deps, 'post'> {
       writeOem: (_report, samples) =>
         `oem ${[0, 1, 2, 3].map((row) => samples[row * SAMPLE.stride]).join(' ')}`,
       writeEphemerisCsv: (samples) => `csv ${samples.length / SAMPLE.stride}`,
+      corridorGeoJson: (report) => `corridor of ${report.corridor?.clones}`,
       writeCaseFile: (orbit, desk) => `case ${orbit.name} ${desk.clockTdbSeconds}`,
     },
     ephemeris: 'the ephemeris',
@@ -319,6 +321,33 @@ describe.each([
     });
   });
 
+  it('writes the corridor where there is one, and says so where there is none', async () => {
+    const reports = [inventedReport(), inventedReport({ corridor: sampleCorridor({ count: 12 }) })];
+    const { send, until } = line(
+      fakeDeps({
+        async assess() {
+          const report = reports.shift();
+          if (report === undefined) throw new Error('no more reports');
+          return { report, estimate: null };
+        },
+      }),
+    );
+    send(assess(1));
+    await until(of(1, 'done'));
+    send({ type: 'export', id: 2, kind: 'corridor-geojson', madeAt: '', desk: null });
+    expect(await until(of(2, 'error'))).toMatchObject({
+      error: { code: 'nothing-to-export', message: expect.stringContaining('no corridor') },
+    });
+    send(assess(3));
+    await until(of(3, 'done'));
+    send({ type: 'export', id: 4, kind: 'corridor-geojson', madeAt: '', desk: null });
+    expect(await until(of(4, 'export'))).toMatchObject({
+      fileName: 'Sample-One-invented-a1b2c3d4-corridor.geojson',
+      mediaType: 'application/geo+json',
+      text: 'corridor of 12',
+    });
+  });
+
   it('keeps the last finished report for export while a newer run is stopped', async () => {
     let runs = 0;
     const { send, until } = line(
@@ -350,7 +379,7 @@ describe.each([
     });
   });
 
-  it.each(['report-json', 'oem', 'ephemeris-csv', 'case-file'] as const)(
+  it.each(['report-json', 'oem', 'ephemeris-csv', 'corridor-geojson', 'case-file'] as const)(
     'refuses to write %s before there is anything to write',
     async (kind) => {
       const { send, until } = line(fakeDeps());

@@ -10,6 +10,7 @@ const FILES: { kind: ExportKind | 'plate'; word: string; title: string }[] = [
   { kind: 'report-json', word: 'Report', title: 'JSON, full precision' },
   { kind: 'oem', word: 'OEM', title: 'Trajectory, CCSDS OEM' },
   { kind: 'ephemeris-csv', word: 'CSV', title: 'Ephemeris table, CSV' },
+  { kind: 'corridor-geojson', word: 'Corridor', title: 'Where it may fall, GeoJSON' },
   { kind: 'case-file', word: 'Case', title: 'Case file, to go on from here' },
 ];
 
@@ -17,9 +18,15 @@ const FILES: { kind: ExportKind | 'plate'; word: string; title: string }[] = [
 export function HandOver() {
   const controller = useController();
   const hasReport = useDeskStore((state) => state.report !== null && !state.reportIsStale);
+  const hasCorridor = useDeskStore((state) => state.report?.corridor !== undefined);
   const hasCase = useDeskStore((state) => state.reading?.case != null);
   const [said, setSaid] = useState(PLATE_CARRIES);
   const [making, setMaking] = useState(false);
+
+  function canHand(kind: ExportKind | 'plate'): boolean {
+    if (kind === 'case-file') return hasCase;
+    return hasReport && (kind !== 'corridor-geojson' || hasCorridor);
+  }
 
   async function hand(kind: ExportKind | 'plate') {
     if (making) return;
@@ -47,7 +54,7 @@ export function HandOver() {
             type="button"
             className="button"
             title={title}
-            disabled={!(kind === 'case-file' ? hasCase : hasReport)}
+            disabled={!canHand(kind)}
             onClick={() => void hand(kind)}
           >
             {word}
