@@ -4,12 +4,14 @@ import type { EstimateHost } from './events';
 import { clopperPearson } from './math/beta';
 import { normalsOf } from './math/random';
 import { sealReport } from './report/canonical';
+import { corridorSection } from './report/corridor';
 import { writeFindings } from './report/findings';
 import { probabilitySection } from './report/probability-section';
 import type { Report } from './report/report';
 import { CLONE_POINT, CLONE_ROW, type CloneOutcomes } from './uncertainty/clones';
+import { type Corridor, corridorOf } from './uncertainty/corridor';
 import { estimateRareEvent, linesOfVariations, type RareEvent } from './uncertainty/rare-event';
-import { groupImpacts, ImpactTally } from './uncertainty/tally';
+import { groupImpacts, type ImpactGroup, ImpactTally } from './uncertainty/tally';
 
 /** More clones take longer than anyone waits, and sharpen nothing that matters. */
 export const MOST_CLONES = 1_000_000;
@@ -182,6 +184,12 @@ export class Estimate {
   private report(): Report {
     const { report, plan } = this.basis;
     const { rare } = this;
+    const plainGroups = this.tally.groups();
+    const rareGroups = rare === null ? [] : groupImpacts(rare.impacts.rows, rare.impacts.weights);
+    const corridor = corridorOfLikeliest(
+      rare === null ? plainGroups : rareGroups,
+      rare === null ? 1 / this.carried : null,
+    );
     const { fingerprint: _, findings: __, cautions: ___, ...sections } = report;
     const draft = {
       ...sections,
@@ -190,9 +198,9 @@ export class Estimate {
         epochTdbSeconds: plan.epochTdbSeconds,
         seed: this.seed,
         plain: { count: this.carried, impacts: this.tally.earth },
-        plainGroups: this.tally.groups(),
+        plainGroups,
         rare,
-        rareGroups: rare === null ? [] : groupImpacts(rare.impacts.rows, rare.impacts.weights),
+        rareGroups,
         lines: new Map(
           (this.lines ?? []).map(({ nominal, points }) => [
             report.approaches.indexOf(this.passes[nominal]),
@@ -200,7 +208,26 @@ export class Estimate {
           ]),
         ),
       }),
+      ...(corridor === null ? {} : { corridor: corridorSection(corridor) }),
     };
     return sealReport({ ...draft, ...writeFindings(draft) });
   }
+}
+
+/**
+ * The corridor of the likeliest date of an impact of the Earth; null when there is none.
+ *
+ * @param each probability of a plain clone; null where the rows have their weights
+ */
+function corridorOfLikeliest(groups: readonly ImpactGroup[], each: number | null): Corridor | null {
+  const earth = groups.filter(({ body }) => body === BODY_INDEX.Earth);
+  if (earth.length === 0) return null;
+  const size = ({ count, weight }: ImpactGroup): number => (each === null ? weight : count);
+  const likeliest = earth.reduce((a, b) => (size(b) > size(a) ? b : a));
+  // Of very many impacts only some rows are kept: they stand for all.
+  const scale = each === null ? 1 : (each * likeliest.count) / likeliest.weight;
+  return corridorOf(
+    likeliest.rows,
+    likeliest.weights.map((weight) => weight * scale),
+  );
 }

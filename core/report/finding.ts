@@ -5,7 +5,14 @@ import type { Approach, Finding, Report } from './report';
 
 export type FindingsDraft = Pick<
   Report,
-  'case' | 'model' | 'classical' | 'approaches' | 'principal' | 'comparison' | 'impactProbability'
+  | 'case'
+  | 'model'
+  | 'classical'
+  | 'approaches'
+  | 'principal'
+  | 'comparison'
+  | 'impactProbability'
+  | 'corridor'
 >;
 
 export const N_BODY: Finding['basis'] = {

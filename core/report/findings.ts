@@ -1,6 +1,7 @@
 import { answerOf, nothingFound } from './answer';
 import { assumptionsFinding, certaintyFinding, othersFinding } from './case-findings';
 import { classicalFinding, moidFinding } from './classical-findings';
+import { corridorFinding } from './corridor-findings';
 import type { FindingsDraft } from './finding';
 import { moonFinding, nearMoon } from './moon-pass';
 import {
@@ -40,6 +41,7 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
   const findings = [
     { ...answer, kind: 'answer' as const, caution },
     ...probabilityFindings(draft, caution),
+    draft.corridor === undefined ? null : corridorFinding(draft.corridor, caution),
     ...(main === null
       ? []
       : [

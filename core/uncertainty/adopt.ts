@@ -58,8 +58,9 @@ export function adopt(
     firstOrderAgrees:
       firstOrder === null || settled.from === 'first-order'
         ? null
-        : (firstOrder >= low / FIRST_ORDER_FACTOR && firstOrder <= high * FIRST_ORDER_FACTOR) ||
-          (firstOrder < NOTHING && settled.value < NOTHING),
+        : settled.value === 0
+          ? firstOrder < NOTHING
+          : firstOrder >= low / FIRST_ORDER_FACTOR && firstOrder <= high * FIRST_ORDER_FACTOR,
     ensembleAgrees:
       interval === null || settled.from !== 'rare-event'
         ? null
@@ -75,8 +76,11 @@ function settle(
 ): Pick<Adopted, 'value' | 'range95' | 'from'> | null {
   if (rare !== null) {
     const spread = Math.exp(Z95 * (rare.relativeError ?? 0));
+    // Where nothing was found, what the plain clones leave open is all that sampling says.
     const range95: [number, number] =
-      rare.value === 0 ? [0, NOTHING] : [rare.value / spread, Math.min(1, rare.value * spread)];
+      rare.value === 0
+        ? [0, interval === null ? 1 : interval[1]]
+        : [rare.value / spread, Math.min(1, rare.value * spread)];
     return { value: rare.value, range95, from: 'rare-event' };
   }
   if (plain !== null && interval !== null) {
