@@ -10,6 +10,7 @@ import {
   type EpochCovariance,
   elementCovariance,
 } from '../uncertainty/covariance';
+import { gmOfCentre } from './centre-gm';
 import type { Centre, ElementsState, OrbitCase } from './types';
 
 /** A case carried to the core's own terms. */
@@ -49,7 +50,7 @@ export function normaliseCase(orbit: OrbitCase, ephemeris: Ephemeris): Normalise
   const given =
     orbit.state.kind === 'cartesian'
       ? { r: orbit.state.positionKm as Vec3, v: orbit.state.velocityKmS as Vec3 }
-      : elementsToState(orbit.state, centreGm(orbit), epochTdbSeconds);
+      : elementsToState(orbit.state, gmOfCentre(orbit.centre, orbit.model.gm), epochTdbSeconds);
   const turn = (x: Vec3): Vec3 => (orbit.axes === 'EclipticJ2000' ? eclipticToIcrf(x) : x);
   const centre = centreState(orbit.centre, orbit, bodies);
   const sun = bodyState('Sun', bodies);
@@ -70,7 +71,7 @@ function covarianceOf(orbit: OrbitCase, given: State): EpochCovariance | null {
   const { covariance } = orbit;
   if (covariance === null) return null;
   const ecliptic = orbit.axes === 'EclipticJ2000';
-  const state = { ...given, ecliptic, gm: centreGm(orbit) };
+  const state = { ...given, ecliptic, gm: gmOfCentre(orbit.centre, orbit.model.gm) };
   return covariance.kind === 'cartesian'
     ? cartesianCovariance(covariance.lowerTriangle, covariance.frame, state)
     : elementCovariance(covariance.labels, covariance.matrix, state);
@@ -96,19 +97,6 @@ function centreState(centre: Centre, orbit: OrbitCase, bodies: Float64Array): St
   const moon = bodyState('Moon', bodies);
   const mix = (e: Vec3, m: Vec3): Vec3 => add(scale(e, 1 - share), scale(m, share));
   return { r: mix(earth.r, moon.r), v: mix(earth.v, moon.v) };
-}
-
-function centreGm(orbit: OrbitCase): number {
-  const gm = GM_KM3_S2[orbit.model.gm];
-  switch (orbit.centre) {
-    case 'Sun':
-    case 'SSB':
-      return gm.Sun;
-    case 'EarthBarycentre':
-      return gm.Earth + gm.Moon;
-    default:
-      return gm[orbit.centre];
-  }
 }
 
 function elementsToState(given: ElementsState, gm: number, epochTdbSeconds: number): State {

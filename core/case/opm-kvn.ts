@@ -1,4 +1,4 @@
-import type { Entry } from './opm';
+import type { Entry } from './opm-keywords';
 import { problem } from './raw';
 import type { Problem } from './types';
 

@@ -1,5 +1,5 @@
 import { SaxesParser } from 'saxes';
-import type { Entry } from './opm';
+import type { Entry } from './opm-keywords';
 import { problem } from './raw';
 import type { Problem } from './types';
 
