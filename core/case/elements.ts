@@ -1,9 +1,9 @@
-import { AU_KM, SECONDS_PER_DAY } from '../constants';
-import { tdbSecondsFromEpoch } from '../time/convert';
+import { AU_KM } from '../constants';
 import type { Epoch } from '../time/epoch';
 import type { Fielding } from './fielding';
+import { checkPhases, readPhase } from './orbit-phase';
 import { problem } from './raw';
-import type { Centre, ElementsState, OrbitPhase } from './types';
+import type { Centre, ElementsState } from './types';
 import { saidUnit, sizeOf } from './units';
 import { LENGTH_UNITS } from './vocabulary';
 
@@ -39,7 +39,10 @@ export function readElements(
   const argumentOfPeriapsisDeg = f.number('argumentOfPeriapsis', 'argument of periapsis', '°');
   const phase = readPhase(f, e, epoch);
   if (e === null) return null;
-  const periapsis = periapsisOf(f, a, q, e);
+  // One that was set by hand stands over the other.
+  const overA = f.isEdited('periapsisDistance') && !f.isEdited('semiMajorAxis') && q !== null;
+  const overQ = f.isEdited('semiMajorAxis') && !f.isEdited('periapsisDistance') && a !== null;
+  const periapsis = periapsisOf(f, overA ? null : a, overQ ? null : q, e);
   if (
     periapsis === null ||
     inclinationDeg === null ||
@@ -50,6 +53,7 @@ export function readElements(
     return null;
   }
   const periapsisKm = periapsis * km;
+  checkPhases(f, phase, { periapsisKm, eccentricity: e, centre: centre ?? 'Sun', epoch });
   if (centre === 'Sun' && (periapsisKm < 695700 || periapsisKm > 100 * AU_KM)) {
     const raw = f.raw('periapsisDistance') ?? f.raw('semiMajorAxis');
     f.problems.push(
@@ -138,65 +142,4 @@ function periapsisOf(f: Fielding, a: number | null, q: number | null, e: number)
     return null;
   }
   return q ?? fromA;
-}
-
-function readPhase(f: Fielding, e: number | null, epoch: Epoch | null): OrbitPhase | null {
-  const time = f.raw('periapsisTime');
-  if (time !== null && time.text.trim() !== '') {
-    f.show('periapsisTime', 'time of periapsis', time.text, null);
-    const reading = f.epochReading('periapsisTime', time);
-    if (reading === null) return null;
-    const scale = reading.scale ?? epoch?.scale ?? 'TDB';
-    const periapsisEpoch: Epoch = { scale, mjd: reading.mjd, secondOfDay: reading.secondOfDay };
-    if (epoch !== null) {
-      const years =
-        Math.abs(tdbSecondsFromEpoch(epoch) - tdbSecondsFromEpoch(periapsisEpoch)) /
-        (365.25 * SECONDS_PER_DAY);
-      if (years > 500) {
-        f.problems.push(
-          problem(
-            'error',
-            time.line,
-            'time of periapsis',
-            time.text,
-            'an instant within 500 years of the epoch',
-          ),
-        );
-        return null;
-      }
-    }
-    return { kind: 'periapsis-time', periapsisEpoch };
-  }
-  if (f.has('meanAnomaly')) {
-    const meanAnomalyDeg = f.number('meanAnomaly', 'mean anomaly', '°', { from: -1e6, to: 1e6 });
-    return meanAnomalyDeg === null ? null : { kind: 'mean-anomaly', meanAnomalyDeg };
-  }
-  if (f.has('trueAnomaly')) {
-    const trueAnomalyDeg = f.number('trueAnomaly', 'true anomaly', '°', { from: -360, to: 360 });
-    if (trueAnomalyDeg === null) return null;
-    if (e !== null && 1 + e * Math.cos((trueAnomalyDeg * Math.PI) / 180) <= 0) {
-      const raw = f.raw('trueAnomaly');
-      f.problems.push(
-        problem(
-          'error',
-          raw?.line ?? null,
-          'true anomaly',
-          raw?.text ?? '',
-          `an angle inside the asymptotes for an eccentricity of ${e}`,
-        ),
-      );
-      return null;
-    }
-    return { kind: 'true-anomaly', trueAnomalyDeg };
-  }
-  f.problems.push(
-    problem(
-      'error',
-      null,
-      'place on the orbit',
-      '',
-      'a mean anomaly M, a true anomaly, or a time of periapsis',
-    ),
-  );
-  return null;
 }
