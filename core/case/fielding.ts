@@ -175,14 +175,6 @@ export class Fielding {
     return null;
   }
 
-  /** What another unit would make of an absurd state. */
-  hint(kind: 'position' | 'velocity'): string {
-    const unit = this.fields.find(
-      (item) => item.field === (kind === 'position' ? 'lengthUnit' : 'speedUnit'),
-    );
-    return unit === undefined ? '' : `It was taken in ${unit.value}.`;
-  }
-
   note(line: number | null, field: string, read: string, message: string): void {
     this.problems.push(remark('note', line, field, read, message));
   }

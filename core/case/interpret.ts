@@ -7,8 +7,8 @@ import { definite, IndefiniteCovariance } from '../uncertainty/definite';
 import { readElements } from './elements';
 import { Fielding } from './fielding';
 import { problem, type RawCase, remark } from './raw';
-import { absurdity } from './sanity';
 import { readState } from './state';
+import { checkState } from './state-checks';
 import type {
   Choices,
   FieldName,
@@ -17,7 +17,7 @@ import type {
   Physical,
   ReadResult,
 } from './types';
-import { AXES, CENTRES, GM_SETS, SCALES } from './vocabulary';
+import { AXES, CENTRES, GM_SETS, NUMBER_FORMATS, SCALES } from './vocabulary';
 
 /** The packed ephemeris, as days MJD TDB: what an epoch must lie within. */
 const mjdOf = (tdbSeconds: number): number => tdbSeconds / SECONDS_PER_DAY + 51544.5;
@@ -64,6 +64,9 @@ export function interpret(raw: RawCase, choices: Choices): ReadResult {
       ? 'the text does not say; elements are usually on the ecliptic of J2000'
       : 'the text does not say; if it is on the ecliptic of J2000 set it here: the answer changes entirely',
   );
+  if (f.has('numberFormat')) {
+    f.choose('numberFormat', 'decimal sign', NUMBER_FORMATS, 'point', '');
+  }
   const epoch = readEpoch(f);
   const state = isElements ? readElements(f, centre, epoch) : readState(f, centre);
   const gm = f.choose('gm', 'gravitational parameters', GM_SETS, 'DE431', 'default set');
@@ -75,25 +78,9 @@ export function interpret(raw: RawCase, choices: Choices): ReadResult {
     checkCovariance(f, raw.covariance);
   }
 
-  if (state?.kind === 'cartesian' && centre !== null) {
-    const bad = absurdity(
-      centre,
-      Math.hypot(...state.positionKm),
-      Math.hypot(...state.velocityKmS),
-    );
-    if (bad !== null) {
-      const first = f.raw(bad.field === 'position' ? 'x' : 'vx');
-      f.problems.push(
-        remark(
-          'error',
-          first?.line ?? null,
-          bad.field,
-          first?.text ?? '',
-          `${bad.field}: ${bad.message}. Is the unit or the centre another one? ${f.hint(bad.field)}`.trim(),
-        ),
-      );
-    }
-  }
+  // While it is asked how the numbers are written there is no state to judge.
+  const isAsked = f.questions.some(({ field }) => field === 'numberFormat');
+  if (state?.kind === 'cartesian' && centre !== null && !isAsked) checkState(f, state, centre);
 
   const blocked = f.questions.length > 0 || f.problems.some((item) => item.severity === 'error');
   const complete =

@@ -7,8 +7,8 @@ import type { NumberFormat } from './number-format';
 import { readOpm } from './opm';
 import { readKvn } from './opm-kvn';
 import { readXml } from './opm-xml';
-import { emptyRaw, problem, type RawCase } from './raw';
-import type { Choices, FieldName, OrbitCase, ReadResult } from './types';
+import { emptyRaw, problem, type RawCase, remark } from './raw';
+import type { Choices, FieldName, OrbitCase, Problem, ReadResult } from './types';
 
 /**
  * Reads what was pasted or dropped: an OPM (KVN or XML), a case file, or free text.
@@ -22,7 +22,18 @@ export function readCase(text: string, choices: Choices): ReadResult {
     return { format: null, fields: [], problems: [], questions: [], case: null };
   }
   if (looksLikeCaseFile(text)) return readFile(text, choices);
-  return interpret(rawOf(text, choices), choices);
+  const result = interpret(rawOf(text, choices), choices);
+  return { ...result, problems: firstOf(result.problems) };
+}
+
+/** More than this no one reads; a page of something else would give thousands. */
+const MOST_PROBLEMS = 60;
+
+function firstOf(problems: Problem[]): Problem[] {
+  if (problems.length <= MOST_PROBLEMS) return problems;
+  const rest = problems.length - MOST_PROBLEMS;
+  const message = `${rest} more problems are not shown.`;
+  return [...problems.slice(0, MOST_PROBLEMS), remark('error', null, 'text', '', message)];
 }
 
 function rawOf(text: string, choices: Choices): RawCase {

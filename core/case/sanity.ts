@@ -1,4 +1,5 @@
 import { AU_KM, BODY_RADIUS_KM } from '../constants';
+import { gmOfCentre } from './centre-gm';
 import type { Centre } from './types';
 
 /** What is absurd about a state, in words. */
@@ -55,8 +56,22 @@ export function absurdity(centre: Centre, distanceKm: number, speedKmS: number):
 
 const say = (value: number): string => String(Number(value.toPrecision(4)));
 
-/** Speeds relative to the escape speed that an orbit about the Sun plausibly has. */
-export function plausibleAboutSun(distanceKm: number, speedKmS: number): boolean {
-  const parabolic = Math.sqrt((2 * 1.32712e11) / distanceKm);
-  return speedKmS > 0.05 * parabolic && speedKmS < 2 * parabolic;
+/** Escape speed from the centre at a distance, km/s. */
+export function escapeSpeedKmS(centre: Centre, distanceKm: number): number {
+  return Math.sqrt((2 * gmOfCentre(centre, 'DE431')) / distanceKm);
+}
+
+/** Speeds, in parts of the escape speed, between which orbits about the Sun are usual. */
+const USUAL_PARTS = [0.05, 2] as const;
+/** Nothing bound to the Sun passes the Earth or the Moon faster, km/s (retrograde, head-on). */
+const FASTEST_PASS_KM_S = 80;
+
+/** Whether an object could well have a state: what guesses and hints about units go by. */
+export function isPlausible(centre: Centre, distanceKm: number, speedKmS: number): boolean {
+  if (absurdity(centre, distanceKm, speedKmS) !== null) return false;
+  const escapeKmS = escapeSpeedKmS(centre, distanceKm);
+  if (speedKmS < USUAL_PARTS[0] * escapeKmS) return false;
+  return centre === 'Sun' || centre === 'SSB'
+    ? speedKmS < USUAL_PARTS[1] * escapeKmS
+    : speedKmS < FASTEST_PASS_KM_S + escapeKmS;
 }

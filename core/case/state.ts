@@ -1,6 +1,6 @@
 import type { Fielding } from './fielding';
 import { plainNumber, problem } from './raw';
-import { absurdity, plausibleAboutSun } from './sanity';
+import { isPlausible } from './sanity';
 import type { CartesianState, Centre, FieldName, Question, Triple } from './types';
 import { saidUnit, sizeOf } from './units';
 import { LENGTH_UNITS, SPEED_UNITS } from './vocabulary';
@@ -85,7 +85,7 @@ function readUnits(
     candidates.push([said.length ?? 'km', said.speed ?? 'km/s']);
   }
   const sane = candidates.filter(([length, rate]) =>
-    isSane(
+    isPlausible(
       centre ?? 'Sun',
       distance * sizeOf(LENGTH_UNITS, length),
       speed * sizeOf(SPEED_UNITS, rate),
@@ -118,12 +118,6 @@ function readUnits(
     return null;
   }
   return { length: chosen[0], speed: chosen[1] };
-}
-
-function isSane(centre: Centre, distanceKm: number, speedKmS: number): boolean {
-  if (absurdity(centre, distanceKm, speedKmS) !== null) return false;
-  if (centre === 'Sun' || centre === 'SSB') return plausibleAboutSun(distanceKm, speedKmS);
-  return speedKmS > 0.005;
 }
 
 function question(

@@ -69,6 +69,11 @@ export const GM_SETS: Word<GmSet>[] = [
   { value: 'DE405', label: 'DE405 (that of the ephemeris)', spoken: ['DE405'] },
 ];
 
+export const NUMBER_FORMATS: Word<'point' | 'comma'>[] = [
+  { value: 'point', label: 'decimal point', spoken: ['POINT'] },
+  { value: 'comma', label: 'decimal comma', spoken: ['COMMA'] },
+];
+
 export interface Unit {
   /** km, or km/s, of one. */
   size: number;
