@@ -10,7 +10,9 @@ export type NumberFormat = 'point' | 'comma';
 export const NUMBER_TOKEN =
   /(?:(?<![\p{L}_])[+\-\u2212\u2013]|(?<![\p{L}\d_]|\p{L}[-\u2212]))(?:\d[\d.,\u2009\u202f\u00a0'’_]*|[.,]\d+)(?:[eEdD][+\-\u2212]?\d+)?(?![\p{L}\d_])/gu;
 
-const GROUPED_BY_COMMAS = /^[+-]?[1-9]\d{0,2}(?:,\d{3})+(?:\.\d*)?(?:e[+-]?\d+)?$/i;
+/** By thousands, or by lakhs and crores (12,34,567). */
+const GROUPED_BY_COMMAS =
+  /^[+-]?[1-9](?:\d{0,2}(?:,\d{3})+|\d?(?:,\d{2})+,\d{3})(?:\.\d*)?(?:e[+-]?\d+)?$/i;
 const GROUPED_BY_POINTS = /^[+-]?[1-9]\d{0,2}(?:\.\d{3})+(?:,\d*)?(?:e[+-]?\d+)?$/i;
 const WITH_POINT = /^[+-]?(?:\d+\.?\d*|\.\d+)(?:e[+-]?\d+)?$/i;
 const WITH_COMMA = /^[+-]?(?:\d+,?\d*|,\d+)(?:e[+-]?\d+)?$/i;
