@@ -1,5 +1,6 @@
 import { geoCircle, geoDistance, geoGraticule, geoPath } from 'd3-geo';
-import { useEffect, useId, useMemo, useRef } from 'react';
+import { useEffect, useId, useMemo, useRef, useState } from 'react';
+import type { ReportCorridor } from '../../core/report/corridor';
 import type { Approach } from '../../core/report/report';
 import { reportOfTrajectory } from '../ribbon/shown-report';
 import { useSize } from '../ribbon/use-size';
@@ -8,8 +9,19 @@ import { useDesk, useDeskStore } from '../store/context';
 import type { Trajectory } from '../worker/trajectory';
 import { groundTrack, type LonLat, pointsBeneath } from './ground-track';
 import { LAND } from './land';
+import { CorridorKey, MapCorridor } from './MapCorridor';
 import { MapMarks, MapTicks } from './MapMarks';
-import { mapMarks, mapProjection, middleLongitude, placeWords } from './map-geometry';
+import { corridorShapes } from './map-corridor';
+import {
+  closeProjection,
+  graticuleStep,
+  isOnSheet,
+  mapMarks,
+  mapProjection,
+  middleLongitude,
+  placeWords,
+  WIDEST_CLOSE_DEG,
+} from './map-geometry';
 import { mapWords } from './map-words';
 import './ground-map.css';
 
@@ -21,7 +33,8 @@ const THUMBNAIL_PX = 520;
 /** The shade is drawn anew when the Sun has moved so far: a pixel or two of a large map. */
 const SHADE_STEP_RAD = 0.012;
 
-const GRATICULE = geoGraticule().step([30, 30])();
+const graticule = (stepDeg: number) => geoGraticule().step([stepDeg, stepDeg])();
+const WORLD_STEP_DEG = 30;
 const nightOf = ([longitude, latitude]: LonLat) =>
   geoCircle()
     .center([longitude + 180, -latitude])
@@ -41,23 +54,43 @@ export function GroundMap() {
       </p>
     );
   }
-  return <Track approach={principal} trajectory={trajectory} />;
+  return (
+    <Track
+      key={report?.fingerprint}
+      approach={principal}
+      trajectory={trajectory}
+      corridor={report?.corridor ?? null}
+    />
+  );
 }
 
-function Track({ approach, trajectory }: { approach: Approach; trajectory: Trajectory }) {
+function Track(props: {
+  approach: Approach;
+  trajectory: Trajectory;
+  corridor: ReportCorridor | null;
+}) {
+  const { approach, trajectory, corridor } = props;
+  const [wantsWorld, setWantsWorld] = useState(false);
+  const shapes = useMemo(() => (corridor === null ? null : corridorShapes(corridor)), [corridor]);
+  const close = shapes !== null && shapes.radiusDeg <= WIDEST_CLOSE_DEG ? shapes : null;
+  const isClose = close !== null && !wantsWorld;
   const box = useRef<HTMLDivElement>(null);
   const { widthPx, heightPx } = useSize(box);
   const track = useMemo(() => groundTrack(approach, trajectory), [approach, trajectory]);
   const map = useMemo(() => {
     if (track === null || widthPx < 60 || heightPx < 60) return null;
     const closest = pointsBeneath(trajectory, track.zeroTdbSeconds)?.object ?? track.points[0];
-    const projection = mapProjection(
-      widthPx,
-      heightPx - FOOT_PX,
-      middleLongitude(approach, closest),
-    );
-    return { projection, path: geoPath(projection), marks: mapMarks(approach, track, closest) };
-  }, [approach, trajectory, track, widthPx, heightPx]);
+    const height = heightPx - FOOT_PX;
+    const projection = isClose
+      ? closeProjection(widthPx, height, close.centre, close.radiusDeg)
+      : mapProjection(widthPx, height, close?.centre[0] ?? middleLongitude(approach, closest));
+    const all = mapMarks(approach, track, closest);
+    return {
+      projection,
+      path: geoPath(projection),
+      marks: isClose ? all.filter(({ at }) => isOnSheet(projection, at, widthPx, height)) : all,
+    };
+  }, [approach, trajectory, track, widthPx, heightPx, close, isClose]);
   const isThumbnail = widthPx < THUMBNAIL_PX;
   return (
     <div ref={box} className="map">
@@ -67,29 +100,79 @@ function Track({ approach, trajectory }: { approach: Approach; trajectory: Traje
           <div
             className="map-sheets"
             role="img"
-            aria-label={`Ground map. ${mapWords(approach, map.marks)}`}
+            aria-label={`Ground map. ${mapWords(approach, map.marks, corridor)}`}
             style={{ width: widthPx, height: heightPx - FOOT_PX }}
           >
             <svg className="map-svg" aria-hidden="true">
-              <path className="map-graticule" d={map.path(GRATICULE) ?? ''} />
+              <path
+                className="map-graticule"
+                d={
+                  map.path(graticule(isClose ? graticuleStep(close.radiusDeg) : WORLD_STEP_DEG)) ??
+                  ''
+                }
+              />
               <path className="map-land" d={map.path(LAND) ?? ''} />
             </svg>
             <Night map={map} trajectory={trajectory} />
             <svg className="map-svg" aria-hidden="true">
-              <path className="map-frame" d={map.path({ type: 'Sphere' }) ?? ''} />
+              {isClose ? (
+                <path
+                  className="map-frame"
+                  d={`M1 1H${widthPx - 1}V${heightPx - FOOT_PX - 1}H1Z`}
+                />
+              ) : (
+                <path className="map-frame" d={map.path({ type: 'Sphere' }) ?? ''} />
+              )}
               <path
-                className="map-track"
+                className={shapes === null ? 'map-track' : 'map-track map-track-aside'}
                 d={map.path({ type: 'LineString', coordinates: track.points }) ?? ''}
               />
-              {!isThumbnail && <MapTicks map={map} track={track} />}
+              {!isThumbnail && shapes === null && <MapTicks map={map} track={track} />}
+              {shapes !== null && (
+                <MapCorridor
+                  map={map}
+                  shapes={shapes}
+                  withWords={!isThumbnail}
+                  widthPx={widthPx}
+                  heightPx={heightPx - FOOT_PX}
+                />
+              )}
               <MapMarks map={map} withWords={!isThumbnail} widthPx={widthPx} />
             </svg>
             <Now map={map} trajectory={trajectory} />
           </div>
+          {corridor !== null && !isThumbnail && <CorridorKey corridor={corridor} />}
+          {close !== null && !isThumbnail && (
+            <ViewChoice wantsWorld={wantsWorld} choose={setWantsWorld} />
+          )}
           <Beneath trajectory={trajectory} isThumbnail={isThumbnail} />
         </>
       )}
     </div>
+  );
+}
+
+/** The whole Earth, or the corridor alone. */
+function ViewChoice(props: { wantsWorld: boolean; choose: (wantsWorld: boolean) => void }) {
+  const { wantsWorld, choose } = props;
+  const name = useId();
+  const option = (value: boolean, word: string) => (
+    <label>
+      <input
+        type="radio"
+        name={name}
+        checked={wantsWorld === value}
+        onChange={() => choose(value)}
+      />
+      {word}
+    </label>
+  );
+  return (
+    <fieldset className="choice map-view">
+      <legend className="only-spoken">What the map shows</legend>
+      {option(true, 'world')}
+      {option(false, 'corridor')}
+    </fieldset>
   );
 }
 

@@ -1,4 +1,4 @@
-import { type GeoProjection, geoNaturalEarth1 } from 'd3-geo';
+import { type GeoProjection, geoAzimuthalEqualArea, geoNaturalEarth1 } from 'd3-geo';
 import type { Approach } from '../../core/report/report';
 import { grouped } from '../desk/figures';
 import type { GroundTrack, LonLat } from './ground-track';
@@ -29,6 +29,49 @@ export function mapProjection(
       ],
       { type: 'Sphere' },
     );
+}
+
+/** Wider corridors are seen on the map of the whole Earth only, degrees about their middle. */
+export const WIDEST_CLOSE_DEG = 60;
+/** A close map shows at least so much about the middle: smaller, and no coast would be known. */
+const LEAST_CLOSE_DEG = 4;
+const CLOSE_MARGIN = 1.25;
+
+/** A map about a place, in equal area. */
+export function closeProjection(
+  widthPx: number,
+  heightPx: number,
+  centre: LonLat,
+  radiusDeg: number,
+): GeoProjection {
+  const radius = (Math.max(LEAST_CLOSE_DEG, CLOSE_MARGIN * radiusDeg) * Math.PI) / 180;
+  // An angle lies at 2 sin(angle/2) from the middle (Snyder 1987, eq. 24-3).
+  const scale = Math.min(widthPx, heightPx) / 2 / (2 * Math.sin(Math.min(radius, Math.PI / 2) / 2));
+  return geoAzimuthalEqualArea()
+    .rotate([-centre[0], -centre[1]])
+    .translate([widthPx / 2, heightPx / 2])
+    .scale(scale)
+    .clipAngle(120)
+    .clipExtent([
+      [0.5, 0.5],
+      [widthPx - 0.5, heightPx - 0.5],
+    ]);
+}
+
+/** True where a place has a point on the sheet. */
+export function isOnSheet(
+  projection: GeoProjection,
+  at: LonLat,
+  widthPx: number,
+  heightPx: number,
+): boolean {
+  const [x, y] = projection(at) ?? [-1, -1];
+  return x >= 0 && x <= widthPx && y >= 0 && y <= heightPx;
+}
+
+/** Of the graticule about a place, degrees: a few lines on the map. */
+export function graticuleStep(radiusDeg: number): number {
+  return [1, 2, 5, 10].find((step) => Math.max(LEAST_CLOSE_DEG, radiusDeg) / step <= 5) ?? 30;
 }
 
 /** "41.86° S 137.56° E". */
