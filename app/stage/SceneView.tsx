@@ -168,11 +168,12 @@ const DISTANCES: readonly { key: keyof NamedDistances; word: string }[] = [
   { key: 'geosynchronous', word: 'Geosynchronous distance' },
 ];
 
-/** What the Earth scene shows: named distances and the unperturbed path. */
+/** What the scenes show: named distances, the unperturbed path and the spread. */
 function Shown() {
   const { store } = useDesk();
   const distances = useDeskStore((state) => state.namedDistances);
   const unperturbed = useDeskStore((state) => state.showUnperturbed);
+  const spread = useDeskStore((state) => state.showSpread);
   return (
     <details
       className="scene-shown"
@@ -204,6 +205,14 @@ function Shown() {
             onChange={(event) => store.setState({ showUnperturbed: event.target.checked })}
           />
           Unperturbed path
+        </label>
+        <label>
+          <input
+            type="checkbox"
+            checked={spread}
+            onChange={(event) => store.setState({ showSpread: event.target.checked })}
+          />
+          3 σ tube and ellipsoid
         </label>
       </div>
     </details>

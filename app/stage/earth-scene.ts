@@ -25,6 +25,7 @@ import { drawObject, drawPath, visiblePoint } from './object-path';
 import { type Globe, sphere, spheroid } from './occlusion';
 import type { Moment, Sheet } from './sheet';
 import { MOON_GEOCENTRIC, trajectoryCurve } from './trajectory-curve';
+import { drawEllipsoid } from './tube';
 
 /** The Earth-centred scene. */
 
@@ -75,7 +76,9 @@ export function drawEarthScene(sheet: Sheet, moment: Moment, globes: EarthGlobes
   drawEarth(sheet, { axes, toSun, earthPx, earth }, globes.earth);
   drawPath(sheet, moment, 'earth');
   drawGroundPoint(sheet, moment, axes, earthPx);
-  drawObject(sheet, vec3(sample, SAMPLE.object), objectName(moment));
+  const object = vec3(sample, SAMPLE.object);
+  if (moment.spread !== null) drawEllipsoid(sheet, moment.spread, object);
+  drawObject(sheet, object, objectName(moment));
   farArrow(sheet, toSun, 'the Sun', { ...inks.arrow, colour: inks.rgb.sun });
   farArrow(sheet, [1, 0, 0], 'vernal equinox', inks.arrow);
   farArrow(sheet, ECLIPTIC_POLE_ICRF, 'ecliptic north', inks.arrow);

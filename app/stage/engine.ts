@@ -197,7 +197,8 @@ export class SceneEngine {
         state.report !== before.report ||
         state.trajectory !== before.trajectory ||
         state.namedDistances !== before.namedDistances ||
-        state.showUnperturbed !== before.showUnperturbed
+        state.showUnperturbed !== before.showUnperturbed ||
+        state.showSpread !== before.showSpread
       ) {
         this.surface.invalidate();
       } else if (hasGrown) {

@@ -33,6 +33,10 @@ export interface Inks {
   readonly ahead: Stroke;
   readonly unperturbed: Stroke;
   readonly objectHair: Stroke;
+  /** Where the object may be. */
+  readonly tubeEdge: Stroke;
+  readonly tubeRing: Stroke;
+  readonly ellipsoid: Stroke;
   readonly sphereOfInfluence: Stroke;
   readonly moonDistance: Stroke;
   readonly geosynchronous: Stroke;
@@ -82,6 +86,9 @@ function makeInks(palette: Palette): Inks {
     ahead: solid(rgb.object, 1.2),
     unperturbed: dashed(rgb.object, 1.1, 5, 4, 0.85),
     objectHair: solid(rgb.object, 0.9, 0.8),
+    tubeEdge: solid(rgb.object, 0.8, 0.7),
+    tubeRing: solid(rgb.object, 0.6, 0.35),
+    ellipsoid: solid(rgb.object, 1, 0.9),
     sphereOfInfluence: dashed(rgb.inkSoft, 1, 9, 4, 0.9),
     moonDistance: dashed(rgb.inkSoft, 1, 2, 3, 0.9),
     geosynchronous: solid(rgb.inkSoft, 0.9, 0.9),

@@ -34,6 +34,8 @@ export class Moments {
       this.known = { trajectory, version: trajectory.version, report, encounter };
     }
     const encounter = this.known?.encounter ?? encounterOf(report, trajectory);
-    return { trajectory, sample: this.sample, report, encounter, namedDistances, showUnperturbed };
+    const spread = report === null || !state.showSpread ? null : state.spread;
+    const { sample } = this;
+    return { trajectory, sample, report, encounter, namedDistances, showUnperturbed, spread };
   }
 }

@@ -15,6 +15,7 @@ import {
   UNPERTURBED_GEOCENTRIC,
   UNPERTURBED_HELIOCENTRIC,
 } from './trajectory-curve';
+import { drawTube } from './tube';
 
 /** The object's path in a scene: where it has been, where it will be, and without the Earth's pull. */
 
@@ -41,6 +42,7 @@ export function drawPath(sheet: Sheet, moment: Moment, scene: SceneName): void {
   );
   if (moment.showUnperturbed) drawUnperturbed(sheet, moment, scene, own);
   decimate(own, projector, points);
+  if (moment.spread !== null) drawTube(sheet, moment.spread, own, points);
   const now = own.parameterAt(sample[0]);
   const split = splitAt(own, points, now);
   pen.line(split.before, split.before.length / 3, inks.behind);

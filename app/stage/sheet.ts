@@ -1,5 +1,6 @@
 import type { Report } from '../../core/report/report';
 import type { NamedDistances } from '../store/store';
+import type { Spread } from '../worker/spread';
 import type { Trajectory } from '../worker/trajectory';
 import type { Encounter } from './encounter';
 import type { Inks } from './inks';
@@ -33,4 +34,6 @@ export interface Moment {
   readonly encounter: Encounter;
   readonly namedDistances: NamedDistances;
   readonly showUnperturbed: boolean;
+  /** Of the report; null where there is none, or it is not to be shown. */
+  readonly spread: Spread | null;
 }

@@ -17,6 +17,7 @@ import { drawObject, drawPath, dropLine } from './object-path';
 import { type Globe, sphere } from './occlusion';
 import { roundDown } from './scale-bar';
 import type { Moment, Sheet } from './sheet';
+import { drawEllipsoid } from './tube';
 
 /** The Sun-centred scene. */
 
@@ -55,6 +56,7 @@ export function drawSunScene(sheet: Sheet, moment: Moment): void {
   drawPath(sheet, moment, 'sun');
   drawSun(sheet);
   for (const planet of PLANETS) drawPlanet(sheet, planet, sample);
+  if (moment.spread !== null) drawEllipsoid(sheet, moment.spread, object);
   drawObject(sheet, object, objectName(moment));
   farArrow(sheet, [1, 0, 0], 'vernal equinox', inks.arrow);
   farArrow(sheet, ECLIPTIC_POLE_ICRF, 'ecliptic north', inks.arrow);

@@ -70,6 +70,7 @@ export interface DeskStore {
   earthStation: Station;
   namedDistances: NamedDistances;
   showUnperturbed: boolean;
+  showSpread: boolean;
   ribbonTime: RibbonTime;
   sheetOpen: boolean;
 }
@@ -109,6 +110,7 @@ export function createDeskStore(initial: Partial<DeskStore> = {}): DeskStoreApi 
     earthStation: 'north-pole',
     namedDistances: { sphereOfInfluence: true, moonDistance: true, geosynchronous: true },
     showUnperturbed: true,
+    showSpread: true,
     ribbonTime: 'stretched',
     sheetOpen: true,
     ...initial,
