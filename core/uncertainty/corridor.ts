@@ -79,8 +79,9 @@ const LEAST_CELL_KM = 1;
  *
  * Each row counts where its flight without air would meet the ground; one that only grazes the air
  * counts where it enters it. The density is that of the rows spread by a round Gaussian kernel whose
- * width is stated: what is usual for a scatter as wide as the strip (Scott 1992: σ n^(−1/6)), or
- * the spacing of the rows along the strip where that is more, or 50 km over √n where both are less.
+ * width is stated: what is usual for a scatter as wide as the strip (Scott 1992: σ n^(−1/6), n the
+ * effective rows on a stretch as long as the strip is wide), or the spacing of the rows along the
+ * strip where that is more, or 50 km over √n where both are less.
  * Strips are parted where the rows leave a gap in time (half a day) or on the ground (1 500 km and
  * 20 usual distances); for their axes see `axisOf`. Stray strips with less than 0.5 % have no axis.
  *
@@ -101,8 +102,10 @@ export function corridorOf(rows: Float64Array, weights: Float64Array | null): Co
   pieces.sort((a, b) => b.probability - a.probability);
   const widthKm = usualHalfWidth(pieces);
   const lengthKm = pieces.reduce((sum, piece) => sum + piece.lengthKm, 0);
+  // Rows on a stretch of the strip as long as it is wide.
+  const nearby = Math.max(1, effectiveRows * Math.min(1, (2 * widthKm) / Math.max(lengthKm, 1e-9)));
   const kernelKm = Math.max(
-    widthKm * effectiveRows ** (-1 / 6),
+    widthKm * nearby ** (-1 / 6),
     lengthKm / effectiveRows,
     LONE_KERNEL_KM / Math.sqrt(effectiveRows),
   );

@@ -117,6 +117,7 @@ const KERNEL_RINGS = 6;
 const KERNEL_SPOKES = 16;
 /** Cells are made larger until there are no more of them than this. */
 const MOST_CELLS = 2500;
+const CELL_STEP = 1.25;
 /** The thinnest cells that together hold this share are left out, and the rest scaled up. */
 const LEFT_OUT = 0.001;
 
@@ -140,7 +141,7 @@ function kernelNodes(): [number, number][] {
  *
  * @param places    unit vectors and weights
  * @param kernelKm  standard deviation of the kernel
- * @param leastKm   height of the cells, doubled until at most 2500 of them are not empty
+ * @param leastKm   height of the cells, a quarter more until at most 2500 of them are not empty
  * @returns         cells that hold all but a thousandth, the densest first, their probabilities
  *                  scaled to the sum of the weights; the height they came to have
  * Accuracy: places are first gathered by cell, which moves each by less than a cell; the kernel is
@@ -153,7 +154,7 @@ export function densityOf(
 ): { cellKm: number; cells: CorridorCell[] } {
   const nodes = kernelNodes();
   const rows = places.weights.map((_, i) => i);
-  for (let cellKm = leastKm; ; cellKm *= 2) {
+  for (let cellKm = leastKm; ; cellKm *= CELL_STEP) {
     const grid = new SphereCells(cellKm);
     const gathered = grid.gather(places, rows);
     const isCoarsest = cellKm > 1000;
