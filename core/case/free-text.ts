@@ -1,6 +1,7 @@
 import { readEpochText } from '../time/read';
 import { takeBareNumbers } from './bare-numbers';
 import { takeColumns } from './columns';
+import { takeDeviations } from './deviations';
 import { findEpochs } from './epoch-finder';
 import { carryRadians, takeLabels } from './labelled-values';
 import { blank, type Line, linesOf, takeAll } from './line';
@@ -86,6 +87,7 @@ function attempt(text: string, format: NumberFormat): RawCase {
   }
   raw.invented = lines.some(({ original }) => /\binvented\b/i.test(original));
   takeLabelledName(lines, raw);
+  takeDeviations(lines, raw, format);
   takeColumns(lines, raw, format);
   takeLabels(lines, raw, format, 'epoch');
   takeEpoch(lines, raw);
@@ -113,7 +115,7 @@ function tellUnused(lines: readonly Line[], raw: RawCase): void {
         line.number,
         'uncertainty',
         numbers.join(', '),
-        `Uncertainties beside the values are not read from free text; not used: ${numbers.join(', ')}.`,
+        `Numbers beside the values were not understood as uncertainties; not used: ${numbers.join(', ')}.`,
       ),
     );
     return;

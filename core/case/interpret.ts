@@ -4,6 +4,7 @@ import { tdbSecondsFromEpoch } from '../time/convert';
 import type { Epoch, TimeScale } from '../time/epoch';
 import { symmetric } from '../uncertainty/covariance';
 import { definite, IndefiniteCovariance } from '../uncertainty/definite';
+import { deviationCovariance, tellOddDeviations } from './deviation-covariance';
 import { readElements } from './elements';
 import { Fielding } from './fielding';
 import { problem, type RawCase, remark } from './raw';
@@ -77,6 +78,12 @@ export function interpret(raw: RawCase, choices: Choices): ReadResult {
     f.show('covariance', 'covariance', covarianceInWords(raw.covariance), null);
     checkCovariance(f, raw.covariance);
   }
+  const covariance =
+    raw.covariance ??
+    (state === null || axes === null ? null : deviationCovariance(f, raw.deviations, state, axes));
+  if (covariance !== null) {
+    tellOddDeviations(f, covariance, f.raw('covariance')?.line ?? null);
+  }
 
   // While it is asked how the numbers are written there is no state to judge.
   const isAsked = f.questions.some(({ field }) => field === 'numberFormat');
@@ -97,7 +104,7 @@ export function interpret(raw: RawCase, choices: Choices): ReadResult {
           centre,
           axes,
           state,
-          covariance: raw.covariance,
+          covariance,
           nonGravitational,
           physical,
           model: { gm },

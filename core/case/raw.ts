@@ -12,10 +12,24 @@ export interface Raw {
   note: string | null;
 }
 
+/** A standard deviation as written. */
+export interface RawDeviation {
+  text: string;
+  /** By its name in deviation-units; null when none is said. */
+  unit: string | null;
+  /** How many σ it is: 3 behind "3-sigma". */
+  times: number;
+  line: number;
+}
+
 export interface RawCase {
   format: CaseFormat;
   fields: Map<FieldName, Raw>;
   covariance: OrbitCase['covariance'];
+  /** Standard deviations beside the values. */
+  deviations: Map<FieldName, RawDeviation>;
+  /** Those behind values without a label, in their order. */
+  deviationRow: (RawDeviation & { velocity: boolean })[];
   originator: string | null;
   invented: boolean;
   problems: Problem[];
@@ -26,6 +40,8 @@ export const emptyRaw = (format: CaseFormat): RawCase => ({
   format,
   fields: new Map(),
   covariance: null,
+  deviations: new Map(),
+  deviationRow: [],
   originator: null,
   invented: false,
   problems: [],

@@ -155,7 +155,7 @@ describe('units', () => {
 });
 
 describe('uncertainties in free text', () => {
-  it('are said not to be read', () => {
+  it('are said to be unused when they are not those of a whole set', () => {
     const text = `${EPOCH}\na = 1.2 ± 0.001\ne = 0.2\ni = 5\nnode = 10\nperi = 20\nM = 30`;
     const { problems, case: orbit } = readCase(text, {});
     expect(orbit).not.toBeNull();
