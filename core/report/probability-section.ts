@@ -2,6 +2,7 @@ import { BODIES, SECONDS_PER_DAY } from '../constants';
 import { formatIso } from '../time/format';
 import { type Adopted, adopt, intervalOf, type PlainCount } from '../uncertainty/adopt';
 import type { ImpactGroup } from '../uncertainty/tally';
+import { formatNumber } from './figures';
 import type { Approach, ImpactDate, ImpactProbability, LineOfVariations, Report } from './report';
 import { instant } from './sections';
 
@@ -111,13 +112,14 @@ function keysOf(
 /** Why this estimate, and whether the others agree: sentences. */
 function whyOf(adopted: Adopted, plain: PlainCount): string {
   const { from, value, firstOrderAgrees, ensembleAgrees } = adopted;
+  const hits = `${plain.impacts === 0 ? 'none' : formatNumber(plain.impacts, 0)} of ${formatNumber(plain.count, 0)} clones`;
   const reasons: Record<Adopted['from'], string> = {
     'first-order': 'No clones were carried: this is the linear answer, which nothing has tested.',
-    ensemble: `${plain.impacts} of ${plain.count} clones carried by the n-body model hit, enough to count.`,
+    ensemble: `Counted: ${hits} carried by the n-body model hit.`,
     'rare-event':
       value === 0
-        ? `${plain.impacts} of ${plain.count} clones hit, and no way to an impact was found along the line of variations within 6.5 σ.`
-        : `Only ${plain.impacts} of ${plain.count} clones hit, too few to count: impacts were looked for and sampled where they are.`,
+        ? `Looked for and not found: ${hits} hit, and no way to an impact was found along the line of variations within 6.5\u2009σ.`
+        : `Sampled where impacts are: ${hits} hit, too few to count.`,
   };
   const first =
     firstOrderAgrees === null
