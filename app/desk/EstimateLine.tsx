@@ -31,7 +31,7 @@ export function EstimateLine() {
       className={isStale ? 'estimate estimate-old' : 'estimate'}
       aria-label="Clones of the uncertain orbit"
     >
-      <p className="estimate-words">{inWords(estimate)}</p>
+      <p className="estimate-words">{unbroken(inWords(estimate))}</p>
       <p className="only-spoken" role="status">
         {spoken(estimate)}
       </p>
@@ -94,6 +94,9 @@ function inWords({ status, count, wanted, impacts, interval95, error }: Estimate
   const reach = `${grouped(impacts)} ${impacts === 1 ? 'reaches' : 'reach'} the ground`;
   return `${carried} clones carried; ${reach}: ${percentage(impacts / count)} (${percentage(low)} to ${percentage(high)})`;
 }
+
+/** No line ends within a figure. */
+const unbroken = (text: string): string => text.replaceAll('\u2009', '\u202f');
 
 /** Quarter by quarter, and the outcome. */
 function spoken(estimate: EstimateState): string {

@@ -223,7 +223,9 @@ export function createController(deps: ControllerDeps): Controller {
     try {
       const outcome = await own.outcome;
       if (outcome === 'cancelled') return;
-      setEstimate({ status: stopping ? 'stopped' : 'done', note: '' });
+      setEstimate(
+        stopping ? { status: 'stopped', note: '' } : { status: 'done', note: '', fraction: 1 },
+      );
     } catch (error) {
       if (estimate !== own) return;
       setEstimate({ status: 'failed', note: '', error: inWords(error) });

@@ -514,7 +514,7 @@ describe('the estimate', () => {
     expect(state()).toMatchObject({ report: sharper, reportIsStale: false });
     expect(state().trajectory).toBe(before);
     expect(clock.tdbSeconds).toBe(70000);
-    expect(state().estimate.status).toBe('done');
+    expect(state().estimate).toMatchObject({ status: 'done', fraction: 1 });
     expect(await controller.savePlate()).toContain('ffffffff');
     expect(await saved[0].content.text()).toBe('ffffffffff 2');
   });

@@ -22,7 +22,7 @@ afterAll(async () => {
 
 async function words(page: Page): Promise<string> {
   const text = await page.locator('.estimate-words').textContent();
-  return (text ?? '').replaceAll('\u2009', '');
+  return (text ?? '').replaceAll('\u202f', '');
 }
 
 async function wordsLike(page: Page, pattern: RegExp): Promise<string> {
