@@ -26,7 +26,9 @@ import { mapWords } from './map-words';
 import './ground-map.css';
 
 /** Height of the line of words under the map, px. */
-const FOOT_PX = 22;
+const LINE_PX = 22;
+/** Of the key of the corridor over that line. */
+const KEY_PX = 40;
 /** Below this width only the marks are named, and every tick but hours is left out. */
 const THUMBNAIL_PX = 520;
 
@@ -76,22 +78,25 @@ function Track(props: {
   const isClose = close !== null && !wantsWorld;
   const box = useRef<HTMLDivElement>(null);
   const { widthPx, heightPx } = useSize(box);
+  const isThumbnail = widthPx < THUMBNAIL_PX;
+  const footPx = corridor === null || isThumbnail ? LINE_PX : LINE_PX + KEY_PX;
   const track = useMemo(() => groundTrack(approach, trajectory), [approach, trajectory]);
   const map = useMemo(() => {
     if (track === null || widthPx < 60 || heightPx < 60) return null;
     const closest = pointsBeneath(trajectory, track.zeroTdbSeconds)?.object ?? track.points[0];
-    const height = heightPx - FOOT_PX;
+    const height = heightPx - footPx;
     const projection = isClose
       ? closeProjection(widthPx, height, close.centre, close.radiusDeg)
-      : mapProjection(widthPx, height, close?.centre[0] ?? middleLongitude(approach, closest));
-    const all = mapMarks(approach, track, closest);
+      : mapProjection(widthPx, height, shapes?.centre[0] ?? middleLongitude(approach, closest));
+    const all = mapMarks(approach, track, closest).filter(
+      ({ kind }) => kind !== 'closest' || shapes === null,
+    );
     return {
       projection,
       path: geoPath(projection),
       marks: isClose ? all.filter(({ at }) => isOnSheet(projection, at, widthPx, height)) : all,
     };
-  }, [approach, trajectory, track, widthPx, heightPx, close, isClose]);
-  const isThumbnail = widthPx < THUMBNAIL_PX;
+  }, [approach, trajectory, track, widthPx, heightPx, footPx, shapes, close, isClose]);
   return (
     <div ref={box} className="map">
       {map !== null && track !== null && (
@@ -101,7 +106,7 @@ function Track(props: {
             className="map-sheets"
             role="img"
             aria-label={`Ground map. ${mapWords(approach, map.marks, corridor)}`}
-            style={{ width: widthPx, height: heightPx - FOOT_PX }}
+            style={{ width: widthPx, height: heightPx - footPx }}
           >
             <svg className="map-svg" aria-hidden="true">
               <path
@@ -116,10 +121,7 @@ function Track(props: {
             <Night map={map} trajectory={trajectory} />
             <svg className="map-svg" aria-hidden="true">
               {isClose ? (
-                <path
-                  className="map-frame"
-                  d={`M1 1H${widthPx - 1}V${heightPx - FOOT_PX - 1}H1Z`}
-                />
+                <path className="map-frame" d={`M1 1H${widthPx - 1}V${heightPx - footPx - 1}H1Z`} />
               ) : (
                 <path className="map-frame" d={map.path({ type: 'Sphere' }) ?? ''} />
               )}
@@ -134,7 +136,7 @@ function Track(props: {
                   shapes={shapes}
                   withWords={!isThumbnail}
                   widthPx={widthPx}
-                  heightPx={heightPx - FOOT_PX}
+                  heightPx={heightPx - footPx}
                 />
               )}
               <MapMarks map={map} withWords={!isThumbnail} widthPx={widthPx} />

@@ -10,6 +10,8 @@ const ROOM_X_PX = 64;
 const ROOM_Y_PX = 17;
 const TICK_PX = 5;
 const AWAY_PX = 11;
+/** Ends nearer than this to one another have no marks: they would hide what lies between. */
+const SPOT_PX = 24;
 /** Words at the ends are about so wide, px. */
 const END_PX = 200;
 
@@ -30,7 +32,6 @@ export function MapCorridor(props: {
       ))}
       <path className="map-most" d={draw(shapes.most)} />
       <path className="map-half" d={draw(shapes.half)} />
-      <path className="map-axis-under" d={draw(shapes.axes)} />
       <path className="map-axis" d={draw(shapes.axes)} />
       {withWords && (
         <AxisWords
@@ -55,6 +56,9 @@ function AxisWords(props: {
   const place = (at: LonLat) => map.projection(at) ?? [0, 0];
   const ends = shapes.ends.filter(({ at }) => isShown(at));
   const taken = ends.map(({ at }) => place(at));
+  const isSpot =
+    taken.length === 2 &&
+    Math.hypot(taken[0][0] - taken[1][0], taken[0][1] - taken[1][1]) < SPOT_PX;
   const isCrowded = (x: number, y: number): boolean =>
     taken.some(([a, b]) => Math.abs(a - x) < ROOM_X_PX && Math.abs(b - y) < ROOM_Y_PX);
   return (
@@ -97,9 +101,9 @@ function AxisWords(props: {
         const isNear = i > 0 && Math.abs(firstX - x) < END_PX && Math.abs(firstY - y) < 20;
         return (
           <g key={`${words} ${at[0]}`} className="map-axis-end">
-            <circle cx={x} cy={y} r={3.2} />
+            {!isSpot && <circle cx={x} cy={y} r={3.2} />}
             <text
-              x={x + (isRight ? 8 : -8)}
+              x={x + (isRight ? 1 : -1) * (isSpot ? SPOT_PX : 8)}
               y={y + (isNear ? 34 : 16)}
               textAnchor={isRight ? 'start' : 'end'}
             >
@@ -115,28 +119,26 @@ function AxisWords(props: {
 /** What the shades and lines of the corridor mean. */
 export function CorridorKey({ corridor }: { corridor: ReportCorridor }) {
   return (
-    <div className="map-key">
-      <p className="map-key-title">Where it comes down if it hits</p>
-      <ul>
-        <li>
-          <Swatch className="map-half" isBox />
-          50{'\u2009'}% inside
-        </li>
-        <li>
-          <Swatch className="map-most" isBox />
-          95{'\u2009'}% inside
-        </li>
-        <li>
-          <Swatch className="map-axis" isBox={false} />
-          axis, entry in UTC
-        </li>
-      </ul>
-      <p>
-        from {grouped(corridor.effectiveClones)} effective clones, spread by{' '}
+    <p className="map-key">
+      <strong>Where it comes down if it hits</strong>
+      <span>
+        <Swatch className="map-half" isBox />
+        50{'\u2009'}% inside
+      </span>
+      <span>
+        <Swatch className="map-most" isBox />
+        95{'\u2009'}% inside
+      </span>
+      <span>
+        <Swatch className="map-axis" isBox={false} />
+        axis, entry in UTC
+      </span>
+      <span>
+        {grouped(corridor.effectiveClones)} effective clones, spread by{' '}
         {withUnit(grouped(corridor.kernelKm), 'km')}
-      </p>
-      <p>an analysis, not a warning</p>
-    </div>
+      </span>
+      <span>an analysis, not a warning</span>
+    </p>
   );
 }
 

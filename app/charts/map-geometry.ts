@@ -33,8 +33,8 @@ export function mapProjection(
 
 /** Wider corridors are seen on the map of the whole Earth only, degrees about their middle. */
 export const WIDEST_CLOSE_DEG = 60;
-/** A close map shows at least so much about the middle: smaller, and no coast would be known. */
-const LEAST_CLOSE_DEG = 4;
+/** A close map shows at least so much about the middle: the coasts are no better than that. */
+const LEAST_CLOSE_DEG = 0.8;
 const CLOSE_MARGIN = 1.25;
 
 /** A map about a place, in equal area. */
@@ -71,7 +71,9 @@ export function isOnSheet(
 
 /** Of the graticule about a place, degrees: a few lines on the map. */
 export function graticuleStep(radiusDeg: number): number {
-  return [1, 2, 5, 10].find((step) => Math.max(LEAST_CLOSE_DEG, radiusDeg) / step <= 5) ?? 30;
+  return (
+    [0.2, 0.5, 1, 2, 5, 10].find((step) => Math.max(LEAST_CLOSE_DEG, radiusDeg) / step <= 5) ?? 30
+  );
 }
 
 /** "41.86° S 137.56° E". */

@@ -117,7 +117,8 @@ const KERNEL_RINGS = 6;
 const KERNEL_SPOKES = 16;
 /** Cells are made larger until there are no more of them than this. */
 const MOST_CELLS = 2500;
-const CELL_STEP = 1.25;
+/** Least step by which cells grow. */
+const CELL_STEP = 1.15;
 /** The thinnest cells that together hold this share are left out, and the rest scaled up. */
 const LEFT_OUT = 0.001;
 
@@ -141,7 +142,7 @@ function kernelNodes(): [number, number][] {
  *
  * @param places    unit vectors and weights
  * @param kernelKm  standard deviation of the kernel
- * @param leastKm   height of the cells, a quarter more until at most 2500 of them are not empty
+ * @param leastKm   height of the cells, enlarged until at most 2500 of them are not empty
  * @returns         cells that hold all but a thousandth, the densest first, their probabilities
  *                  scaled to the sum of the weights; the height they came to have
  * Accuracy: places are first gathered by cell, which moves each by less than a cell; the kernel is
@@ -154,11 +155,15 @@ export function densityOf(
 ): { cellKm: number; cells: CorridorCell[] } {
   const nodes = kernelNodes();
   const rows = places.weights.map((_, i) => i);
-  for (let cellKm = leastKm; ; cellKm *= CELL_STEP) {
+  let cellKm = leastKm;
+  for (;;) {
     const grid = new SphereCells(cellKm);
     const gathered = grid.gather(places, rows);
     const isCoarsest = cellKm > 1000;
-    if (gathered.length > MOST_CELLS && !isCoarsest) continue;
+    if (gathered.length > MOST_CELLS && !isCoarsest) {
+      cellKm *= stepFor(gathered.length);
+      continue;
+    }
     const spread = new Map<number, number>();
     for (const { weight, mean } of gathered) {
       const [east, north] = acrossOf(mean);
@@ -175,8 +180,13 @@ export function densityOf(
     }
     const cells = dense(grid, spread);
     if (cells.length <= MOST_CELLS || isCoarsest) return { cellKm, cells };
+    cellKm *= stepFor(cells.length);
   }
 }
+
+/** How much larger cells must be for fewer of them: towards what an area would need, never past it. */
+const stepFor = (count: number): number =>
+  Math.max(CELL_STEP, Math.min(2, Math.sqrt(count / MOST_CELLS)));
 
 /** Cells by falling density without the thinnest. */
 function dense(grid: SphereCells, spread: ReadonlyMap<number, number>): CorridorCell[] {

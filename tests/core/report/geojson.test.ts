@@ -91,7 +91,7 @@ describe('the corridor as GeoJSON', () => {
           expect(signedArea(ring)).toBeGreaterThan(0);
         }
       }),
-      { numRuns: 40, seed: 8 },
+      { numRuns: 20, seed: 8 },
     );
   });
 
