@@ -11,7 +11,9 @@ const ROOM_Y_PX = 17;
 const TICK_PX = 5;
 const AWAY_PX = 11;
 /** Ends nearer than this to one another have no marks: they would hide what lies between. */
-const SPOT_PX = 24;
+const SPOT_PX = 60;
+/** Their words stand so far to the side of the spot. */
+const SPOT_AWAY_PX = 48;
 /** Words at the ends are about so wide, px. */
 const END_PX = 200;
 
@@ -55,7 +57,8 @@ function AxisWords(props: {
   const { map, shapes, isShown, widthPx } = props;
   const place = (at: LonLat) => map.projection(at) ?? [0, 0];
   const ends = shapes.ends.filter(({ at }) => isShown(at));
-  const taken = ends.map(({ at }) => place(at));
+  const endPlaces = ends.map(({ at }) => place(at));
+  const taken = [...endPlaces];
   const isSpot =
     taken.length === 2 &&
     Math.hypot(taken[0][0] - taken[1][0], taken[0][1] - taken[1][1]) < SPOT_PX;
@@ -96,17 +99,16 @@ function AxisWords(props: {
       {ends.map(({ at, words }, i) => {
         const [x, y] = place(at);
         const isRight = x + END_PX < widthPx;
-        // Two ends that lie close together have their words one under the other.
-        const [firstX, firstY] = place(ends[0].at);
-        const isNear = i > 0 && Math.abs(firstX - x) < END_PX && Math.abs(firstY - y) < 20;
+        const side = isRight ? 1 : -1;
+        // The words of a spot's two ends stand one under the other beside its middle.
+        const [other] = endPlaces.slice(1 - i);
+        const middle = isSpot ? [(x + other[0]) / 2, (y + other[1]) / 2] : [x, y];
+        const wordsX = isSpot ? middle[0] + side * SPOT_AWAY_PX : x + side * 8;
+        const wordsY = isSpot ? middle[1] + 16 * i : y + 16;
         return (
           <g key={`${words} ${at[0]}`} className="map-axis-end">
             {!isSpot && <circle cx={x} cy={y} r={3.2} />}
-            <text
-              x={x + (isRight ? 1 : -1) * (isSpot ? SPOT_PX : 8)}
-              y={y + (isNear ? 34 : 16)}
-              textAnchor={isRight ? 'start' : 'end'}
-            >
+            <text x={wordsX} y={wordsY} textAnchor={isRight ? 'start' : 'end'}>
               {words}
             </text>
           </g>

@@ -17,7 +17,7 @@ const ECCENTRICITY = Math.sqrt(EARTH_FLATTENING * (2 - EARTH_FLATTENING));
 const LEAST_IN_RING = 6;
 
 /** A place and what lies there. */
-export interface Gathered {
+interface Gathered {
   weight: number;
   /** Mean of the places gathered, a unit vector. */
   mean: Vec3;
