@@ -262,7 +262,12 @@ export function createController(deps: ControllerDeps): Controller {
     const outside = at < trajectory.fromTdbSeconds || at > trajectory.toTdbSeconds;
     if (personMovedClock && !outside) return;
     const principal = report.principal === null ? null : report.approaches[report.principal];
-    setClock(principal?.tdbSeconds ?? report.case.normalised.epochTdbSeconds);
+    // An impact ends on the surface: the periapsis it aims at is never reached.
+    setClock(
+      principal?.surfaceImpact?.tdbSeconds ??
+        principal?.tdbSeconds ??
+        report.case.normalised.epochTdbSeconds,
+    );
     personMovedClock = false;
   }
 
