@@ -3,7 +3,7 @@ import { BODY_INDEX, SECONDS_PER_DAY } from './constants';
 import type { EstimateHost } from './events';
 import { clopperPearson } from './math/beta';
 import { normalsOf } from './math/random';
-import { sealReport } from './report/canonical';
+import { rounded, sealReport } from './report/canonical';
 import { corridorSection } from './report/corridor';
 import { writeFindings } from './report/findings';
 import { probabilitySection } from './report/probability-section';
@@ -208,7 +208,7 @@ export class Estimate {
           ]),
         ),
       }),
-      ...(corridor === null ? {} : { corridor: corridorSection(corridor) }),
+      ...(corridor === null ? {} : { corridor: rounded(corridorSection(corridor)) }),
     };
     return sealReport({ ...draft, ...writeFindings(draft) });
   }

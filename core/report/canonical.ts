@@ -14,6 +14,21 @@ export class NonFiniteError extends Error {
 }
 
 /**
+ * The same with every number to 14 significant digits: what exponentials and logarithms of two engines
+ * differ by in the last digit is no difference between reports.
+ */
+export function rounded<T>(value: T): T {
+  if (typeof value === 'number') return Number(value.toPrecision(14)) as T;
+  if (Array.isArray(value)) return value.map(rounded) as T;
+  if (typeof value === 'object' && value !== null) {
+    return Object.fromEntries(
+      Object.entries(value).map(([key, item]) => [key, rounded(item)]),
+    ) as T;
+  }
+  return value;
+}
+
+/**
  * JSON with sorted keys and no spaces: the form the fingerprint is taken of.
  *
  * @param value plain data; keys whose value is undefined are left out

@@ -2,6 +2,7 @@ import { BODIES, SECONDS_PER_DAY } from '../constants';
 import { formatIso } from '../time/format';
 import { type Adopted, adopt, intervalOf, type PlainCount } from '../uncertainty/adopt';
 import type { ImpactGroup } from '../uncertainty/tally';
+import { rounded } from './canonical';
 import { formatNumber } from './figures';
 import type { Approach, ImpactDate, ImpactProbability, LineOfVariations, Report } from './report';
 import { instant } from './sections';
@@ -52,15 +53,15 @@ export function probabilitySection(
   const firstOrder =
     firstOrders.length === 0 ? null : 1 - firstOrders.reduce((miss, p) => miss * (1 - p), 1);
   return {
-    impactProbability: {
+    impactProbability: rounded({
       ...keysOf(firstOrder, plain, rare),
       dates: datesOf(facts),
       seed: facts.seed,
       reliability: rare?.reliability ?? null,
-    },
+    }),
     approaches: report.approaches.map((item, index) =>
       item.tdbSeconds > epochTdbSeconds && item.impactProbability !== undefined
-        ? { ...item, ...ofApproach(item, index, facts) }
+        ? { ...item, ...rounded(ofApproach(item, index, facts)) }
         : item,
     ),
   };
