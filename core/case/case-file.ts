@@ -15,12 +15,7 @@ const epoch = v.object({
 });
 
 const isSquareOfLabels = ({ labels, matrix }: { labels: string[]; matrix: number[][] }): boolean =>
-  matrix.length === labels.length &&
-  matrix.every(
-    (row, i) =>
-      row.length === labels.length &&
-      row.every((x, j) => Math.abs(x - (matrix[j]?.[i] ?? Number.NaN)) <= 1e-9 * Math.abs(x)),
-  );
+  matrix.length === labels.length && matrix.every((row) => row.length === labels.length);
 
 const namesASet = ({ labels }: { labels: string[] }): boolean => {
   const count = (...names: string[]): number =>
@@ -74,13 +69,15 @@ const orbitCase = v.object({
     ),
     v.check(
       (given) => given?.kind !== 'elements' || isSquareOfLabels(given),
-      'expected a symmetric matrix of as many rows as labels',
+      'expected a square matrix of as many rows as labels',
     ),
     v.check(
       (given) => given?.kind !== 'elements' || namesASet(given),
       'expected e, i, node, peri, one of q and a, one of tp and M, and any of A1, A2, A3',
     ),
   ),
+  /** Epoch of the covariance, where it is said: it must be that of the state. */
+  covarianceEpoch: v.exactOptional(epoch),
   nonGravitational: v.nullable(v.object({ a1AuD2: finite, a2AuD2: finite, a3AuD2: finite })),
   physical: v.object({
     absoluteMagnitude: v.exactOptional(finite),

@@ -2,12 +2,11 @@ import { SECONDS_PER_DAY } from '../constants';
 import { EPHEMERIS_COVERAGE } from '../ephemeris';
 import { tdbSecondsFromEpoch } from '../time/convert';
 import type { Epoch, TimeScale } from '../time/epoch';
-import { symmetric } from '../uncertainty/covariance';
-import { definite, IndefiniteCovariance } from '../uncertainty/definite';
+import { checkCovariance } from './covariance-checks';
 import { deviationCovariance, tellOddDeviations } from './deviation-covariance';
 import { readElements } from './elements';
 import { Fielding } from './fielding';
-import { problem, type RawCase, remark } from './raw';
+import { problem, type RawCase } from './raw';
 import { readState } from './state';
 import { checkState } from './state-checks';
 import type {
@@ -76,11 +75,13 @@ export function interpret(raw: RawCase, choices: Choices): ReadResult {
   const span = readSpan(f, epoch);
   if (raw.covariance !== null) {
     f.show('covariance', 'covariance', covarianceInWords(raw.covariance), null);
-    checkCovariance(f, raw.covariance);
   }
   const covariance =
-    raw.covariance ??
-    (state === null || axes === null ? null : deviationCovariance(f, raw.deviations, state, axes));
+    raw.covariance !== null
+      ? checkCovariance(f, raw.covariance)
+      : state === null || axes === null
+        ? null
+        : deviationCovariance(f, raw.deviations, state, axes);
   if (covariance !== null) {
     tellOddDeviations(f, covariance, f.raw('covariance')?.line ?? null);
   }
@@ -123,30 +124,6 @@ function covarianceInWords(covariance: NonNullable<OrbitCase['covariance']>): st
   return covariance.kind === 'cartesian'
     ? `6 × 6, ${covariance.frame}`
     : `${covariance.labels.length} × ${covariance.labels.length}, ${covariance.labels.join(' ')}`;
-}
-
-/** A covariance must be one: an indefinite matrix is refused with its eigenvalue. */
-function checkCovariance(f: Fielding, covariance: NonNullable<OrbitCase['covariance']>): void {
-  const line = f.raw('covariance')?.line ?? null;
-  const n = covariance.kind === 'cartesian' ? 6 : covariance.labels.length;
-  const matrix =
-    covariance.kind === 'cartesian'
-      ? symmetric(covariance.lowerTriangle)
-      : Float64Array.from(covariance.matrix.flat());
-  try {
-    const { lifted } = definite(matrix, n);
-    if (lifted !== null) {
-      f.note(
-        line,
-        'covariance',
-        '',
-        `The covariance was off by rounding (least eigenvalue ${lifted.toPrecision(2)} of unit variances) and was repaired.`,
-      );
-    }
-  } catch (error) {
-    if (!(error instanceof IndefiniteCovariance)) throw error;
-    f.problems.push(remark('error', line, 'covariance', String(error.eigenvalue), error.message));
-  }
 }
 
 /** The epoch with its scale, within the ephemeris; null with a problem or a question. */

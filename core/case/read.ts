@@ -1,6 +1,7 @@
 import { SECONDS_PER_DAY } from '../constants';
 import { formatIso } from '../time/format';
 import { looksLikeCaseFile, parseCaseFile } from './case-file';
+import { otherEpoch } from './covariance-checks';
 import { readFreeText } from './free-text';
 import { interpret } from './interpret';
 import type { NumberFormat } from './number-format';
@@ -100,7 +101,14 @@ function readFile(text: string, choices: Choices): ReadResult {
     const result = readCase(file.text, { ...file.choices, ...choices });
     return { ...result, format: 'case-file' };
   }
-  const result = interpret(rawOfCase(file.case), choices);
+  const raw = rawOfCase(file.case);
+  const { epoch, covariance, covarianceEpoch } = file.case;
+  const other =
+    covariance === null || covarianceEpoch === undefined
+      ? null
+      : otherEpoch(epoch, covarianceEpoch);
+  if (other !== null) raw.problems.push(other);
+  const result = interpret(raw, choices);
   return { ...result, format: 'case-file' };
 }
 
