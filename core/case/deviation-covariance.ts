@@ -76,7 +76,9 @@ export function deviationCovariance(
   const all = sigmas.filter((value) => value !== null);
   if (all.length < wanted.length) return null;
   const units = noUnit ? '; without a unit, taken in those of the state (angles °, time d)' : '';
-  const note = `the text gives no correlations: taken as uncorrelated, in the axes of the state${units}`;
+  const times = [...given.values()].find((item) => item.times !== 1)?.times;
+  const counted = times === undefined ? '' : `; given as ${times} σ, divided by it`;
+  const note = `the text gives no correlations: taken as uncorrelated, in the axes of the state${units}${counted}`;
   const words = wanted.map(([label], i) => `${label} ${inWords(label, all[i])}`).join(', ');
   f.show('covariance', 'covariance', `σ ${words}; uncorrelated`, null, note);
   f.note(line, 'covariance', '', `Standard deviations were read: σ ${words}; ${note}.`);

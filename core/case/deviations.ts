@@ -14,7 +14,7 @@ const STATE: readonly FieldName[] = [...POSITION, ...VELOCITY];
 const NUMBER = NUMBER_TOKEN.source;
 /** "3-sigma", or "3 sigma" at the head of a line: how many σ the numbers are. */
 const TIMES = String.raw`(?<![\p{L}\d.])[1-9](?:-?|(?<=^\W*[1-9])\s)(?=σ|sigma)`;
-const SIGMA = String.raw`(?:${TIMES})?(?<!\p{L})(?:σ(?!\p{L}{3})|(?:[sS]igmas?|[sS]\.?[dD]\.?|[sS]td\.?(?:[\s-]?dev\w*\.?)?|[sS]tandard deviations?|[uU]ncertaint(?:y|ies))(?=[\s_:=()\[",]|$))`;
+const SIGMA = String.raw`(?:${TIMES})?(?<!\p{L})(?:σ(?!\p{L}{3})|(?:SIGMA|[sS]igmas?|[sS]\.?[dD]\.?|STD|UNCERTAINT(?:Y|IES)|[sS]td\.?(?:[\s-]?dev\w*\.?)?|[sS]tandard deviations?|[uU]ncertaint(?:y|ies))(?=[\s_:=()\[",]|$))`;
 const HEAD = String.raw`${SIGMA}(?:[\s(),]*${SIGMA})*`;
 /** "σx 120 km", "sigma_vx = 1e-6". */
 const NAMED = new RegExp(
@@ -30,6 +30,8 @@ const LISTED = new RegExp(
 );
 const PLUS_MINUS = new RegExp(String.raw`(?:±|\+\/-|\+-)\s*(${NUMBER})(\s*(${UNIT_WORD}))?`, 'gu');
 const VALUE_AT_END = new RegExp(String.raw`${NUMBER}\s*(${UNIT_WORD})?\s*$`, 'u');
+
+const VALUE_ALONE = new RegExp(String.raw`^\s*${NUMBER}\s*(?:${UNIT_WORD})?\s*$`, 'u');
 
 const ELEMENT_NAMES: Readonly<Record<string, FieldName>> = {
   e: 'eccentricity',
@@ -148,10 +150,7 @@ function labelBefore(text: string, from: number, to: number): FieldName | null {
       const end = match.index + match[0].length;
       if (match.index < from || end > to || (best !== null && match.index <= best.at)) continue;
       const between = text.slice(end, to);
-      const isOwn =
-        kind === 'epoch'
-          ? between.length < 50
-          : new RegExp(String.raw`^\s*${NUMBER}\s*(?:${UNIT_WORD})?\s*$`, 'u').test(between);
+      const isOwn = kind === 'epoch' ? between.length < 50 : VALUE_ALONE.test(between);
       if (isOwn) best = { field, at: match.index };
     }
   }

@@ -50,6 +50,7 @@ describe('standard deviations beside a pasted state', () => {
   const forms: [string, string, number[]][] = [
     ['six with units', 'sigma: 120 80 45 km  1e-6 2e-6 1e-6 km/s', six],
     ['six in a row without units', 'σ 120 80 45 1e-6 2e-6 1e-6', six],
+    ['six in capitals', 'SIGMA 120 80 45 km 1 2 1 mm/s', six],
     ['six behind sd', 'sd = 120, 80, 45, 1e-6, 2e-6, 1e-6', six],
     ['six behind std', 'std: 120 80 45 km, 1e-6 2e-6 1e-6 km/s', six],
     ['six below a head', 'Uncertainty (1-sigma):\n120 80 45 km\n1e-6 2e-6 1e-6 km/s', six],
@@ -93,6 +94,12 @@ describe('standard deviations beside a pasted state', () => {
       expect(field?.note).toContain('uncorrelated');
       expect(result.case?.covariance).toMatchObject({ kind: 'cartesian', frame });
     }
+  });
+
+  it('given as three σ say that they were divided', () => {
+    const result = readCase(`${STATE}\n3-sigma 300 km, 6 m/s`, {});
+    const field = result.fields.find((item) => item.field === 'covariance');
+    expect(field?.note).toContain('given as 3 σ, divided by it');
   });
 
   it('without a unit say that they were taken in those of the state', () => {
