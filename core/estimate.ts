@@ -8,6 +8,9 @@ import { corridorSection } from './report/corridor';
 import { writeFindings } from './report/findings';
 import { probabilitySection } from './report/probability-section';
 import type { Report } from './report/report';
+import { scalesSection } from './report/scales';
+import { tdbSecondsFromEpoch } from './time/convert';
+import { readEpochText } from './time/read';
 import { CLONE_POINT, CLONE_ROW, type CloneOutcomes } from './uncertainty/clones';
 import { type Corridor, corridorOf } from './uncertainty/corridor';
 import { estimateRareEvent, linesOfVariations, type RareEvent } from './uncertainty/rare-event';
@@ -175,7 +178,7 @@ export class Estimate {
       count,
       wanted,
       impacts,
-      interval95: clopperPearson(impacts, count, 0.95),
+      interval95: rounded(clopperPearson(impacts, count, 0.95)),
       points: Float32Array.from(points),
       drawn,
     });
@@ -191,27 +194,43 @@ export class Estimate {
       rare === null ? 1 / this.carried : null,
     );
     const { fingerprint: _, findings: __, cautions: ___, ...sections } = report;
+    const probability = probabilitySection({
+      report,
+      epochTdbSeconds: plan.epochTdbSeconds,
+      seed: this.seed,
+      plain: { count: this.carried, impacts: this.tally.earth },
+      plainGroups,
+      rare,
+      rareGroups,
+      lines: new Map(
+        (this.lines ?? []).map(({ nominal, points }) => [
+          report.approaches.indexOf(this.passes[nominal]),
+          points.filter((point) => !Number.isNaN(point.bDotTKm)),
+        ]),
+      ),
+    });
+    const scales = scalesSection({
+      dates: probability.impactProbability.dates,
+      physical: report.case.physical,
+      madeAtTdbSeconds: secondsOfMaking(report.madeAt) ?? plan.epochTdbSeconds,
+      epochTdbSeconds: plan.epochTdbSeconds,
+    });
     const draft = {
       ...sections,
-      ...probabilitySection({
-        report,
-        epochTdbSeconds: plan.epochTdbSeconds,
-        seed: this.seed,
-        plain: { count: this.carried, impacts: this.tally.earth },
-        plainGroups,
-        rare,
-        rareGroups,
-        lines: new Map(
-          (this.lines ?? []).map(({ nominal, points }) => [
-            report.approaches.indexOf(this.passes[nominal]),
-            points.filter((point) => !Number.isNaN(point.bDotTKm)),
-          ]),
-        ),
-      }),
+      ...probability,
       ...(corridor === null ? {} : { corridor: rounded(corridorSection(corridor)) }),
+      ...(scales === null ? {} : { scales: rounded(scales) }),
     };
     return sealReport({ ...draft, ...writeFindings(draft) });
   }
+}
+
+/** Time of making, TDB seconds past J2000; null where it cannot be read. */
+function secondsOfMaking(madeAt: string): number | null {
+  const reading = readEpochText(madeAt);
+  if (reading === null) return null;
+  const { mjd, secondOfDay, scale } = reading;
+  return tdbSecondsFromEpoch({ scale: scale ?? 'UTC', mjd, secondOfDay });
 }
 
 /**

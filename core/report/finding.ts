@@ -13,6 +13,7 @@ export type FindingsDraft = Pick<
   | 'comparison'
   | 'impactProbability'
   | 'corridor'
+  | 'scales'
 >;
 
 export const N_BODY: Finding['basis'] = {

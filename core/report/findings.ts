@@ -15,6 +15,7 @@ import {
 } from './pass-findings';
 import { probabilityFindings } from './probability-findings';
 import type { Finding } from './report';
+import { scalesFinding } from './scales-findings';
 
 const CIVIL_PROTECTION_CAUTION =
   'This is an analysis of one orbit solution, not a warning; public warnings and protective action belong to the responsible civil-protection authority.';
@@ -41,6 +42,7 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
   const findings = [
     { ...answer, kind: 'answer' as const, caution },
     ...probabilityFindings(draft, caution),
+    draft.scales === undefined ? null : scalesFinding(draft.scales, caution),
     draft.corridor === undefined ? null : corridorFinding(draft.corridor, caution),
     ...(main === null
       ? []

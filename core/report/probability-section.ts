@@ -42,9 +42,10 @@ const SAME_APPROACH_S = 30 * SECONDS_PER_DAY;
  *
  * @returns the probability over the span, and the approaches with their own
  */
-export function probabilitySection(
-  facts: ProbabilityFacts,
-): Required<Pick<Report, 'impactProbability' | 'approaches'>> {
+export function probabilitySection(facts: ProbabilityFacts): {
+  impactProbability: ImpactProbability;
+  approaches: Report['approaches'];
+} {
   const { report, epochTdbSeconds, plain, rare } = facts;
   const ahead = report.approaches.filter((item) => item.tdbSeconds > epochTdbSeconds);
   const firstOrders = ahead

@@ -1,5 +1,6 @@
 import * as v from 'valibot';
 import { corridorSchema } from './corridor';
+import { scalesSchema } from './scales';
 
 /**
  * The report: the one object every figure on the page, the plate and the files comes from.
@@ -384,6 +385,8 @@ export const reportSchema = v.object({
   impactProbability: v.optional(impactProbability),
   /** Absent where no clone hits the Earth. */
   corridor: v.optional(corridorSchema),
+  /** Absent where no date of an impact of the Earth was found. */
+  scales: v.optional(scalesSchema),
   findings: v.array(finding),
   cautions: v.array(v.string()),
   fingerprint: text('SHA-256, hex, of the canonical JSON without madeAt and fingerprint.'),

@@ -47,9 +47,10 @@ function spread([low, nominal, high]: Triple, decimals: number): string {
   return a === c ? b : `${b} (${a} to ${c})`;
 }
 
-function torinoWords([low, nominal, high]: Scales['highestTorino']): string {
-  if (low === null || nominal === null || high === null) {
-    return 'Torino scale not given, since its diagram, of which only the written limits are modelled, decides here';
-  }
-  return `Torino scale ${low === high ? nominal : `${nominal} (${low} to ${high})`}`;
+function torinoWords(range: Scales['highestTorino']): string {
+  if (range === null) return 'Torino scale not defined, more than a hundred years ahead';
+  const [low, high] = range;
+  return low === high
+    ? `Torino scale ${low}`
+    : `Torino scale ${low} to ${high}, by the words of its categories and the range of sizes`;
 }

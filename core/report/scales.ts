@@ -1,6 +1,12 @@
 import * as v from 'valibot';
 import { formatIso } from '../time/format';
-import { cumulativePalermo, overRange, palermo, torino } from '../uncertainty/scales';
+import {
+  cumulativePalermo,
+  overRange,
+  palermo,
+  type TorinoRange,
+  torino,
+} from '../uncertainty/scales';
 import { energyMt, type SizeInput, sizeOf } from '../uncertainty/size';
 
 /** Palermo and Torino scale in the report, with the range that an unknown size gives. */
@@ -12,14 +18,16 @@ const range = (description: string) =>
     v.tuple([finite, finite, finite]),
     v.description(`${description} Least, nominal, largest.`),
   );
-const level = v.nullable(v.pipe(v.number(), v.integer(), v.minValue(0), v.maxValue(10)));
+const level = v.pipe(v.number(), v.integer(), v.minValue(0), v.maxValue(10));
 const palermoRange = v.nullable(
   range('Palermo scale; null where the probability is zero or the date is not ahead.'),
 );
-const torinoRange = v.pipe(
-  v.tuple([level, level, level]),
-  v.description(
-    'Torino scale for the least, nominal and largest size; null where the slanted lines of its diagram decide, which are not modelled, and outside the 100 years it is defined for.',
+const torinoRange = v.nullable(
+  v.pipe(
+    v.tuple([level, level]),
+    v.description(
+      'Torino scale, least and most over the range of sizes and over the categories whose words fit; null outside the 100 years it is defined for.',
+    ),
   ),
 );
 
@@ -98,7 +106,7 @@ export function scalesSection(input: ScalesInput): Scales | null {
       countedFrom,
       dates: [],
       cumulativePalermo: null,
-      highestTorino: [null, null, null],
+      highestTorino: null,
       caution: CAUTION,
     };
   }
@@ -113,7 +121,7 @@ export function scalesSection(input: ScalesInput): Scales | null {
       yearsLeft: left / YEAR_S,
       energyMt: energy,
       palermo: complete(overRange(energy, (mt) => palermo(value, mt, left))),
-      torino: overRange(energy, (mt) => torino(value, mt, left)),
+      torino: spanOf(overRange(energy, (mt) => torino(value, mt, left))),
     };
   });
   return {
@@ -125,7 +133,7 @@ export function scalesSection(input: ScalesInput): Scales | null {
     cumulativePalermo: complete(
       at((i) => cumulativePalermo(all.map((date) => date.palermo?.[i] ?? null))),
     ),
-    highestTorino: at((i) => highest(all.map(({ torino: levels }) => levels[i]))),
+    highestTorino: highest(all.map(({ torino: levels }) => levels)),
     caution: CAUTION,
   };
 }
@@ -138,8 +146,15 @@ function complete([low, nominal, high]: [number | null, number | null, number | 
   return low === null || nominal === null || high === null ? null : [low, nominal, high];
 }
 
-/** Not known where one of them is not. */
-function highest(levels: readonly (number | null)[]): number | null {
-  const known = levels.filter((value) => value !== null);
-  return known.length === levels.length ? Math.max(...known) : null;
+function spanOf(levels: readonly (TorinoRange | null)[]): TorinoRange | null {
+  const known = levels.filter((level) => level !== null);
+  if (known.length === 0) return null;
+  return [Math.min(...known.map(([low]) => low)), Math.max(...known.map(([, high]) => high))];
+}
+
+/** The highest of the dates: of their least and of their most. */
+function highest(levels: readonly (TorinoRange | null)[]): TorinoRange | null {
+  const known = levels.filter((level) => level !== null);
+  if (known.length === 0) return null;
+  return [Math.max(...known.map(([low]) => low)), Math.max(...known.map(([, high]) => high))];
 }

@@ -4,6 +4,9 @@ import type { Range } from './size';
 
 const JULIAN_YEAR_S = 365.25 * 86400;
 
+/** Impacts a year of at least an energy in Mt (Chesley et al. 2002). */
+const backgroundPerYear = (energyMt: number): number => 0.03 * energyMt ** -0.8;
+
 /**
  * Palermo scale, log10 of the probability over that of the background until then.
  *
@@ -16,7 +19,9 @@ const JULIAN_YEAR_S = 365.25 * 86400;
  */
 export function palermo(probability: number, energyMt: number, secondsLeft: number): number | null {
   if (!(probability > 0 && energyMt > 0 && secondsLeft > 0)) return null;
-  const value = Math.log10(probability / (0.03 * energyMt ** -0.8 * (secondsLeft / JULIAN_YEAR_S)));
+  const value = Math.log10(
+    probability / (backgroundPerYear(energyMt) * (secondsLeft / JULIAN_YEAR_S)),
+  );
   return Number.isFinite(value) ? value : null;
 }
 
@@ -36,25 +41,48 @@ const ONE_PERCENT = 0.01;
 const LOCAL_MT = 1;
 const REGIONAL_MT = 100;
 const GLOBAL_MT = 1e5;
+/** "The next few decades" of the categories 0 and 1, years. */
+const FEW_DECADES = 30;
+
+/** Least and most of the categories whose words fit. */
+export type TorinoRange = [least: number, most: number];
 
 /**
- * Torino scale where the words of its categories decide.
+ * Torino scale, read from the words of its categories.
  *
- * Which numbers stand for the words (1 Mt, 100 Mt, 1e5 Mt; 1 %, 99 %) is from memory. The slanted
- * lines of the published diagram, which part 0 from 1 and 2, 4 from 5 and 6 from 7, are not here:
- * no digits of them were at hand, so the answer is null between them rather than a guess.
+ * The published diagram parts 0 from 1 and 2, 4 from 5 and 6 from 7 by slanted lines that are not at
+ * hand in digits; where the words leave two or three categories open, all of them are given. Our
+ * reading: "well below", "about the same as" and more than the chance that an object of the same size
+ * hits within the next few decades are below 1 %, 1 to 30 % and above ten times of the background over
+ * thirty years (Chesley et al. 2002), with two categories where those meet. The limits 1 Mt, 100 Mt,
+ * 1e5 Mt, 1 % and 99 % are from memory.
  *
- * @returns 0 to 10; null where the diagram decides, and more than 100 years ahead
+ * @param probability of the impact
+ * @param energyMt    Mt of TNT
+ * @param secondsLeft until the impact, s
+ * @returns null in the past and more than 100 years ahead
  * Source: Binzel (2000), Planet. Space Sci. 48, 297; words: Morrison et al. (2004).
  */
-export function torino(probability: number, energyMt: number, secondsLeft: number): number | null {
+export function torino(
+  probability: number,
+  energyMt: number,
+  secondsLeft: number,
+): TorinoRange | null {
   if (!(secondsLeft > 0 && secondsLeft <= TORINO_YEARS * JULIAN_YEAR_S)) return null;
-  if (probability === 0 || energyMt < LOCAL_MT) return 0;
+  if (probability === 0 || energyMt < LOCAL_MT) return [0, 0];
   if (probability >= CERTAIN) {
-    if (energyMt < REGIONAL_MT) return 8;
-    return energyMt < GLOBAL_MT ? 9 : 10;
+    if (energyMt < REGIONAL_MT) return [8, 8];
+    return energyMt < GLOBAL_MT ? [9, 9] : [10, 10];
   }
-  return probability >= ONE_PERCENT && energyMt < REGIONAL_MT ? 3 : null;
+  if (probability >= ONE_PERCENT) {
+    if (energyMt < REGIONAL_MT) return [3, 3];
+    return energyMt < GLOBAL_MT ? [4, 5] : [6, 7];
+  }
+  const background = backgroundPerYear(energyMt) * FEW_DECADES;
+  if (probability < 0.01 * background) return [0, 0];
+  if (probability < 0.3 * background) return [0, 1];
+  const most = energyMt < GLOBAL_MT ? 2 : 6;
+  return probability <= 10 * background ? [1, most] : [2, most];
 }
 
 /** For the least, nominal and largest energy. */

@@ -1,6 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import { cumulativePalermo, palermo } from '../../core/uncertainty/scales';
+import { cumulativePalermo, palermo, torino } from '../../core/uncertainty/scales';
 import { energyMt } from '../../core/uncertainty/size';
 
 interface Row {
@@ -9,6 +9,7 @@ interface Row {
   energy: string;
   dt: string;
   ps: string;
+  ts: string;
   mass: string;
   v_imp: string;
 }
@@ -32,6 +33,17 @@ describe('published impact possibilities of the open small-body record (source i
       const close = Math.abs(value - Number(row.ps)) <= tolerance;
       expect([row.date, power, value, close]).toEqual([row.date, power, value, true]);
     }
+  });
+
+  it('have the published Torino scale, where it is defined', () => {
+    let defined = 0;
+    for (const row of rows) {
+      const range = torino(Number(row.ip), Number(row.energy), Number(row.dt) * YEAR_S);
+      if (range === null) continue;
+      defined += 1;
+      expect([row.date, range]).toEqual([row.date, [Number(row.ts), Number(row.ts)]]);
+    }
+    expect(defined).toBe(rows.filter((row) => Number(row.dt) <= 100).length);
   });
 
   it('add up to the sum of their powers of ten', () => {

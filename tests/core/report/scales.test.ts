@@ -44,7 +44,7 @@ describe('the scales of the report', () => {
     const scales = scalesSection(input({ dates: [earth(40, 0)] }));
     expect(scales?.dates[0].palermo).toBeNull();
     expect(scales?.cumulativePalermo).toBeNull();
-    expect(scales?.highestTorino).toEqual([0, 0, 0]);
+    expect(scales?.highestTorino).toEqual([0, 0]);
     expect(v.is(scalesSchema, scales)).toBe(true);
   });
 
@@ -60,9 +60,12 @@ describe('the scales of the report', () => {
     expect(words(input({ physical: {} }))).toContain('no energy');
   });
 
-  it('do not call a highest level known where one date is not', () => {
-    const scales = scalesSection(input({ dates: [earth(40, 1e-4), earth(41, 0)] }));
-    expect(scales?.highestTorino).toEqual([null, null, null]);
+  it('give the highest level of the dates, over sizes and over the categories left open', () => {
+    const one = scalesSection(input({ dates: [earth(40, 0)] }));
+    const both = scalesSection(input({ dates: [earth(40, 0), earth(41, 0.02)] }));
+    expect(one?.highestTorino).toEqual([0, 0]);
+    // 1000 Mt at 2 %: regional, category 4 or 5 (Morrison et al. 2004).
+    expect(both?.highestTorino).toEqual([4, 5]);
   });
 
   it('are read aloud with the range that an unknown size gives', () => {

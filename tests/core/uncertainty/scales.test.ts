@@ -33,18 +33,37 @@ describe('the Palermo scale', () => {
   });
 });
 
-describe('the Torino scale where words decide (categories of Morrison et al. 2004; limits from memory)', () => {
+describe('the Torino scale by its words (categories of Morrison et al. 2004; limits from memory)', () => {
+  // Background over thirty years (Chesley et al. 2002): 0.9 E^(−0.8), so 0.0036 at 1000 Mt, 9e-5 at 1e5 Mt.
   it.each([
-    ['a sure impact of local size', 1, 50, 8],
-    ['a sure impact of regional size', 0.995, 1000, 9],
-    ['a sure impact of global size', 1, 1e6, 10],
-    ['at least 1 % of local destruction', 0.02, 8, 3],
-    ['what burns up in the air, however sure', 1, 0.5, 0],
-    ['no impact', 0, 1e6, 0],
-    ['what the diagram decides, below 1 %', 1e-3, 8, null],
-    ['what the diagram decides, regional', 0.03, 1600, null],
-  ])('%s', (_, probability, energy, level) => {
-    expect(torino(probability, energy, 10 * YEAR_S)).toBe(level);
+    ['a sure impact of local size', 1, 50, [8, 8]],
+    ['a sure impact of regional size', 0.995, 1000, [9, 9]],
+    ['a sure impact of global size', 1, 1e6, [10, 10]],
+    ['at least 1 % of local destruction', 0.02, 8, [3, 3]],
+    ['at least 1 % of regional devastation', 0.03, 1600, [4, 5]],
+    ['at least 1 % of a global catastrophe', 0.03, 1e6, [6, 7]],
+    ['what burns up in the air, however sure', 1, 0.5, [0, 0]],
+    ['no impact', 0, 1e6, [0, 0]],
+    ['well below the background', 1e-6, 1000, [0, 0]],
+    ['near the background', 5e-4, 1000, [0, 1]],
+    ['as likely as the background', 3.6e-3, 1000, [1, 2]],
+    ['far above the background, of global size', 5e-3, 1e5, [2, 6]],
+  ])('%s', (_, probability, energy, range) => {
+    expect(torino(probability, energy, 10 * YEAR_S)).toEqual(range);
+  });
+
+  it('never falls with probability', () => {
+    for (const energy of [2, 50, 500, 1e4, 1e6]) {
+      let before = [0, 0];
+      for (let exponent = -9; exponent <= 0; exponent += 0.05) {
+        const range = torino(Math.min(1, 10 ** exponent), energy, YEAR_S);
+        expect(range).not.toBeNull();
+        const [low, high] = range ?? [-1, -1];
+        expect(low).toBeGreaterThanOrEqual(before[0]);
+        expect(high).toBeGreaterThanOrEqual(before[1]);
+        before = [low, high];
+      }
+    }
   });
 
   it('is not defined beyond a hundred years or in the past', () => {

@@ -44,7 +44,7 @@ function placesOf(
 }
 
 describe('the spread along the trajectory of a case with a covariance', () => {
-  let rows = new Float64Array(0);
+  let rows: Float64Array = new Float64Array(0);
   let planned: PlannedClones;
   let approach = 0;
   beforeAll(async () => {
