@@ -102,7 +102,8 @@ function drawPlate(pen: Pen, input: PlateInput): void {
   drawFindings(pen, { ...column, y: top, height: end - top }, chosen, report.cautions);
   if (principal === null || !hasPlane) return;
   const place = { ...column, y: lower, height: LOWER_HEIGHT };
-  if (principal.entry === undefined) {
+  const corridor = report.corridor ?? null;
+  if (principal.entry === undefined && corridor === null) {
     drawTargetPlane(pen, place, principal);
     return;
   }
@@ -113,5 +114,6 @@ function drawPlate(pen: Pen, input: PlateInput): void {
     { ...place, x: COLUMN_LEFT + beside, width: column.width - beside },
     principal,
     trajectory,
+    corridor,
   );
 }
