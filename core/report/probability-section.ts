@@ -34,6 +34,8 @@ export interface ProbabilityFacts {
   lines: ReadonlyMap<number, LineOfVariations>;
 }
 
+/** Fewer impacts are not called a count. */
+const COUNTABLE = 30;
 /** A group of impacts this near a nominal approach belongs to it, s. */
 const SAME_APPROACH_S = 30 * SECONDS_PER_DAY;
 
@@ -121,7 +123,7 @@ function whyOf(adopted: Adopted, plain: PlainCount): string {
     'rare-event':
       value === 0
         ? `Looked for and not found: ${hits} hit, and no way to an impact was found along the line of variations within 6.5\u2009σ.`
-        : `Sampled where impacts are: ${hits} hit, too few to count.`,
+        : `Sampled where impacts are: ${hits} hit, ${plain.impacts < COUNTABLE ? 'too few to count' : 'a less sharp count'}.`,
   };
   const first =
     firstOrderAgrees === null

@@ -18,7 +18,6 @@ export function scalesFinding(scales: Scales, caution: string | null): Finding |
     `Palermo scale ${spread(cumulativePalermo, 1)}${dates.length === 1 ? '' : `, summed over ${dates.length} dates`}; ${torinoWords(highestTorino)}.`,
     `The range is that of the size: diameter ${spread(size.diameterM, 0)}\u2009m, energy ${spread(most, 1)}\u2009Mt of TNT.`,
     ...assumed,
-    'At zero the Palermo scale says as likely as an impact of that size by any other object until then, at −2 a hundredth of that.',
   ];
   return finding(
     'scales',
@@ -36,7 +35,8 @@ export function scalesFinding(scales: Scales, caution: string | null): Finding |
 
 const BASIS: Finding['basis'] = {
   model: 'impact dates of the adopted estimate; a sphere of the given or assumed size and density',
-  formula: 'log10(PI / (f_B ΔT)), f_B = 0.03 E^(−0.8); D = 1329 km/√p · 10^(−H/5)',
+  formula:
+    'log10(PI / (f_B ΔT)), f_B = 0.03 E^(−0.8): 0 is as likely as an impact of that size by any other object until then, −2 a hundredth of that; D = 1329 km/√p · 10^(−H/5)',
   source:
     'Chesley et al. 2002; Binzel 2000; Morrison et al. 2004; Fowler & Chillemi 1992; Pravec & Harris 2007',
 };
