@@ -8,6 +8,7 @@ import { createEphemeris, type Ephemeris, loadEphemeris } from './ephemeris';
 import { Estimate, MOST_CLONES } from './estimate';
 import { reportJsonText } from './report/canonical';
 import { writeEphemerisCsv } from './report/ephemeris-csv';
+import { corridorGeoJson } from './report/geojson';
 import { writeOem } from './report/oem';
 import type { Report } from './report/report';
 import { createCarrier } from './uncertainty/carry';
@@ -23,6 +24,7 @@ const USAGE = `Usage: npm run -s assess -- [options] < case.txt > report.json
   --seed S           seed of its random numbers (default 1)
   --oem FILE         also writes the trajectory as a CCSDS OEM
   --csv FILE         also writes the ephemeris as CSV
+  --geojson FILE     also writes the ground corridor as GeoJSON, where some clone hits the Earth
   --made-at TIME     time of making written in the report (default: now)
   --help
 `;
@@ -121,6 +123,7 @@ async function main(): Promise<void> {
       seed: { type: 'string' },
       oem: { type: 'string' },
       csv: { type: 'string' },
+      geojson: { type: 'string' },
       'made-at': { type: 'string' },
       help: { type: 'boolean' },
     },
@@ -162,6 +165,14 @@ async function main(): Promise<void> {
   const samples = trajectory.samples();
   if (values.oem !== undefined) await writeFile(values.oem, writeOem(report, samples));
   if (values.csv !== undefined) await writeFile(values.csv, writeEphemerisCsv(samples));
+  if (values.geojson !== undefined) {
+    if (report.corridor === undefined) {
+      throw new Refused(
+        '--geojson: there is no ground corridor; no impact of the Earth was found, or none was looked for.',
+      );
+    }
+    await writeFile(values.geojson, corridorGeoJson(report));
+  }
   process.stdout.write(reportJsonText(report));
 }
 
