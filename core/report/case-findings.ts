@@ -130,7 +130,7 @@ export function assumptionsFinding(draft: FindingsDraft): Finding | null {
     ...(assumed.length === 0
       ? []
       : [
-          `${assumed.length === 1 ? 'One field was not in the text and was' : `${assumed.length} fields were not in the text and were`} assumed: ${assumed.join('; ')}.`,
+          `${assumed.length === 1 ? 'One field is not, or not wholly, in the text and was' : `${assumed.length} fields are not, or not wholly, in the text and were`} assumed: ${assumed.join('; ')}.`,
         ]),
     ...(edited.length === 0 ? [] : [`Set by hand: ${edited.join('; ')}.`]),
   ];

@@ -73,4 +73,34 @@ describe('the command line', () => {
     expect(readFileSync(oem, 'utf8')).toMatch(/^CCSDS_OEM_VERS = 3\.0/);
     expect(readFileSync(csv, 'utf8')).toMatch(/^jdTdb,/);
   });
+
+  it('carries the clones it is told to, and gives the same report for the same seed', () => {
+    const may = DEMOS.find(({ id }) => id === 'may-hit')?.text ?? '';
+    const words = ['--to', '2031-05-20', '--made-at', '2030-01-01T00:00:00Z', '--clones', '1000'];
+    const geojson = join(folder, 'corridor.geojson');
+    const one = assess(may, ...words, '--seed', '7', '--geojson', geojson);
+    expect([one.status, one.stderr]).toEqual([0, '']);
+    const { ensemble, seed, adopted } = JSON.parse(one.stdout).impactProbability;
+    expect([ensemble.count, seed]).toEqual([1000, 7]);
+    expect(adopted.value).toBeGreaterThan(0);
+    expect(JSON.parse(readFileSync(geojson, 'utf8')).type).toBe('FeatureCollection');
+    expect(assess(may, ...words, '--seed', '7').stdout).toBe(one.stdout);
+    const other = JSON.parse(assess(may, ...words, '--seed', '8').stdout);
+    expect(other.fingerprint).not.toBe(JSON.parse(one.stdout).fingerprint);
+    const none = JSON.parse(assess(may, ...words.slice(0, 4), '--clones', '0').stdout);
+    expect(none.impactProbability).toBeUndefined();
+  });
+
+  it('refuses a number of clones or a seed that is none, and a corridor where there is none', () => {
+    for (const words of [
+      ['--clones', '1000001'],
+      ['--clones', '-5'],
+      ['--seed', 'x'],
+      ['--geojson', join(folder, 'none.geojson'), '--clones', '0'],
+    ]) {
+      const run = assess(DEMOS[0].text, ...words);
+      expect([run.status, run.stdout]).toEqual([2, '']);
+      expect(run.stderr).toContain(words[0]);
+    }
+  });
 });
