@@ -1,5 +1,7 @@
 import { spawnSync } from 'node:child_process';
 import { DEMOS } from '../../app/desk/demos';
+import { readCase } from '../../core/case/read';
+import type { OrbitCase } from '../../core/case/types';
 import { AU_KM, BODIES, BODY_INDEX, GM_KM3_S2 } from '../../core/constants';
 import { type CloneWatch, carryBatch } from '../../core/dynamics/clone-batch';
 import { CloneField } from '../../core/dynamics/clone-field';
@@ -9,8 +11,9 @@ import { ApproachWatch, type CloneApproach } from '../../core/encounter/clone-wa
 import { EncounterScanner } from '../../core/encounter/scan';
 import type { Ephemeris } from '../../core/ephemeris';
 import { normalsOf } from '../../core/math/random';
+import { assessCase } from '../helpers/assess';
 import { type PlannedClones, planClones } from '../helpers/clones';
-import { median, print } from './print';
+import { median, middle, print } from './print';
 
 const LEAD_S = 60 * 86400;
 const BATCH = 512;
@@ -21,6 +24,28 @@ const TABLE_STEP_S = 3 * 3600;
 const TOLERANCES = [1e-8, 1e-9, 1e-10, 1e-11];
 /** Below this the two are called equally good: rounding of the places. */
 const LEAST_KM = 1e-4;
+
+/**
+ * The first order against the nominal answer alone: the same case assessed with its covariance and
+ * without, ten weeks before its pass and the year after it.
+ */
+export async function benchFirstOrder(): Promise<void> {
+  const reading = readCase(DEMOS[0].text, {});
+  if (reading.case === null) throw new Error('the case does not read');
+  const own = reading.case;
+  const time = async (orbit: OrbitCase): Promise<number> => {
+    const times: number[] = [];
+    for (let i = 0; i < 12; i++) {
+      const start = performance.now();
+      await assessCase(orbit);
+      if (i >= 2) times.push(performance.now() - start);
+    }
+    return middle(times);
+  };
+  const nominal = await time({ ...own, covariance: null });
+  const both = await time(own);
+  print('first order with the nominal answer', both / nominal, 'times the nominal answer alone');
+}
 
 const BLIND: CloneWatch = { beginStep() {}, see: () => false };
 
