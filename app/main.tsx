@@ -26,12 +26,13 @@ const controller = createController({
       import('./plate/make-plate'),
       import('./plate/scene-source'),
     ]);
-    const { theme, spread, plateFindings, sunStation, earthStation, namedDistances } =
+    const { theme, spread, clones, plateFindings, sunStation, earthStation, namedDistances } =
       desk.store.getState();
     return makePlate({
       report,
       trajectory,
       spread,
+      clones,
       palette: paletteOf(theme),
       clockTdbSeconds: desk.clock.tdbSeconds,
       findings: plateFindings,

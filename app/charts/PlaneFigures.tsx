@@ -1,8 +1,10 @@
 import type { Approach } from '../../core/report/report';
 import { grouped, withUnit } from '../desk/figures';
+import type { PlaneAxes } from './plane-axes';
+import { ellipseRows } from './plane-words';
 
 /** The figures of the target plane, from the report. */
-export function PlaneFigures({ approach }: { approach: Approach }) {
+export function PlaneFigures({ approach, axes }: { approach: Approach; axes: PlaneAxes }) {
   const { targetPlane: plane, hyperbola, osculatingAt } = approach;
   if (plane === null || hyperbola === null) return null;
   const rows: [string, number][] = [
@@ -26,6 +28,12 @@ export function PlaneFigures({ approach }: { approach: Approach }) {
           <dt>excess speed</dt>
           <dd className="figures">{withUnit(grouped(hyperbola.excessSpeedKmS, 3), 'km/s')}</dd>
         </div>
+        {ellipseRows(approach, axes).map(([label, figure]) => (
+          <div key={label}>
+            <dt>{label}</dt>
+            <dd className="figures">{figure}</dd>
+          </div>
+        ))}
       </dl>
       <p className="plane-note">
         Seen along the incoming motion. T lies in the ecliptic, R points to its south; ζ runs

@@ -1,66 +1,39 @@
-import { useEffect, useId, useRef } from 'react';
+import { memo, useId } from 'react';
 import type { Approach } from '../../core/report/report';
 import { distanceWords } from '../ribbon/words';
-import { AXES_WORDS, type PlaneAxes, type PlaneGeometry, planeGeometry } from './plane-geometry';
+import { AXES_WORDS, type PlaneAxes } from './plane-axes';
+import type { PlaneGeometry } from './plane-geometry';
+import { planeLine } from './plane-line';
 import { planeWords } from './plane-words';
 
-/** Room for the tick words at the left and at the foot, px. */
-const MARGIN_LEFT = 58;
-const MARGIN_FOOT = 22;
-/** Below this height the sheet is a thumbnail: no ticks, fewer words. */
-const THUMBNAIL_PX = 260;
-const WHEEL_ZOOM = 1 / 500;
 /** Width of a letter in the sheet's small text, px. */
 const LETTER_PX = 6;
+/** Room for the tick words under the sheet, px. */
+const FOOT_PX = 23;
 
-/** The drawing itself: axes, the body, the capture disc, the B vector. */
-export function PlaneSheet(props: {
+/** The drawing itself: axes, the body, the capture disc, the ellipses, the line of variations, B. */
+export const PlaneSheet = memo(function PlaneSheet(props: {
   approach: Approach;
   axes: PlaneAxes;
-  halfKm: number;
-  size: { widthPx: number; heightPx: number };
-  zoom(factor: number): void;
+  geometry: PlaneGeometry;
+  leftPx: number;
+  widthPx: number;
+  heightPx: number;
+  isThumbnail: boolean;
 }) {
-  const { approach, axes, halfKm, size, zoom } = props;
+  const { approach, axes, geometry, leftPx, widthPx, heightPx, isThumbnail } = props;
   const title = useId();
-  const svg = useRef<SVGSVGElement>(null);
-  const latestZoom = useRef(zoom);
-  useEffect(() => {
-    latestZoom.current = zoom;
-  }, [zoom]);
-
-  const hasRoom = size.widthPx > 60 && size.heightPx > 60;
-  useEffect(() => {
-    const element = svg.current;
-    if (element === null || !hasRoom) return;
-    const wheel = (event: WheelEvent) => {
-      event.preventDefault();
-      const lines = event.deltaMode === WheelEvent.DOM_DELTA_LINE ? 16 : 1;
-      latestZoom.current(Math.exp(event.deltaY * lines * WHEEL_ZOOM));
-    };
-    element.addEventListener('wheel', wheel, { passive: false });
-    return () => element.removeEventListener('wheel', wheel);
-  }, [hasRoom]);
-
-  if (!hasRoom) return null;
-  const isThumbnail = size.heightPx < THUMBNAIL_PX;
-  const left = isThumbnail ? 0 : MARGIN_LEFT;
-  const widthPx = size.widthPx - left - 1;
-  const heightPx = size.heightPx - (isThumbnail ? 0 : MARGIN_FOOT) - 1;
-  const geometry = planeGeometry(approach, axes, halfKm, widthPx, heightPx);
-  if (geometry === null) return null;
   return (
     <svg
-      ref={svg}
       className="plane-svg"
-      width={size.widthPx}
-      height={size.heightPx}
+      width={leftPx + widthPx + 1}
+      height={heightPx + (isThumbnail ? 1 : FOOT_PX)}
       role="img"
       aria-labelledby={`${title} ${title}-words`}
     >
       <title id={title}>Target plane</title>
       <desc id={`${title}-words`}>{planeWords(approach)}</desc>
-      <g transform={`translate(${left + 0.5} 0.5)`}>
+      <g transform={`translate(${leftPx + 0.5} 0.5)`}>
         <clipPath id={`${title}-clip`}>
           <rect width={widthPx} height={heightPx} />
         </clipPath>
@@ -68,6 +41,7 @@ export function PlaneSheet(props: {
           <Axes geometry={geometry} axes={axes} widthPx={widthPx} heightPx={heightPx} />
           <Discs approach={approach} geometry={geometry} />
           <Ellipses geometry={geometry} />
+          <Line approach={approach} geometry={geometry} isThumbnail={isThumbnail} />
           <Aim approach={approach} geometry={geometry} widthPx={widthPx} heightPx={heightPx} />
         </g>
         <rect className="plane-frame" width={widthPx} height={heightPx} />
@@ -75,7 +49,7 @@ export function PlaneSheet(props: {
       </g>
     </svg>
   );
-}
+});
 
 function Axes(props: {
   geometry: PlaneGeometry;
@@ -90,17 +64,19 @@ function Axes(props: {
   const back = uprightPointsDown ? -7 : 7;
   // The aim's words stand on its own side.
   const nameSide = aim.x > x ? -1 : 1;
+  const nameX = Math.min(Math.max(x + nameSide * 9, 9), widthPx - 9);
+  const nameY = Math.min(Math.max(y - 9, 16), heightPx - 9);
   return (
     <>
       <path className="plane-axis" d={`M0 ${y}H${widthPx}M${x} 0V${heightPx}`} />
       <path className="plane-tip" d={`M${widthPx - 8} ${y}l-7 -3.5v7Z`} />
       <path className="plane-tip" d={`M${x} ${tip}l-3.5 ${back}h7Z`} />
-      <text className="plane-axis-name" x={widthPx - 12} y={y - 9} textAnchor="end">
+      <text className="plane-axis-name" x={widthPx - 12} y={nameY} textAnchor="end">
         {across}
       </text>
       <text
         className="plane-axis-name"
-        x={x + nameSide * 9}
+        x={nameX}
         y={tip + back}
         dy="0.35em"
         textAnchor={nameSide > 0 ? 'start' : 'end'}
@@ -143,6 +119,37 @@ function Discs({ approach, geometry }: { approach: Approach; geometry: PlaneGeom
   );
 }
 
+/** The line of variations with whole σ marked on it; nothing until clones have been carried. */
+function Line(props: { approach: Approach; geometry: PlaneGeometry; isThumbnail: boolean }) {
+  const { approach, geometry, isThumbnail } = props;
+  if (approach.lineOfVariations === undefined) return null;
+  const { path, ticks } = planeLine(approach.lineOfVariations, geometry.project);
+  return (
+    <>
+      <path className="plane-line" d={path} />
+      {!isThumbnail &&
+        ticks.map(({ sigma, x, y, nx, ny, words }) => (
+          <g key={sigma}>
+            <path
+              className="plane-line"
+              d={`M${x - 4 * nx} ${y - 4 * ny}L${x + 4 * nx} ${y + 4 * ny}`}
+            />
+            <text
+              className="plane-line-words"
+              x={x + 14 * nx}
+              y={y + 14 * ny}
+              dx={-Math.abs(nx) * 2}
+              dy="0.35em"
+              textAnchor={nx > 0.7 ? 'start' : nx < -0.7 ? 'end' : 'middle'}
+            >
+              {words}
+            </text>
+          </g>
+        ))}
+    </>
+  );
+}
+
 /** Where the covariance says it may aim: 1, 2 and 3 σ. */
 function Ellipses({ geometry: { aim, ellipse } }: { geometry: PlaneGeometry }) {
   if (ellipse === null) return null;
@@ -169,20 +176,20 @@ function Aim(props: {
   const dx = aim.x - x;
   const dy = aim.y - y;
   if (!aimIsShown) {
-    // At the frame, on the way to the aim.
-    const reach = Math.min(
-      Math.abs((widthPx / 2 - 4) / (dx === 0 ? 1e-9 : dx)),
-      Math.abs((heightPx / 2 - 4) / (dy === 0 ? 1e-9 : dy)),
-    );
+    const leave = leavingPlace(geometry, widthPx, heightPx);
+    if (leave === null) return null;
+    const words = `B ${distanceWords(km)}, outside the sheet`;
+    const half = (words.length * LETTER_PX) / 2;
     return (
       <>
-        <path className="plane-b" d={`M${x} ${y}l${dx * reach} ${dy * reach}`} />
+        <path className="plane-b" d={`M${x} ${y}L${aim.x} ${aim.y}`} />
         <text
-          x={x + dx * reach * 0.8}
-          y={y + dy * reach * 0.8 + (dy > 0 ? -12 : 12)}
-          textAnchor={dx > 0 ? 'end' : 'start'}
+          x={Math.min(Math.max(leave.x, half + 6), widthPx - half - 6)}
+          y={Math.min(Math.max(leave.y + (dy > 0 ? -18 : 18), 14), heightPx - 14)}
+          dy="0.35em"
+          textAnchor="middle"
         >
-          B, {distanceWords(km)}, outside the sheet
+          {words}
         </text>
       </>
     );
@@ -212,6 +219,24 @@ function Aim(props: {
       </text>
     </>
   );
+}
+
+/** Where the way from the body to an aim beyond the sheet leaves it; null where it does not cross it. */
+function leavingPlace(
+  { x, y, aim }: PlaneGeometry,
+  widthPx: number,
+  heightPx: number,
+): { x: number; y: number } | null {
+  let [from, to] = [0, 1];
+  for (const [start, way, end] of [
+    [x, aim.x - x, widthPx],
+    [y, aim.y - y, heightPx],
+  ]) {
+    const [a, b] = [-start / way, (end - start) / way].sort((one, other) => one - other);
+    from = Math.max(from, a);
+    to = Math.min(to, b);
+  }
+  return from < to ? { x: x + to * (aim.x - x), y: y + to * (aim.y - y) } : null;
 }
 
 function Ticks({ geometry, heightPx }: { geometry: PlaneGeometry; heightPx: number }) {

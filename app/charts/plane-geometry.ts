@@ -1,21 +1,13 @@
 import type { Approach } from '../../core/report/report';
 import { grouped } from '../desk/figures';
-
-/** Which pair of axes the target plane is drawn on. */
-export type PlaneAxes = 'tr' | 'xi-zeta';
-
-export const AXES_WORDS: Record<
-  PlaneAxes,
-  { across: string; upright: string; uprightPointsDown: boolean }
-> = {
-  tr: { across: 'T', upright: 'R', uprightPointsDown: true },
-  'xi-zeta': { across: 'ξ', upright: 'ζ', uprightPointsDown: false },
-};
+import { aimOf, bodyRadiusKm, type Place, type PlaneAxes, turnBetween } from './plane-axes';
+import { centreOn, type PlaneView } from './plane-view';
 
 export interface PlaneGeometry {
-  /** The body's centre, px. */
+  /** The body's centre, px from the sheet's left and top. */
   x: number;
   y: number;
+  pxPerKm: number;
   /** Radii of the body and of its capture disc, px. */
   discPx: number;
   capturePx: number;
@@ -26,42 +18,23 @@ export interface PlaneGeometry {
   /** The 1, 2 and 3 σ ellipses about the aim; null without a covariance. */
   ellipse: { majorPx: number; minorPx: number; turnDeg: number } | null;
   ticks: { across: PlaneTick[]; upright: PlaneTick[] };
+  project: Projection;
+}
+
+/** From B·T and B·R in km to px: x = x0 + xT T + xR R, y = y0 + yT T + yR R. */
+export interface Projection {
+  x0: number;
+  xT: number;
+  xR: number;
+  y0: number;
+  yT: number;
+  yR: number;
 }
 
 interface PlaneTick {
   /** Along its axis, px from the left or from the top. */
   px: number;
   words: string;
-}
-
-/** Both axes run the same way on the sheet, seen along the incoming motion. */
-function aimOf(approach: Approach, axes: PlaneAxes): { across: number; down: number } | null {
-  const plane = approach.targetPlane;
-  if (plane === null) return null;
-  return axes === 'tr'
-    ? { across: plane.bDotTKm, down: plane.bDotRKm }
-    : { across: plane.xiKm, down: -plane.zetaKm };
-}
-
-/** The body's radius as the report has it, km. */
-export function bodyRadiusKm({ distanceKm, distanceRadii }: Approach): number {
-  return distanceKm / distanceRadii;
-}
-
-/** Widest half width, km. */
-const WIDEST_KM = 1e6;
-
-/** Half the sheet's shorter side, km: wide enough for the aim and the capture disc. */
-export function fittingHalfKm(approach: Approach): number {
-  const aim = aimOf(approach, 'tr');
-  const capture = approach.targetPlane?.impactRadiusKm ?? 0;
-  return 1.3 * Math.max(capture, aim === null ? 0 : Math.hypot(aim.across, aim.down));
-}
-
-/** Keeps a half width between the body's radius and a million kilometres, or what fits if wider. */
-export function limitedHalfKm(approach: Approach, halfKm: number): number {
-  const widest = Math.max(WIDEST_KM, fittingHalfKm(approach));
-  return Math.min(Math.max(halfKm, bodyRadiusKm(approach)), widest);
 }
 
 const LEAST_TICK_PX = 64;
@@ -72,41 +45,62 @@ export function roundStep(least: number): number {
   return [1, 2, 5, 10].map((n) => n * power).find((step) => step >= least * (1 - 1e-9)) ?? power;
 }
 
+/** Pixels of a view for each kilometre: the shorter side of the sheet is twice the half width. */
+export function pxPerKmOf(view: PlaneView, widthPx: number, heightPx: number): number {
+  return Math.min(widthPx, heightPx) / 2 / view.halfKm;
+}
+
 /**
  * The target plane in pixels.
  *
- * @param halfKm half the sheet's shorter side, km
- * @returns      null when the approach has no target plane
+ * @returns null when the approach has no target plane
  */
 export function planeGeometry(
   approach: Approach,
   axes: PlaneAxes,
-  halfKm: number,
+  view: PlaneView,
   widthPx: number,
   heightPx: number,
 ): PlaneGeometry | null {
   const plane = approach.targetPlane;
   const aim = aimOf(approach, axes);
   if (plane === null || aim === null) return null;
-  const pxPerKm = Math.min(widthPx, heightPx) / 2 / halfKm;
-  const x = widthPx / 2;
-  const y = heightPx / 2;
+  const pxPerKm = pxPerKmOf(view, widthPx, heightPx);
+  const centre = centreOn(view, approach, axes);
+  const x = widthPx / 2 - centre.across * pxPerKm;
+  const y = heightPx / 2 - centre.down * pxPerKm;
   const at = { x: x + aim.across * pxPerKm, y: y + aim.down * pxPerKm };
   const step = roundStep(LEAST_TICK_PX / pxPerKm);
-  const down = AXES_WORDS[axes].uprightPointsDown ? 1 : -1;
   return {
     x,
     y,
+    pxPerKm,
     discPx: bodyRadiusKm(approach) * pxPerKm,
     capturePx: plane.impactRadiusKm * pxPerKm,
     aim: at,
     aimIsShown: at.x >= 0 && at.x <= widthPx && at.y >= 0 && at.y <= heightPx,
     ellipse: ellipseOf(approach, axes, pxPerKm),
     ticks: {
-      across: ticksAlong(widthPx, pxPerKm, step, 1),
-      upright: ticksAlong(heightPx, pxPerKm, step, down),
+      across: ticksAlong(widthPx, x, pxPerKm, step, 1),
+      upright: ticksAlong(heightPx, y, pxPerKm, step, axes === 'tr' ? 1 : -1),
     },
+    project: projectionOf(turnBetween(approach, axes), x, y, pxPerKm),
   };
+}
+
+function projectionOf(turnRad: number, x: number, y: number, pxPerKm: number): Projection {
+  const cos = Math.cos(turnRad) * pxPerKm;
+  const sin = Math.sin(turnRad) * pxPerKm;
+  return { x0: x, xT: cos, xR: -sin, y0: y, yT: sin, yR: cos };
+}
+
+/** B·T and B·R of a point on the sheet, km. */
+export function unprojected(project: Projection, xPx: number, yPx: number): Place {
+  const { x0, xT, xR, y0, yT, yR } = project;
+  const scale = xT * yR - xR * yT;
+  const x = xPx - x0;
+  const y = yPx - y0;
+  return { across: (x * yR - y * xR) / scale, down: (y * xT - x * yT) / scale };
 }
 
 /** Half axes of the 1 σ ellipse, and its turn on the sheet (clockwise, as SVG turns). */
@@ -120,10 +114,19 @@ function ellipseOf(approach: Approach, axes: PlaneAxes, pxPerKm: number): PlaneG
   };
 }
 
-function ticksAlong(lengthPx: number, pxPerKm: number, step: number, sign: number): PlaneTick[] {
-  const count = Math.floor(lengthPx / 2 / pxPerKm / step);
-  return Array.from({ length: 2 * count + 1 }, (_, i) => {
-    const km = (i - count) * step;
-    return { px: lengthPx / 2 + km * pxPerKm, words: grouped(sign * km) };
+/** Ticks at whole steps from the body's centre, which may lie beyond the sheet. */
+function ticksAlong(
+  lengthPx: number,
+  originPx: number,
+  pxPerKm: number,
+  step: number,
+  sign: number,
+): PlaneTick[] {
+  const first = Math.ceil(-originPx / pxPerKm / step - 1e-9);
+  const last = Math.floor((lengthPx - originPx) / pxPerKm / step + 1e-9);
+  const decimals = Math.max(0, -Math.floor(Math.log10(step) + 1e-9));
+  return Array.from({ length: last - first + 1 }, (_, i) => {
+    const km = (first + i) * step;
+    return { px: originPx + km * pxPerKm, words: grouped(sign * km, decimals) };
   });
 }

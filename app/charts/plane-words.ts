@@ -1,5 +1,7 @@
 import type { Approach } from '../../core/report/report';
+import { grouped, withUnit } from '../desk/figures';
 import { distanceWords } from '../ribbon/words';
+import type { PlaneAxes } from './plane-axes';
 
 const THE: Partial<Record<Approach['body'], string>> = { Earth: 'the Earth', Moon: 'the Moon' };
 
@@ -14,4 +16,18 @@ export function planeWords(approach: Approach): string {
 /** Why there is no target plane. */
 export function boundWords({ body }: Approach): string {
   return `There is no target plane: at its closest the object is bound to ${THE[body] ?? body} and comes in on no hyperbola.`;
+}
+
+/** The 1 σ ellipse in figures, on the axes shown; nothing without a covariance. */
+export function ellipseRows(approach: Approach, axes: PlaneAxes): [string, string][] {
+  const ellipse = approach.uncertainty?.ellipse ?? null;
+  if (ellipse === null) return [];
+  const { semiMajorKm, semiMinorKm, angleTrDeg, angleXiZetaDeg } = ellipse;
+  const km = (value: number) => withUnit(grouped(value, value < 100 ? 2 : 0), 'km');
+  const [from, angle] =
+    axes === 'tr' ? ['T towards R', angleTrDeg] : ['ξ towards ζ', angleXiZetaDeg];
+  return [
+    ['1 σ half axes', `${km(semiMajorKm)} × ${km(semiMinorKm)}`],
+    [`major axis, ${from}`, withUnit(grouped(angle, 1), '°')],
+  ];
 }

@@ -1,17 +1,32 @@
-import type { Approach } from '../../core/report/report';
-import { fittingHalfKm, type PlaneGeometry, planeGeometry } from '../charts/plane-geometry';
+import type { Approach, LineOfVariations } from '../../core/report/report';
+import { type PlaneGeometry, type Projection, planeGeometry } from '../charts/plane-geometry';
+import { planeLine } from '../charts/plane-line';
+import { cloneStamps, printClones, wiped } from '../charts/plane-stamp';
+import { fittingView } from '../charts/plane-view';
 import { grouped, withUnit } from '../desk/figures';
+import type { CloneCloud } from '../worker/clone-cloud';
 import { type Area, type Pen, rule, write, writeCaps, writeClear } from './pen';
 
 const CAPS_PX = 16;
 /** A table of figures stands beside the plane where this much room is left, px. */
 const TABLE_PX = 180;
+/** Pixels of the plate to a pixel of the page, for the marks of clones. */
+const MARK_SCALE = 1.4;
 
-/** Where an approach aims, against what it would hit; nothing where it has no target plane. */
-export function drawTargetPlane(pen: Pen, area: Area, approach: Approach): void {
+/**
+ * Where an approach aims, against what it would hit; nothing where it has no target plane.
+ *
+ * @param clones of this approach; null when there are none
+ */
+export function drawTargetPlane(
+  pen: Pen,
+  area: Area,
+  approach: Approach,
+  clones: CloneCloud | null,
+): void {
   const { context, palette } = pen;
   const side = Math.min(area.width, area.height - CAPS_PX);
-  const geometry = planeGeometry(approach, 'tr', fittingHalfKm(approach), side, side);
+  const geometry = planeGeometry(approach, 'tr', fittingView(approach), side, side);
   if (geometry === null) return;
   writeCaps(pen, 'Target plane', area.x, area.y, 17, palette.inkSoft);
   context.save();
@@ -19,11 +34,29 @@ export function drawTargetPlane(pen: Pen, area: Area, approach: Approach): void 
   context.beginPath();
   context.rect(0, 0, side, side);
   context.clip();
+  if (clones !== null) drawClones(pen, clones, geometry, side);
   drawPlane(pen, approach, geometry, side);
   context.restore();
   const left = area.x + side + 24;
   const width = area.x + area.width - left;
   if (width >= TABLE_PX) drawFigures(pen, { ...area, x: left, width }, approach);
+}
+
+/** Printed into a picture of their own and laid on the sheet. */
+function drawClones(pen: Pen, clones: CloneCloud, geometry: PlaneGeometry, side: number): void {
+  const canvas = document.createElement('canvas');
+  canvas.width = canvas.height = Math.ceil(side);
+  const context = canvas.getContext('2d');
+  if (context === null) return;
+  const image = context.createImageData(canvas.width, canvas.height);
+  const picture = { widthPx: canvas.width, heightPx: canvas.height, data: image.data };
+  wiped(picture, pen.palette.object);
+  const stamps = cloneStamps(MARK_SCALE);
+  for (const drawn of ['plain', 'rare'] as const) {
+    printClones(picture, clones.points(drawn), stamps[drawn], geometry.project);
+  }
+  context.putImageData(image, 0, 0);
+  pen.context.drawImage(canvas, 0, 0);
 }
 
 function drawPlane(pen: Pen, approach: Approach, geometry: PlaneGeometry, side: number): void {
@@ -49,6 +82,9 @@ function drawPlane(pen: Pen, approach: Approach, geometry: PlaneGeometry, side: 
       context.stroke();
     }
   }
+  if (approach.lineOfVariations !== undefined) {
+    drawLine(pen, approach.lineOfVariations, geometry.project);
+  }
   rule(pen, [x, y, aim.x, aim.y], palette.object, 2);
   rule(pen, [aim.x - 10, aim.y, aim.x + 10, aim.y], palette.object, 3);
   rule(pen, [aim.x, aim.y - 10, aim.x, aim.y + 10], palette.object, 3);
@@ -65,6 +101,18 @@ function drawPlane(pen: Pen, approach: Approach, geometry: PlaneGeometry, side: 
   // Below, the words keep clear of the axis's name.
   if (away === 1) writeClear(pen, name, x - 12, words, face, 'right');
   else writeClear(pen, name, x, words, face, 'center');
+}
+
+/** The line of variations, with a tick at every whole σ that has room. */
+function drawLine(pen: Pen, line: LineOfVariations, project: Projection): void {
+  const { context, palette } = pen;
+  const { path, ticks } = planeLine(line, project);
+  context.strokeStyle = palette.object;
+  context.lineWidth = 1.5;
+  context.stroke(new Path2D(path));
+  for (const { x, y, nx, ny } of ticks) {
+    rule(pen, [x - 6 * nx, y - 6 * ny, x + 6 * nx, y + 6 * ny], palette.object, 1.5);
+  }
 }
 
 function circle(

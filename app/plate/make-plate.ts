@@ -1,5 +1,6 @@
 import type { Report } from '../../core/report/report';
 import type { Palette } from '../theme/tokens';
+import type { CloneCloud } from '../worker/clone-cloud';
 import type { Spread } from '../worker/spread';
 import type { Trajectory } from '../worker/trajectory';
 import { drawFindings } from './draw-findings';
@@ -18,6 +19,8 @@ interface PlateInput extends SceneRequest {
   trajectory: Trajectory;
   /** Of the report; null without a covariance. */
   spread: Spread | null;
+  /** Of the principal approach; null when there are none. */
+  clones?: CloneCloud | null;
   palette: Palette;
   /** Ids of the findings chosen for the plate. */
   findings: readonly string[];
@@ -104,10 +107,10 @@ function drawPlate(pen: Pen, input: PlateInput): void {
   const place = { ...column, y: lower, height: LOWER_HEIGHT };
   const corridor = report.corridor ?? null;
   if (principal.entry === undefined && corridor === null) {
-    drawTargetPlane(pen, place, principal);
+    drawTargetPlane(pen, place, principal, input.clones ?? null);
     return;
   }
-  drawTargetPlane(pen, { ...place, width: NARROW_PLANE }, principal);
+  drawTargetPlane(pen, { ...place, width: NARROW_PLANE }, principal, input.clones ?? null);
   const beside = NARROW_PLANE + 28;
   drawGround(
     pen,
