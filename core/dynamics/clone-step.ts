@@ -1,5 +1,4 @@
 import { type CloneField, oblateAcceleration } from './clone-field';
-import { DENSE_DOUBLES } from './dop853';
 import { ALL_STAGES, DENSE, NODES, STAGES, WEIGHTS } from './dop853-coefficients';
 import { PLACE_ROWS, VELOCITY_ROWS } from './nystrom';
 
@@ -9,6 +8,15 @@ const END = STAGES;
 /** Numbers of one lane's accelerations. */
 const LANE = ALL_STAGES * 3;
 const ROW_STARTS = Int32Array.from(PLACE_ROWS.starts);
+/** Stages that the dense output uses, and its four rows of weights without the others. */
+const DENSE_STAGES = Int32Array.from(
+  Array.from({ length: ALL_STAGES }, (_, stage) => stage).filter((stage) =>
+    DENSE.some((row) => row[stage] !== 0),
+  ),
+);
+const DENSE_WEIGHTS = Float64Array.from(
+  DENSE.flatMap((row) => Array.from(DENSE_STAGES, (stage) => row[stage])),
+);
 /** Where the acceleration of each entry's stage begins in a lane. */
 const ROW_PLACES = Int32Array.from(PLACE_ROWS.stages, (stage) => stage * 3);
 
@@ -190,37 +198,72 @@ export class CloneStep {
    * @param startAt receives the state they start from (6)
    */
   dense(lane: number, out: Float64Array, startAt: Float64Array): void {
-    const { field, f, start, end, velocities } = this;
+    const { field, f, start, velocities } = this;
     field.prepareDense();
     this.evaluate(END, ALL_STAGES, lane, lane + 1);
     const h = field.length;
     const at = lane * 6;
     const own = lane * LANE;
     for (let k = 0; k < 6; k++) startAt[k] = start[at + k];
-    for (let stage = 0; stage < ALL_STAGES; stage++) {
-      for (let k = 0; k < 3; k++) {
-        let sum = 0;
-        for (let i = VELOCITY_ROWS.starts[stage]; i < VELOCITY_ROWS.starts[stage + 1]; i++) {
-          sum += VELOCITY_ROWS.weights[i] * f[own + VELOCITY_ROWS.stages[i] * 3 + k];
-        }
-        velocities[stage * 3 + k] = start[at + 3 + k] + h * sum;
+    for (let i = 0; i < DENSE_STAGES.length; i++) {
+      const stage = DENSE_STAGES[i];
+      let x = 0;
+      let y = 0;
+      let z = 0;
+      for (let j = VELOCITY_ROWS.starts[stage]; j < VELOCITY_ROWS.starts[stage + 1]; j++) {
+        const w = VELOCITY_ROWS.weights[j];
+        const from = own + VELOCITY_ROWS.stages[j] * 3;
+        x += w * f[from];
+        y += w * f[from + 1];
+        z += w * f[from + 2];
       }
+      velocities[stage * 3] = start[at + 3] + h * x;
+      velocities[stage * 3 + 1] = start[at + 4] + h * y;
+      velocities[stage * 3 + 2] = start[at + 5] + h * z;
     }
-    const half = DENSE_DOUBLES / 7;
-    for (let i = 0; i < half; i++) {
-      const k = i < 3 ? velocities : f;
-      const from = i < 3 ? i : own + i - 3;
+    this.polynomials(velocities, 0, at, out, 0);
+    this.polynomials(f, own, at + 3, out, 3);
+  }
+
+  /**
+   * The polynomials of place (k: velocities of the stages) or velocity (k: accelerations).
+   *
+   * @param k, from    rates at the stages, 3 each
+   * @param at         of the components in the states
+   * @param out, first receives them from the component `first` on
+   */
+  private polynomials(
+    k: Float64Array,
+    from: number,
+    at: number,
+    out: Float64Array,
+    first: number,
+  ): void {
+    const { start, end } = this;
+    const h = this.field.length;
+    for (let i = 0; i < 3; i++) {
       const change = end[at + i] - start[at + i];
-      const first = h * k[from];
-      out[i] = change;
-      out[half + i] = first - change;
-      out[2 * half + i] = 2 * change - (first + h * k[from + END * 3]);
-      for (let row = 0; row < 4; row++) {
-        const weights = DENSE[row];
-        let sum = 0;
-        for (let s = 0; s < ALL_STAGES; s++) sum += weights[s] * k[from + s * 3];
-        out[(3 + row) * half + i] = h * sum;
+      const early = h * k[from + i];
+      const to = first + i;
+      out[to] = change;
+      out[6 + to] = early - change;
+      out[12 + to] = 2 * change - (early + h * k[from + END * 3 + i]);
+    }
+    for (let row = 0; row < 4; row++) {
+      let x = 0;
+      let y = 0;
+      let z = 0;
+      for (let j = 0; j < DENSE_STAGES.length; j++) {
+        const w = DENSE_WEIGHTS[row * DENSE_STAGES.length + j];
+        const rate = from + DENSE_STAGES[j] * 3;
+        x += w * k[rate];
+        y += w * k[rate + 1];
+        z += w * k[rate + 2];
       }
+      const to = 18 + row * 6 + first;
+      out[to] = h * x;
+      out[to + 1] = h * y;
+      out[to + 2] = h * z;
     }
   }
 }
