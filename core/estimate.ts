@@ -212,7 +212,7 @@ export class Estimate {
     const scales = scalesSection({
       dates: probability.impactProbability.dates,
       physical: report.case.physical,
-      madeAtTdbSeconds: secondsOfMaking(report.madeAt) ?? plan.epochTdbSeconds,
+      madeAtTdbSeconds: dayOfMaking(report.madeAt) ?? plan.epochTdbSeconds,
       epochTdbSeconds: plan.epochTdbSeconds,
     });
     const draft = {
@@ -225,12 +225,14 @@ export class Estimate {
   }
 }
 
-/** Time of making, TDB seconds past J2000; null where it cannot be read. */
-function secondsOfMaking(madeAt: string): number | null {
+/**
+ * Start of the UTC day of making, TDB seconds past J2000; null where it cannot be read. The day alone,
+ * so that a report made again the same day is the same.
+ */
+function dayOfMaking(madeAt: string): number | null {
   const reading = readEpochText(madeAt);
   if (reading === null) return null;
-  const { mjd, secondOfDay, scale } = reading;
-  return tdbSecondsFromEpoch({ scale: scale ?? 'UTC', mjd, secondOfDay });
+  return tdbSecondsFromEpoch({ scale: 'UTC', mjd: reading.mjd, secondOfDay: 0 });
 }
 
 /**

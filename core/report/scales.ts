@@ -52,8 +52,8 @@ export const scalesSchema = v.object({
     }),
   ),
   assumed: v.array(v.string()),
-  /** The epoch where a date lies before the time of making. */
-  countedFrom: v.picklist(['time-of-making', 'epoch']),
+  /** The epoch where a date lies before the day of making. */
+  countedFrom: v.picklist(['day-of-making', 'epoch']),
   dates: v.array(dateScales),
   cumulativePalermo: palermoRange,
   highestTorino: torinoRange,
@@ -72,7 +72,7 @@ export interface ScalesInput {
     impactSpeedKmS: number;
   }[];
   physical: SizeInput;
-  /** When the report is made, TDB seconds past J2000. */
+  /** Start of the day on which the report is made, TDB seconds past J2000. */
   madeAtTdbSeconds: number;
   /** Of the case, TDB seconds past J2000. */
   epochTdbSeconds: number;
@@ -84,7 +84,7 @@ const CAUTION =
 const NO_SIZE =
   'Neither an absolute magnitude H nor a diameter is given, so there is no energy to put on the Palermo and Torino scales.';
 const FROM_EPOCH =
-  'A date lies before the time of making: the time left is counted from the epoch of the case.';
+  'A date lies before the day of making: the time left is counted from the epoch of the case.';
 
 /**
  * The scales of all dates on which the Earth may be struck, and their sum.
@@ -96,7 +96,7 @@ export function scalesSection(input: ScalesInput): Scales | null {
   if (dates.length === 0) return null;
   const late = dates.some(({ tdbSeconds }) => tdbSeconds <= input.madeAtTdbSeconds);
   const from = late ? input.epochTdbSeconds : input.madeAtTdbSeconds;
-  const countedFrom = late ? 'epoch' : 'time-of-making';
+  const countedFrom = late ? 'epoch' : 'day-of-making';
   const size = sizeOf(input.physical);
   if (size === null) {
     return {

@@ -470,7 +470,9 @@ describe('the supporting findings', () => {
     expect(text([...fields])).toBe(
       '2 fields are not, or not wholly, in the text and were assumed: axes ICRF; time scale TDB. Set by hand: gravitational parameters DE405.',
     );
-    expect(text([fields[0]])).toBe('One field is not, or not wholly, in the text and was assumed: axes ICRF.');
+    expect(text([fields[0]])).toBe(
+      'One field is not, or not wholly, in the text and was assumed: axes ICRF.',
+    );
     expect(text([fields[2]])).toBe('Set by hand: gravitational parameters DE405.');
     expect(ids(base)).not.toContain('assumptions');
   });

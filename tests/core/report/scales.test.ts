@@ -27,7 +27,7 @@ describe('the scales of the report', () => {
   it('count the time left from the time of making', () => {
     const scales = scalesSection(input());
     expect(v.is(scalesSchema, scales)).toBe(true);
-    expect(scales?.countedFrom).toBe('time-of-making');
+    expect(scales?.countedFrom).toBe('day-of-making');
     // Chesley et al. 2002 by hand: 1e-4 / (0.03 · 1000^−0.8 · 10) = 0.083729, log10 −1.0771.
     expect(scales?.dates[0].palermo?.[1]).toBeCloseTo(-1.0771, 4);
     expect(scales?.cumulativePalermo?.[1]).toBeCloseTo(-1.0771, 4);
