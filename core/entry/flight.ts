@@ -168,6 +168,13 @@ export class Flight {
     return this.body.startMassKg * Math.exp(this.y[LOG_MASS]);
   }
 
+  /** Radius of one body, or of what it has spread to, m. */
+  get radiusM(): number {
+    return this.body.shape === SOLID
+      ? sphereRadiusM(this.massKg, this.body.densityKgM3)
+      : this.y[RADIUS];
+  }
+
   /** Kinetic energy of all of them over the ground, MJ. */
   get kineticMJ(): number {
     const { y } = this;
@@ -351,10 +358,7 @@ export class Flight {
       longitudeRad: place.longitudeRad,
       airSpeedKmS: this.body.airSpeedKmS,
       massKg: this.massKg,
-      radiusM:
-        this.body.shape === SOLID
-          ? sphereRadiusM(this.massKg, this.body.densityKgM3)
-          : this.y[RADIUS],
+      radiusM: this.radiusM,
       dynamicPressurePa: this.body.ramPressurePa,
     });
   }
