@@ -27,10 +27,13 @@ import './ground-map.css';
 
 /** Height of the line of words under the map, px. */
 const LINE_PX = 22;
-/** Of the key of the corridor over that line. */
+/** Of the key of the corridor over that line: in two rows, in three where it is narrow. */
 const KEY_PX = 40;
-/** Below this width only the marks are named, and every tick but hours is left out. */
-const THUMBNAIL_PX = 520;
+const NARROW_KEY_PX = 58;
+const NARROW_PX = 640;
+/** Narrower or lower only the marks are named, and every tick but hours is left out. */
+const THUMBNAIL_WIDTH_PX = 380;
+const THUMBNAIL_HEIGHT_PX = 220;
 
 /** The shade is drawn anew when the Sun has moved so far: a pixel or two of a large map. */
 const SHADE_STEP_RAD = 0.012;
@@ -78,8 +81,9 @@ function Track(props: {
   const isClose = close !== null && !wantsWorld;
   const box = useRef<HTMLDivElement>(null);
   const { widthPx, heightPx } = useSize(box);
-  const isThumbnail = widthPx < THUMBNAIL_PX;
-  const footPx = corridor === null || isThumbnail ? LINE_PX : LINE_PX + KEY_PX;
+  const isThumbnail = widthPx < THUMBNAIL_WIDTH_PX || heightPx < THUMBNAIL_HEIGHT_PX;
+  const keyPx = widthPx < NARROW_PX ? NARROW_KEY_PX : KEY_PX;
+  const footPx = corridor === null || isThumbnail ? LINE_PX : LINE_PX + keyPx;
   const track = useMemo(() => groundTrack(approach, trajectory), [approach, trajectory]);
   const map = useMemo(() => {
     if (track === null || widthPx < 60 || heightPx < 60) return null;

@@ -10,6 +10,8 @@ import { planeWords } from './plane-words';
 const LETTER_PX = 6;
 /** Room for the tick words under the sheet, px. */
 const FOOT_PX = 23;
+/** The aim's words stand clear of an ellipse that is no wider than this at 3 σ, half of it, px. */
+const MOST_CLEAR_PX = 130;
 
 /** The drawing itself: axes, the body, the capture disc, the ellipses, the line of variations, B. */
 export const PlaneSheet = memo(function PlaneSheet(props: {
@@ -173,7 +175,6 @@ function Aim(props: {
   const { approach, geometry, widthPx, heightPx } = props;
   const { x, y, aim, aimIsShown } = geometry;
   const km = approach.hyperbola?.impactParameterKm ?? 0;
-  const dx = aim.x - x;
   const dy = aim.y - y;
   if (!aimIsShown) {
     const leave = leavingPlace(geometry, widthPx, heightPx);
@@ -194,21 +195,8 @@ function Aim(props: {
       </>
     );
   }
-  const outward = dx > 0 ? 1 : -1;
   const words = `B ${distanceWords(km)}`;
-  const half = (words.length * LETTER_PX) / 2;
-  const hasRoomBeside = outward > 0 ? aim.x + 2 * half + 12 < widthPx : aim.x - 2 * half - 12 > 0;
-  // Clear of the upright axis and its name.
-  const clear = x + outward * (half + 22);
-  const label = hasRoomBeside
-    ? { x: aim.x + outward * (half + 11), y: aim.y }
-    : {
-        x: Math.min(
-          Math.max(half + 4, outward > 0 ? Math.max(aim.x, clear) : Math.min(aim.x, clear)),
-          widthPx - half - 4,
-        ),
-        y: aim.y + (dy > 0 ? 16 : -16),
-      };
+  const label = aimLabel(approach, geometry, (words.length * LETTER_PX) / 2, widthPx, heightPx);
   return (
     <>
       <path className="plane-b" d={`M${x} ${y}L${aim.x} ${aim.y}`} />
@@ -219,6 +207,42 @@ function Aim(props: {
       </text>
     </>
   );
+}
+
+/** The middle of the aim's words, which are 2 × `half` px long: clear of the ellipse and of its words. */
+function aimLabel(
+  approach: Approach,
+  { x, y, aim, ellipse, project }: PlaneGeometry,
+  half: number,
+  widthPx: number,
+  heightPx: number,
+): { x: number; y: number } {
+  const clampX = (at: number) => Math.min(Math.max(at, half + 4), widthPx - half - 4);
+  const clampY = (at: number) => Math.min(Math.max(at, 12), heightPx - 12);
+  const across = 3 * (ellipse?.minorPx ?? 0);
+  if (ellipse !== null && across < MOST_CLEAR_PX) {
+    // On the side where the line of variations has no words.
+    const turn = (ellipse.turnDeg * Math.PI) / 180;
+    const normal = { x: -Math.sin(turn), y: Math.cos(turn) };
+    const tick = planeLine(approach.lineOfVariations ?? [], project).ticks.find(
+      ({ sigma }) => sigma === 0,
+    );
+    const facing = tick === undefined ? -1 : -Math.sign(normal.x * tick.nx + normal.y * tick.ny);
+    const away = facing * (across + 14);
+    return {
+      x: clampX(aim.x + normal.x * away + facing * normal.x * half),
+      y: clampY(aim.y + normal.y * away),
+    };
+  }
+  const outward = aim.x > x ? 1 : -1;
+  const hasRoomBeside = outward > 0 ? aim.x + 2 * half + 12 < widthPx : aim.x - 2 * half - 12 > 0;
+  if (hasRoomBeside) return { x: aim.x + outward * (half + 11), y: aim.y };
+  // Clear of the upright axis and its name.
+  const clear = x + outward * (half + 22);
+  return {
+    x: clampX(outward > 0 ? Math.max(aim.x, clear) : Math.min(aim.x, clear)),
+    y: clampY(aim.y + (aim.y > y ? 16 : -16)),
+  };
 }
 
 /** Where the way from the body to an aim beyond the sheet leaves it; null where it does not cross it. */
@@ -253,9 +277,11 @@ function Ticks({ geometry, heightPx }: { geometry: PlaneGeometry; heightPx: numb
       {geometry.ticks.upright.map(({ px, words }) => (
         <g key={words}>
           <path className="plane-tick" d={`M0 ${px}h-5`} />
-          <text className="plane-tick-words" x={-8} y={px} dy="0.35em" textAnchor="end">
-            {words}
-          </text>
+          {px > 5 && (
+            <text className="plane-tick-words" x={-8} y={px} dy="0.35em" textAnchor="end">
+              {words}
+            </text>
+          )}
         </g>
       ))}
       <text className="plane-tick-words" x={-8} y={heightPx + 17} textAnchor="end">

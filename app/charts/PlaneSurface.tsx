@@ -14,7 +14,7 @@ import { fittingView, type PlaneView, panned, zoomed } from './plane-view';
 const MARGIN_LEFT = 70;
 const MARGIN_FOOT = 22;
 /** Below this height the sheet is a thumbnail: always the whole, no ticks, fewer words. */
-const THUMBNAIL_PX = 260;
+const THUMBNAIL_PX = 200;
 const WHEEL_ZOOM = 1 / 500;
 /** How far from the pointer a clone is picked up, px. */
 const PICK_PX = 9;

@@ -55,20 +55,17 @@ function Plane({ approach, cloud }: { approach: Approach; cloud: CloneCloud }) {
   return (
     <div className="plane">
       <div className="plane-body">
-        <div className="plane-main">
-          <div ref={sheet} className="plane-sheet">
-            <PlaneSurface
-              approach={approach}
-              cloud={cloud}
-              axes={axes}
-              view={view}
-              size={size}
-              picked={picked}
-              setView={setView}
-              pick={(clone, byKey) => setPick(clone === null ? null : { of: cloud, clone, byKey })}
-            />
-          </div>
-          <PlaneKey approach={approach} cloud={cloud} />
+        <div ref={sheet} className="plane-sheet">
+          <PlaneSurface
+            approach={approach}
+            cloud={cloud}
+            axes={axes}
+            view={view}
+            size={size}
+            picked={picked}
+            setView={setView}
+            pick={(clone, byKey) => setPick(clone === null ? null : { of: cloud, clone, byKey })}
+          />
         </div>
         <div className="plane-side">
           <div className="plane-controls">
@@ -113,6 +110,7 @@ function Plane({ approach, cloud }: { approach: Approach; cloud: CloneCloud }) {
           <PlaneFigures approach={approach} axes={axes} />
         </div>
       </div>
+      <PlaneKey approach={approach} cloud={cloud} />
       <Said words={said} />
     </div>
   );

@@ -57,8 +57,8 @@ export function cloneStamps(scale: number): CloneStamps {
     return line(Math.min(Math.abs(x), Math.abs(y)), 0.4 * scale);
   };
   return {
-    plain: { pass: stampOf(scale, 0.4, dot), impact: stampOf(3 * scale, 1, saltire) },
-    rare: { pass: stampOf(2 * scale, 0.3, ring), impact: stampOf(3 * scale, 0.55, upright) },
+    plain: { pass: stampOf(scale, 0.3, dot), impact: stampOf(3 * scale, 1, saltire) },
+    rare: { pass: stampOf(2 * scale, 0.24, ring), impact: stampOf(3 * scale, 0.55, upright) },
   };
 }
 

@@ -13,7 +13,7 @@ export interface PlaneView {
 const WIDEST_KM = 1e6;
 /** No ellipse is looked at more closely than this, km. */
 const CLOSEST_KM = 1;
-/** The 3 σ ellipse is taken into the first view as far as this multiple of what must be on it. */
+/** The 3 σ ellipse is taken into the first view as far from the aim as this multiple of what must be on it. */
 const MOST_SPREAD = 2.5;
 const MARGIN = 1.15;
 
@@ -22,13 +22,27 @@ function threeSigmaKm(approach: Approach): number {
   return 3 * (approach.uncertainty?.ellipse?.semiMajorKm ?? 0);
 }
 
-/** The body in the middle; wide enough for the aim, the capture disc and, if it can be, 3 σ. */
+/** Wide enough for the capture disc, the aim and, if it can be, the 3 σ ellipse, whichever the axes. */
 export function fittingView(approach: Approach): PlaneView {
   const aim = aimOf(approach, 'tr') ?? { across: 0, down: 0 };
+  const captureKm = approach.targetPlane?.impactRadiusKm ?? 0;
   const awayKm = Math.hypot(aim.across, aim.down);
-  const needKm = 1.13 * Math.max(approach.targetPlane?.impactRadiusKm ?? 0, awayKm);
-  const spreadKm = Math.min(awayKm + threeSigmaKm(approach), MOST_SPREAD * needKm);
-  return { centre: { across: 0, down: 0 }, halfKm: MARGIN * Math.max(needKm, spreadKm) };
+  const reachKm = Math.min(threeSigmaKm(approach), MOST_SPREAD * Math.max(captureKm, awayKm));
+  const turn = ((approach.uncertainty?.ellipse?.angleTrDeg ?? 0) * Math.PI) / 180;
+  const ends = [-reachKm, reachKm].map((km) => ({
+    across: aim.across + km * Math.cos(turn),
+    down: aim.down + km * Math.sin(turn),
+  }));
+  const middle = (side: keyof Place) => {
+    const places = [-captureKm, captureKm, ...ends.map((end) => end[side])];
+    return (Math.min(...places) + Math.max(...places)) / 2;
+  };
+  const centre = { across: middle('across'), down: middle('down') };
+  const farthestKm = Math.max(
+    captureKm + Math.hypot(centre.across, centre.down),
+    ...ends.map((end) => Math.hypot(end.across - centre.across, end.down - centre.down)),
+  );
+  return { centre, halfKm: MARGIN * farthestKm };
 }
 
 /** The capture disc alone. */

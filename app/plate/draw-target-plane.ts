@@ -90,8 +90,8 @@ function drawPlane(pen: Pen, approach: Approach, geometry: PlaneGeometry, side: 
   rule(pen, [aim.x, aim.y - 10, aim.x, aim.y + 10], palette.object, 3);
   const face = { px: 18 };
   const axis = { px: 19, italic: true };
-  writeClear(pen, 'T', side - 6, y - 9, axis, 'right');
-  writeClear(pen, 'R', x + 10, side - 8, axis);
+  writeClear(pen, 'T', side - 6, Math.min(Math.max(y - 9, 20), side - 34), axis, 'right');
+  writeClear(pen, 'R', Math.min(Math.max(x + 10, 8), side - 24), side - 8, axis);
   const away = aim.y > y ? -1 : 1;
   const isWide = discPx > 30;
   if (isWide)

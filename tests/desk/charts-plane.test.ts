@@ -109,9 +109,34 @@ describe('the target plane in pixels', () => {
         const one = approach(t, r);
         const geometry = planeGeometry(one, 'tr', fittingView(one), 300, 240);
         expect(geometry?.aimIsShown).toBe(true);
-        expect(geometry?.capturePx).toBeLessThan(120);
+        if (geometry === null) throw new Error('no plane');
+        const { x, y, capturePx } = geometry;
+        expect(Math.min(x, 300 - x, y, 240 - y)).toBeGreaterThan(capturePx);
       }),
     );
+  });
+
+  it('shows the whole 3 σ ellipse too, on both axes, unless it is far larger than the rest', () => {
+    const angle = fc.double({ min: -180, max: 180, noNaN: true });
+    fc.assert(
+      fc.property(angle, (degrees) => {
+        // From B at atan2(1, 2) on T and R, a right angle on, to −ζ: clockwise on the sheet.
+        const one = uncertain(4000, degrees, -(degrees + 90));
+        for (const axes of ['tr', 'xi-zeta'] as const) {
+          const geometry = planeGeometry(one, axes, fittingView(one), 300, 240);
+          if (geometry === null || geometry.ellipse === null) throw new Error('no plane');
+          const { aim, ellipse } = geometry;
+          const turn = (ellipse.turnDeg * Math.PI) / 180;
+          for (const end of [-3, 3]) {
+            const x = aim.x + end * ellipse.majorPx * Math.cos(turn);
+            const y = aim.y + end * ellipse.majorPx * Math.sin(turn);
+            expect(Math.min(x, 300 - x, y, 240 - y)).toBeGreaterThan(0);
+          }
+        }
+      }),
+    );
+    // Some 22 400 km away: the view does not follow an ellipse of a million.
+    expect(fittingView(uncertain(1e6)).halfKm).toBeLessThan(2e5);
   });
 
   it('says when the aim lies beyond the sheet', () => {
