@@ -87,6 +87,8 @@ export interface FlightSample {
 
 /** Mass at which a body counts as burnt, kg. */
 const BURNT_KG = 1e-6;
+/** Share of its mass at which a spreading body does: what is left is stopped within metres. */
+const BURNT_SHARE = 1e-4;
 /** A step changes the altitude by half a scale height at most, so that no peak is stepped over. */
 const LONGEST_DROP_KM = 3.5;
 const LONGEST_PATH_KM = 40;
@@ -289,7 +291,8 @@ export class Flight {
         : -Math.abs(body.altitudeKm - ENTRY_INTERFACE_ALTITUDE_KM) - 1e-6;
     out[2] = body.ramPressurePa / stops.strengthPa - 1;
     out[3] = body.shape === SOLID ? -1 : y[RADIUS] / stops.radiusM - 1;
-    out[4] = Math.log(BURNT_KG / body.startMassKg) - y[LOG_MASS];
+    const burnt = body.shape === SOLID ? BURNT_KG / body.startMassKg : BURNT_SHARE;
+    out[4] = Math.log(burnt) - y[LOG_MASS];
     out[5] = stops.slowKmS - body.airSpeedKmS;
   }
 
