@@ -12,6 +12,8 @@ const LETTER_PX = 6;
 const FOOT_PX = 23;
 /** The aim's words stand clear of an ellipse that is no wider than this at 3 σ, half of it, px. */
 const MOST_CLEAR_PX = 130;
+/** A narrower thumbnail has no room for the aim's words, px. */
+const LEAST_WORDS_PX = 200;
 
 /** The drawing itself: axes, the body, the capture disc, the ellipses, the line of variations, B. */
 export const PlaneSheet = memo(function PlaneSheet(props: {
@@ -41,10 +43,16 @@ export const PlaneSheet = memo(function PlaneSheet(props: {
         </clipPath>
         <g clipPath={`url(#${title}-clip)`}>
           <Axes geometry={geometry} axes={axes} widthPx={widthPx} heightPx={heightPx} />
-          <Discs approach={approach} geometry={geometry} />
+          <Discs approach={approach} geometry={geometry} widthPx={widthPx} />
           <Ellipses geometry={geometry} />
           <Line approach={approach} geometry={geometry} isThumbnail={isThumbnail} />
-          <Aim approach={approach} geometry={geometry} widthPx={widthPx} heightPx={heightPx} />
+          <Aim
+            approach={approach}
+            geometry={geometry}
+            widthPx={widthPx}
+            heightPx={heightPx}
+            isThumbnail={isThumbnail}
+          />
         </g>
         <rect className="plane-frame" width={widthPx} height={heightPx} />
         {!isThumbnail && <Ticks geometry={geometry} heightPx={heightPx} />}
@@ -89,11 +97,15 @@ function Axes(props: {
   );
 }
 
-function Discs({ approach, geometry }: { approach: Approach; geometry: PlaneGeometry }) {
+function Discs(props: { approach: Approach; geometry: PlaneGeometry; widthPx: number }) {
+  const { approach, geometry, widthPx } = props;
   const { x, y, discPx, capturePx, aim } = geometry;
-  // Words stand on the side away from the aim.
+  // Words stand on the side away from the aim, and off the axes.
   const side = aim.y > y ? -1 : 1;
   const isWide = discPx > 34;
+  const name = isWide ? 'capture disc' : `${approach.body}, capture disc`;
+  const half = (name.length * LETTER_PX) / 2;
+  const beside = x + (aim.x > x ? -1 : 1) * (capturePx * Math.SQRT1_2 + half + 7);
   return (
     <>
       <circle
@@ -114,8 +126,13 @@ function Discs({ approach, geometry }: { approach: Approach; geometry: PlaneGeom
           {approach.body}
         </text>
       )}
-      <text x={x} y={y + side * (capturePx + 10)} dy="0.35em" textAnchor="middle">
-        {isWide ? 'capture disc' : `${approach.body}, capture disc`}
+      <text
+        x={Math.min(Math.max(beside, half + 4), widthPx - half - 4)}
+        y={y + side * (capturePx * Math.SQRT1_2 + 10)}
+        dy="0.35em"
+        textAnchor="middle"
+      >
+        {name}
       </text>
     </>
   );
@@ -171,8 +188,9 @@ function Aim(props: {
   geometry: PlaneGeometry;
   widthPx: number;
   heightPx: number;
+  isThumbnail: boolean;
 }) {
-  const { approach, geometry, widthPx, heightPx } = props;
+  const { approach, geometry, widthPx, heightPx, isThumbnail } = props;
   const { x, y, aim, aimIsShown } = geometry;
   const km = approach.hyperbola?.impactParameterKm ?? 0;
   const dy = aim.y - y;
@@ -202,9 +220,11 @@ function Aim(props: {
       <path className="plane-b" d={`M${x} ${y}L${aim.x} ${aim.y}`} />
       <path className="plane-aim" d={`M${aim.x - 6} ${aim.y}h12M${aim.x} ${aim.y - 6}v12`} />
       <circle className="plane-aim" cx={aim.x} cy={aim.y} r={3.5} />
-      <text x={label.x} y={label.y} dy="0.35em" textAnchor="middle">
-        {words}
-      </text>
+      {!(isThumbnail && widthPx < LEAST_WORDS_PX) && (
+        <text x={label.x} y={label.y} dy="0.35em" textAnchor="middle">
+          {words}
+        </text>
+      )}
     </>
   );
 }

@@ -42,19 +42,31 @@ export function nearestClone(
   return best;
 }
 
+/** Of a distance in the sorting key, km; what is nearer to one another keeps its order in the cloud. */
+const KEY_KM = 1 / 8;
+/** Above the number of points in both sets. */
+const KEY_PLACES = 2 ** 17;
+
 /** All clones that have a place on the plane, the nearest to the body's centre first. */
 export function clonesByDistance(cloud: CloneCloud): PickedClone[] {
-  return SETS.flatMap((drawn) => {
-    const points = cloud.points(drawn);
-    const all: { picked: PickedClone; km: number }[] = [];
+  const sets = SETS.map((drawn) => cloud.points(drawn));
+  const plainEnd = sets[0].length / size;
+  const keys = new Float64Array(plainEnd + sets[1].length / size);
+  let count = 0;
+  // Numbers alone sort ten times faster than clones by a comparison.
+  sets.forEach((points, set) => {
     for (let at = 0; at < points.length; at += size) {
       const km = Math.hypot(points[at + bDotTKm], points[at + bDotRKm]);
-      if (!Number.isNaN(km)) all.push({ picked: { drawn, at }, km });
+      if (Number.isNaN(km)) continue;
+      keys[count++] = Math.round(km / KEY_KM) * KEY_PLACES + set * plainEnd + at / size;
     }
-    return all;
-  })
-    .sort((a, b) => a.km - b.km)
-    .map(({ picked }) => picked);
+  });
+  return Array.from(keys.subarray(0, count).sort(), (key) => {
+    const place = key % KEY_PLACES;
+    return place < plainEnd
+      ? { drawn: 'plain', at: place * size }
+      : { drawn: 'rare', at: (place - plainEnd) * size };
+  });
 }
 
 const OUTCOME_WORDS: Record<number, string> = {

@@ -8,6 +8,8 @@ import { CLONE_OUTCOME, CLONE_POINT } from './plane-points';
 
 /** Pixels of a mark about its middle, and how much each covers, 0 to 255. */
 interface Stamp {
+  /** No pixel lies farther out than this along either side. */
+  reach: number;
   dx: Int16Array;
   dy: Int16Array;
   cover: Uint8Array;
@@ -39,7 +41,12 @@ function stampOf(reach: number, opacity: number, shape: Shape): Stamp {
       cover.push(value);
     }
   }
-  return { dx: Int16Array.from(dx), dy: Int16Array.from(dy), cover: Uint8Array.from(cover) };
+  return {
+    reach: end,
+    dx: Int16Array.from(dx),
+    dy: Int16Array.from(dy),
+    cover: Uint8Array.from(cover),
+  };
 }
 
 /** Marks for a picture with so many pixels to the CSS pixel. */
@@ -83,7 +90,7 @@ export function printClones(
   project: Projection,
 ): void {
   const { x0, xT, xR, y0, yT, yR } = project;
-  const { widthPx, heightPx, data } = picture;
+  const { widthPx, heightPx } = picture;
   const { size, bDotTKm, bDotRKm, outcome } = CLONE_POINT;
   for (let i = 0; i < points.length; i += size) {
     const t = points[i + bDotTKm];
@@ -92,15 +99,29 @@ export function printClones(
     const y = Math.round(y0 + yT * t + yR * r - 0.5);
     // Not a number where the clone is bound: no comparison with it holds.
     if (!(x > -16 && x < widthPx + 16 && y > -16 && y < heightPx + 16)) continue;
-    const { dx, dy, cover } =
-      points[i + outcome] === CLONE_OUTCOME.impact ? stamps.impact : stamps.pass;
-    for (let k = 0; k < cover.length; k++) {
+    print(
+      picture,
+      points[i + outcome] === CLONE_OUTCOME.impact ? stamps.impact : stamps.pass,
+      x,
+      y,
+    );
+  }
+}
+
+function print({ widthPx, heightPx, data }: Picture, stamp: Stamp, x: number, y: number): void {
+  const { dx, dy, cover, reach } = stamp;
+  const isInside = x >= reach && y >= reach && x < widthPx - reach && y < heightPx - reach;
+  const middle = 4 * (y * widthPx + x) + 3;
+  for (let k = 0; k < cover.length; k++) {
+    if (!isInside) {
       const px = x + dx[k];
       const py = y + dy[k];
       if (px < 0 || py < 0 || px >= widthPx || py >= heightPx) continue;
-      const at = 4 * (py * widthPx + px) + 3;
-      data[at] += ((255 - data[at]) * cover[k]) / 255;
     }
+    const at = middle + 4 * (dy[k] * widthPx + dx[k]);
+    const alpha = data[at];
+    // 257 / 65 536 is 1 / 255 as nearly as whole numbers of 16 bits tell.
+    data[at] = alpha + (((255 - alpha) * cover[k] * 257 + 32768) >> 16);
   }
 }
 
