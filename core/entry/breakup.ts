@@ -80,8 +80,8 @@ export interface EntryOutcome {
 
 /** Slower than this, dust and shreds count as stopped: their motion is the air's. */
 const SLOW_CLOUD_KM_S = 0.5;
-/** In the ensemble, pieces are not followed to the ground once they are this slow. */
-const SLOW_PIECE_KM_S = 0.3;
+/** In the ensemble whatever is this slow counts as stopped: it has lost all but 1 % of its energy. */
+const SLOW_IN_ENSEMBLE_KM_S = 1;
 /** After so many generations pieces are gravel: they are not broken any further. */
 const MAX_GENERATIONS = 60;
 
@@ -164,7 +164,7 @@ export class EntrySimulator {
           );
 
     stops.radiusM = Number.POSITIVE_INFINITY;
-    stops.slowKmS = this.options.toGround ? 0 : SLOW_PIECE_KM_S;
+    stops.slowKmS = this.options.toGround ? 0 : SLOW_IN_ENSEMBLE_KM_S;
     stops.strengthPa = strength(body.massKg);
     let end = flight.run(stops);
     let breakAltitudeKm: number | null = null;
@@ -214,7 +214,7 @@ export class EntrySimulator {
     flight.rebase(flight.massKg, 1, PANCAKE);
     stops.strengthPa = Number.POSITIVE_INFINITY;
     stops.radiusM = breakup.spreadFactor * flight.y[RADIUS];
-    stops.slowKmS = SLOW_CLOUD_KM_S;
+    stops.slowKmS = this.options.toGround ? SLOW_CLOUD_KM_S : SLOW_IN_ENSEMBLE_KM_S;
     let end = flight.run(stops);
     if (end === 'spread') {
       flight.body.shape = SPREAD;
@@ -239,7 +239,7 @@ export class EntrySimulator {
       flight.track = null;
       flight.rebase(massKg * breakup.cloudShare, count, CLOUD);
       stops.strengthPa = Number.POSITIVE_INFINITY;
-      stops.slowKmS = SLOW_CLOUD_KM_S;
+      stops.slowKmS = this.options.toGround ? SLOW_CLOUD_KM_S : SLOW_IN_ENSEMBLE_KM_S;
       this.close(flight.run(stops));
 
       flight.track = track;
@@ -250,7 +250,7 @@ export class EntrySimulator {
       flight.rebase(pieceKg, count * breakup.pieces, SOLID);
       stops.strengthPa =
         generation < MAX_GENERATIONS ? strength(pieceKg) : Number.POSITIVE_INFINITY;
-      stops.slowKmS = this.options.toGround ? 0 : SLOW_PIECE_KM_S;
+      stops.slowKmS = this.options.toGround ? 0 : SLOW_IN_ENSEMBLE_KM_S;
       const end = flight.run(stops);
       if (end !== 'strength') return end;
     }

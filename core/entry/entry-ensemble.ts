@@ -4,7 +4,8 @@ import { KILOTON_MJ } from './constants';
 import type { EarthFixedState } from './earth-fixed';
 import { DEFAULT_FLIGHT, type FlightSettings } from './flight';
 import { luminousEfficiency, peakIntensityWSr } from './light';
-import { type Material, type Span, scaledStrengthPa } from './materials';
+import type { Material, Span } from './materials';
+import { TABLED_AIR } from './tabled-air';
 
 /** Many entries, where size, stuff or way are not known: percentiles instead of single numbers. */
 
@@ -68,7 +69,7 @@ export interface EnsembleSummary {
 }
 
 /** For many flights. Measured: burst altitude within 0.1 %, energy within 0.1 % of tolerance 1e-11. */
-export const ENSEMBLE_TOLERANCE = 1e-4;
+const ENSEMBLE_TOLERANCE = 1e-4;
 const ENSEMBLE_SLAB_KM = 0.5;
 /** Random numbers of a member. */
 const DIMENSION = 8;
@@ -77,7 +78,11 @@ const STREAM = 0x656e7472;
 const DIAMETER_ZERO_M = 1_329_000;
 
 /** For an ensemble: the flight's settings at a tolerance that is fast enough for many. */
-export const ENSEMBLE_FLIGHT: FlightSettings = { ...DEFAULT_FLIGHT, tolerance: ENSEMBLE_TOLERANCE };
+export const ENSEMBLE_FLIGHT: FlightSettings = {
+  ...DEFAULT_FLIGHT,
+  air: TABLED_AIR,
+  tolerance: ENSEMBLE_TOLERANCE,
+};
 
 /** An ensemble that has nothing to draw from. */
 export class EnsembleError extends Error {
@@ -147,7 +152,7 @@ export function flyEnsemble(
     rows[at] = diameterM;
     rows[at + 1] = massKg;
     rows[at + 2] = densityKgM3;
-    rows[at + 3] = scaledStrengthPa(breakup.strengthPa, massKg, massKg, breakup.weibullExponent);
+    rows[at + 3] = breakup.strengthPa;
     rows[at + 4] = outcome.entryEnergyKt;
     rows[at + 5] = outcome.breakAltitudeKm ?? Number.NaN;
     rows[at + 6] = outcome.burstAltitudeKm ?? Number.NaN;
