@@ -213,13 +213,15 @@ function Aim(props: {
       </>
     );
   }
+  const cross = `M${aim.x - 7} ${aim.y}h14M${aim.x} ${aim.y - 7}v14`;
   const words = `B ${distanceWords(km)}`;
   const label = aimLabel(approach, geometry, (words.length * LETTER_PX) / 2, widthPx, heightPx);
   return (
     <>
       <path className="plane-b" d={`M${x} ${y}L${aim.x} ${aim.y}`} />
-      <path className="plane-aim" d={`M${aim.x - 6} ${aim.y}h12M${aim.x} ${aim.y - 6}v12`} />
-      <circle className="plane-aim" cx={aim.x} cy={aim.y} r={3.5} />
+      <path className="plane-aim-rim" d={cross} />
+      <path className="plane-aim" d={cross} />
+      <circle className="plane-aim plane-aim-open" cx={aim.x} cy={aim.y} r={3.5} />
       {!(isThumbnail && widthPx < LEAST_WORDS_PX) && (
         <text x={label.x} y={label.y} dy="0.35em" textAnchor="middle">
           {words}

@@ -5,13 +5,21 @@ import { cloneStamps, printClones, wiped } from '../charts/plane-stamp';
 import { fittingView } from '../charts/plane-view';
 import { grouped, withUnit } from '../desk/figures';
 import type { CloneCloud } from '../worker/clone-cloud';
-import { type Area, type Pen, rule, write, writeCaps, writeClear } from './pen';
+import { type Area, measureIn, type Pen, rule, write, writeCaps, writeClear } from './pen';
 
 const CAPS_PX = 16;
 /** A table of figures stands beside the plane where this much room is left, px. */
 const TABLE_PX = 180;
 /** Pixels of the plate to a pixel of the page, for the marks of clones. */
-const MARK_SCALE = 1.4;
+const MARK_SCALE = 1.1;
+/** What the marks mean: the longest that has room. */
+const KEYS = [
+  'ellipses: 1, 2, 3 σ; dots: clones; × +: clones that hit',
+  'dots: clones; × +: those that hit',
+  '× +: clones that hit',
+  '× +: hits',
+];
+const KEY_FACE = { px: 17, italic: true };
 
 /**
  * Where an approach aims, against what it would hit; nothing where it has no target plane.
@@ -28,7 +36,12 @@ export function drawTargetPlane(
   const side = Math.min(area.width, area.height - CAPS_PX);
   const geometry = planeGeometry(approach, 'tr', fittingView(approach), side, side);
   if (geometry === null) return;
-  writeCaps(pen, 'Target plane', area.x, area.y, 17, palette.inkSoft);
+  const end = writeCaps(pen, 'Target plane', area.x, area.y, 17, palette.inkSoft);
+  if (clones !== null && clones.version > 0) {
+    const room = area.x + area.width - end - 14;
+    const key = KEYS.find((words) => measureIn(pen, KEY_FACE)(words) <= room);
+    if (key !== undefined) write(pen, key, end + 14, area.y, KEY_FACE, palette.inkSoft);
+  }
   context.save();
   context.translate(area.x, area.y + CAPS_PX);
   context.beginPath();
@@ -98,9 +111,11 @@ function drawPlane(pen: Pen, approach: Approach, geometry: PlaneGeometry, side: 
     write(pen, approach.body, x, y + away * discPx * 0.5 + 6, face, palette.ink, 'center');
   const words = Math.min(Math.max(y + away * (capturePx + 16) + 6, 18), side - 6);
   const name = isWide ? 'capture disc' : `${approach.body}, capture disc`;
+  const half = measureIn(pen, face)(name) / 2;
   // Below, the words keep clear of the axis's name.
-  if (away === 1) writeClear(pen, name, x - 12, words, face, 'right');
-  else writeClear(pen, name, x, words, face, 'center');
+  const middle = away === 1 ? x - 12 - half : x;
+  const within = Math.min(Math.max(middle, half + 4), side - half - 4);
+  writeClear(pen, name, within, words, face, 'center');
 }
 
 /** The line of variations, with a tick at every whole σ that has room. */
