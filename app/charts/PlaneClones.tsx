@@ -5,6 +5,9 @@ import type { CloneCloud } from '../worker/clone-cloud';
 import type { Projection } from './plane-geometry';
 import { cloneStamps, type Picture, printClones, scaledProjection, wiped } from './plane-stamp';
 
+/** Pixels of the layer to a CSS pixel at most: more would cost a frame and show nothing. */
+const FINEST = 1.5;
+
 /** The clones under the drawing; those that stream in are added without a new render. */
 export function PlaneClones(props: {
   cloud: CloneCloud;
@@ -17,17 +20,22 @@ export function PlaneClones(props: {
   const { store } = useDesk();
   const { object } = usePalette();
   const canvas = useRef<HTMLCanvasElement>(null);
+  /** The pixels, kept from drawing to drawing of one size. */
+  const kept = useRef<ImageData | null>(null);
   const add = useRef<() => void>(() => {});
 
   useLayoutEffect(() => {
     const element = canvas.current;
     const context = element?.getContext('2d') ?? null;
     if (element === null || context === null) return;
-    const scale = devicePixelRatio;
+    const scale = Math.min(devicePixelRatio, FINEST);
     const size = [Math.round(widthPx * scale), Math.round(heightPx * scale)] as const;
     if (element.width !== size[0]) element.width = size[0];
     if (element.height !== size[1]) element.height = size[1];
-    const image = context.createImageData(...size);
+    if (kept.current?.width !== size[0] || kept.current.height !== size[1]) {
+      kept.current = context.createImageData(...size);
+    }
+    const image = kept.current;
     const picture: Picture = { widthPx: size[0], heightPx: size[1], data: image.data };
     const stamps = cloneStamps(scale);
     const onto = scaledProjection(project, scale);
