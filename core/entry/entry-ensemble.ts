@@ -54,7 +54,8 @@ export const ENSEMBLE_COLUMNS = [
   'peakDynamicPressurePa',
   'peakIntensityWSr',
   'groundEnergyShare',
-  'groundMassKg',
+  /** Of what arrives faster than 1 km/s: slower pieces are not followed in an ensemble. */
+  'fastGroundMassKg',
 ] as const;
 export type EnsembleColumn = (typeof ENSEMBLE_COLUMNS)[number];
 export const ENSEMBLE_WIDTH = ENSEMBLE_COLUMNS.length;
@@ -68,7 +69,11 @@ export interface EnsembleSummary {
   readonly skips: number;
 }
 
-/** For many flights. Measured: burst altitude within 0.1 %, energy within 0.1 % of tolerance 1e-11. */
+/**
+ * For many flights. Measured against tolerance 1e-9 on 300 mixed members each of four ensembles, median
+ * and 95th percentile of the miss: burst altitude 0.03 % and 0.4 %, energy 0.004 % and 0.04 %, peak
+ * deposition 0.4 % and 1.3 %, peak dynamic pressure 0.5 % and 6 % (it is read at the steps).
+ */
 const ENSEMBLE_TOLERANCE = 1e-4;
 const ENSEMBLE_SLAB_KM = 0.5;
 /** Random numbers of a member. */

@@ -10,7 +10,8 @@ import type { Deposition } from './deposition';
  * @returns        share, below 1
  * Domain: fitted to 13 bolides with an energy known otherwise, 0.1 to some tens of kt; below 0.01 kt
  * the value there.
- * Accuracy: the fit's scatter is a factor of about 1.5.
+ * Accuracy: the fit's scatter is a factor of about 1.5; published efficiencies of large bolides run from
+ * 0.03 (Ceplecha et al. 1998) to 0.25 (Nemtchinov et al. 1997), from memory.
  * Source: Brown et al. (2002), Nature 420, 294: τ = 0.1212 E_o^0.115 with the optical energy E_o in
  * kt, so that E = 8.2508 E_o^0.885 (from memory).
  */
@@ -19,9 +20,6 @@ export function luminousEfficiency(energyKt: number): number {
   const optical = (energy * 0.1212) ** (1 / 0.885);
   return Math.min(1, optical / energy);
 }
-
-/** Bounds of the luminous efficiency of large bolides: Ceplecha et al. (1998) to Nemtchinov et al. (1997), from memory. */
-export const LUMINOUS_EFFICIENCY_RANGE = [0.03, 0.25] as const;
 
 /** Radiant intensity of magnitude 0 at 100 km, W/sr: a black body of 6000 K in all light. Brown et al. (1996), from memory. */
 const ZERO_MAGNITUDE_W_SR = 248;
