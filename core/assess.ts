@@ -18,6 +18,7 @@ import { integrateLeg, type Leg, type LegHost, LONGEST_STEP_S, stateInLeg } from
 import type { EncounterEvent } from './encounter/scan';
 import { EPHEMERIS_COVERAGE, type Ephemeris, loadEphemeris } from './ephemeris';
 import type { AssessHost, AssessInput } from './events';
+import { fly } from './fly';
 import { icrfToEcliptic } from './frames/ecliptic';
 import { add, scale, subtract, type Vec3, vec3 } from './math/vector';
 import { type ClassicalEncounter, classicalEncounter } from './orbit/classical';
@@ -74,6 +75,8 @@ const ASKED_RULE = 'As asked.';
 /** The orbit before and after a pass is taken this far from it, or as far as the span allows. */
 const ORBIT_CHANGE_S = 60 * DAY;
 const LEAST_ORBIT_CHANGE_S = 5 * DAY;
+/** Flights of the nominal entry through the air. */
+const FLIGHTS = 200;
 /** How far the classical chain looks past the end on a surface. */
 const PAST_SURFACE_S = 30 * DAY;
 /** A two-body approach this far in time from the n-body one is not the same pass. */
@@ -167,7 +170,11 @@ export async function assess(
     principal,
     comparison: comparisonOf(principal === null ? null : records[principal], classical, epoch),
   };
-  const report = sealReport({ ...draft, ...writeFindings(draft) });
+  const entry = principal === null ? null : records[principal].entry;
+  const flight =
+    entry === null ? null : fly(orbit.physical, [entry.point], 'nominal orbit', FLIGHTS);
+  const whole = { ...draft, ...(flight === null ? {} : { entryFlight: flight }) };
+  const report = sealReport({ ...whole, ...writeFindings(whole) });
   host.emit({ type: 'report', report });
   return {
     report,

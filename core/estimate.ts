@@ -1,6 +1,8 @@
 import type { EstimateBasis } from './assess';
-import { BODY_INDEX, SECONDS_PER_DAY } from './constants';
+import { BODY_INDEX, ENTRY_INTERFACE_ALTITUDE_KM, SECONDS_PER_DAY } from './constants';
+import type { AirEntry } from './entry/earth-fixed';
 import type { EstimateHost } from './events';
+import { fly } from './fly';
 import { clopperPearson } from './math/beta';
 import { normalsOf } from './math/random';
 import { rounded, sealReport } from './report/canonical';
@@ -22,6 +24,9 @@ export const MOST_CLONES = 1_000_000;
 const BATCH = 500;
 /** A clone's approach this far from the nominal one is another approach, s. */
 const SAME_APPROACH_S = 30 * SECONDS_PER_DAY;
+/** Flights through the air of the impacting clones, and of how many entries. */
+const FLIGHTS = 1000;
+const MOST_ENTRIES = 500;
 /** Clones whose points are sent to be drawn. */
 const DRAWN_CLONES = 20_000;
 const NO_ROWS = new Float64Array(0);
@@ -189,10 +194,15 @@ export class Estimate {
     const { rare } = this;
     const plainGroups = this.tally.groups();
     const rareGroups = rare === null ? [] : groupImpacts(rare.impacts.rows, rare.impacts.weights);
-    const corridor = corridorOfLikeliest(
-      rare === null ? plainGroups : rareGroups,
-      rare === null ? 1 / this.carried : null,
-    );
+    const likeliest = likeliestOfEarth(rare === null ? plainGroups : rareGroups, rare === null);
+    const corridor =
+      likeliest === null
+        ? null
+        : corridorOfGroup(likeliest, rare === null ? 1 / this.carried : null);
+    const flight =
+      likeliest === null || report.entryFlight !== undefined
+        ? null
+        : fly(report.case.physical, entriesOf(likeliest), 'impacting clones', FLIGHTS);
     const { fingerprint: _, findings: __, cautions: ___, ...sections } = report;
     const probability = probabilitySection({
       report,
@@ -220,6 +230,7 @@ export class Estimate {
       ...probability,
       ...(corridor === null ? {} : { corridor: rounded(corridorSection(corridor)) }),
       ...(scales === null ? {} : { scales: rounded(scales) }),
+      ...(flight === null ? {} : { entryFlight: flight }),
     };
     return sealReport({ ...draft, ...writeFindings(draft) });
   }
@@ -235,20 +246,45 @@ function dayOfMaking(madeAt: string): number | null {
   return tdbSecondsFromEpoch({ scale: 'UTC', mjd: reading.mjd, secondOfDay: 0 });
 }
 
-/**
- * The corridor of the likeliest date of an impact of the Earth; null when there is none.
- *
- * @param each probability of a plain clone; null where the rows have their weights
- */
-function corridorOfLikeliest(groups: readonly ImpactGroup[], each: number | null): Corridor | null {
-  const earth = groups.filter(({ body }) => body === BODY_INDEX.Earth);
-  if (earth.length === 0) return null;
-  const size = ({ count, weight }: ImpactGroup): number => (each === null ? weight : count);
-  const likeliest = earth.reduce((a, b) => (size(b) > size(a) ? b : a));
+/** Impacts of the Earth on the likeliest date; null when there are none. */
+function likeliestOfEarth(groups: readonly ImpactGroup[], counted: boolean): ImpactGroup | null {
+  const size = ({ count, weight }: ImpactGroup): number => (counted ? count : weight);
+  return groups
+    .filter(({ body }) => body === BODY_INDEX.Earth)
+    .reduce<ImpactGroup | null>(
+      (best, one) => (best === null || size(one) > size(best) ? one : best),
+      null,
+    );
+}
+
+/** @param each probability of a plain clone; null where the rows have their weights */
+function corridorOfGroup(group: ImpactGroup, each: number | null): Corridor | null {
   // Of very many impacts only some rows are kept: they stand for all.
-  const scale = each === null ? 1 : (each * likeliest.count) / likeliest.weight;
+  const scale = each === null ? 1 : (each * group.count) / group.weight;
   return corridorOf(
-    likeliest.rows,
-    likeliest.weights.map((weight) => weight * scale),
+    group.rows,
+    group.weights.map((weight) => weight * scale),
   );
+}
+
+/** Entries of the impacting clones, each as likely: at even steps of the summed weights. */
+function entriesOf({ rows, weights, weight }: ImpactGroup): AirEntry[] {
+  const entries: AirEntry[] = [];
+  const most = Math.min(MOST_ENTRIES, weights.length);
+  let sum = 0;
+  for (let i = 0; i < weights.length; i++) {
+    sum += weights[i];
+    const at = i * CLONE_ROW.size;
+    while (entries.length < most && sum >= ((entries.length + 0.5) / most) * weight) {
+      entries.push({
+        latitudeRad: rows[at + CLONE_ROW.entryLatitudeRad],
+        longitudeRad: rows[at + CLONE_ROW.entryLongitudeRad],
+        altitudeKm: ENTRY_INTERFACE_ALTITUDE_KM,
+        airSpeedKmS: rows[at + CLONE_ROW.entryAirSpeedKmS],
+        airFlightPathAngleRad: rows[at + CLONE_ROW.entryAirFlightPathAngleRad],
+        airAzimuthRad: rows[at + CLONE_ROW.entryAirAzimuthRad],
+      });
+    }
+  }
+  return entries;
 }

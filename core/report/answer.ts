@@ -28,7 +28,7 @@ export function answerOf(approach: Approach, moon: Approach | null): Finding {
   if (approach.outcome === 'atmosphere') {
     return finding(
       'answer',
-      `Reaches the atmosphere: its lowest point is ${fromCentre(approach)}, ${height(distanceKm)}, on ${moment}. Without drag it leaves again; drag is not modelled, and the air may slow it, break it up or bring it down.${moonInAnswer(moon)}`,
+      `Reaches the atmosphere: its lowest point is ${fromCentre(approach)}, ${height(distanceKm)}, on ${moment}. Without drag it leaves again; the air may slow it, break it up or bring it down.${moonInAnswer(moon)}`,
       figures,
       N_BODY,
       tdbSeconds,

@@ -14,15 +14,15 @@ export class NonFiniteError extends Error {
 }
 
 /**
- * The same with every number to 14 significant digits: what exponentials and logarithms of two engines
- * differ by in the last digit is no difference between reports.
+ * The same with every number to so many significant digits: what exponentials and logarithms of two
+ * engines differ by in the last digit is no difference between reports.
  */
-export function rounded<T>(value: T): T {
-  if (typeof value === 'number') return Number(value.toPrecision(14)) as T;
-  if (Array.isArray(value)) return value.map(rounded) as T;
+export function rounded<T>(value: T, digits = 14): T {
+  if (typeof value === 'number') return Number(value.toPrecision(digits)) as T;
+  if (Array.isArray(value)) return value.map((item) => rounded(item, digits)) as T;
   if (typeof value === 'object' && value !== null) {
     return Object.fromEntries(
-      Object.entries(value).map(([key, item]) => [key, rounded(item)]),
+      Object.entries(value).map(([key, item]) => [key, rounded(item, digits)]),
     ) as T;
   }
   return value;

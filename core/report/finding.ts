@@ -14,6 +14,7 @@ export type FindingsDraft = Pick<
   | 'impactProbability'
   | 'corridor'
   | 'scales'
+  | 'entryFlight'
 >;
 
 export const N_BODY: Finding['basis'] = {

@@ -2,6 +2,7 @@ import { answerOf, nothingFound } from './answer';
 import { assumptionsFinding, certaintyFinding, othersFinding } from './case-findings';
 import { classicalFinding, moidFinding } from './classical-findings';
 import { corridorFinding } from './corridor-findings';
+import { entryFlightFinding } from './entry-flight-findings';
 import type { FindingsDraft } from './finding';
 import { moonFinding, nearMoon } from './moon-pass';
 import {
@@ -44,11 +45,15 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
     ...probabilityFindings(draft, caution),
     draft.scales === undefined ? null : scalesFinding(draft.scales, caution),
     draft.corridor === undefined ? null : corridorFinding(draft.corridor, caution),
+    draft.entryFlight?.from === 'impacting clones' ? entryFlightFinding(draft.entryFlight) : null,
     ...(main === null
       ? []
       : [
           entryFinding(main, mainCaution),
           groundFinding(main, mainCaution),
+          draft.entryFlight?.from === 'nominal orbit'
+            ? entryFlightFinding(draft.entryFlight)
+            : null,
           speedFinding(main),
           crossingsFinding(main),
           focusingFinding(main),

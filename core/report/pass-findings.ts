@@ -51,7 +51,7 @@ export function groundFinding(
   return finding(
     'ground',
     body === 'Earth'
-      ? `Were there no air it would reach the ground at ${where}, ${how}. What the air does to it is not modelled: neither the place nor the speed is where or how it arrives.`
+      ? `Were there no air it would reach the ground at ${where}, ${how}. The air changes that: neither the place nor the speed is where or how it arrives.`
       : `It meets the surface at ${where}, ${how}.`,
     [
       deg('latitude', latitudeDeg),

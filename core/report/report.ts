@@ -1,5 +1,6 @@
 import * as v from 'valibot';
 import { corridorSchema } from './corridor';
+import { entryFlightSchema } from './entry-flight';
 import { scalesSchema } from './scales';
 
 /**
@@ -385,6 +386,8 @@ export const reportSchema = v.object({
   impactProbability: v.optional(impactProbability),
   /** Absent where no clone hits the Earth. */
   corridor: v.optional(corridorSchema),
+  /** Absent where nothing enters the air, or its size is not known. */
+  entryFlight: v.optional(entryFlightSchema),
   /** Absent where no date of an impact of the Earth was found. */
   scales: v.optional(scalesSchema),
   findings: v.array(finding),

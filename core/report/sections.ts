@@ -100,7 +100,7 @@ function entrySection(tdbSeconds: number, point: EntryPoint): NonNullable<Approa
 
 const SURFACE_NOTES: Partial<Record<ApproachRecord['body'], string>> = {
   Earth:
-    'Geodetic point where the flight without air meets the WGS 84 ellipsoid; air, break-up and relief are not modelled.',
+    'Geodetic point where the flight without air meets the WGS 84 ellipsoid; air, break-up and relief are left out of it.',
   Moon: 'Selenographic point (mean Earth/polar axis) on a sphere of 1 737.4 km; relief is not modelled.',
 };
 
