@@ -1,20 +1,29 @@
 import { useSyncExternalStore } from 'react';
 import type { Approach } from '../../core/report/report';
+import { grouped } from '../desk/figures';
 import { useDesk } from '../store/context';
 import type { CloneCloud } from '../worker/clone-cloud';
+import { CLONE_POINT } from './plane-points';
 
 /** What the marks mean, in one line; only those that are drawn. */
 export function PlaneKey({ approach, cloud }: { approach: Approach; cloud: CloneCloud }) {
   const { store } = useDesk();
   const hasClones = useSyncExternalStore(store.subscribe, () => cloud.points('plain').length > 0);
   const hasRare = useSyncExternalStore(store.subscribe, () => cloud.points('rare').length > 0);
+  // Said once they rest: a figure that runs is read elsewhere.
+  const drawn = useSyncExternalStore(store.subscribe, () =>
+    store.getState().estimate.status === 'running'
+      ? null
+      : cloud.points('plain').length / CLONE_POINT.size,
+  );
+  const clones = drawn === null ? 'clone' : `clone, ${grouped(drawn)} drawn`;
   const ellipse = approach.uncertainty?.ellipse ?? null;
   if (ellipse === null && !hasClones && !hasRare) return null;
   return (
     <p className="plane-key">
       {ellipse !== null && <Entry word="1, 2, 3 σ at first order" mark="ellipse" />}
       {approach.lineOfVariations !== undefined && <Entry word="line of variations" mark="line" />}
-      {hasClones && <Entry word="clone" mark="clone" />}
+      {hasClones && <Entry word={clones} mark="clone" />}
       {hasClones && <Entry word="one that hits" mark="impact" />}
       {hasRare && <Entry word="rare-event sample" mark="rare" />}
       {hasRare && <Entry word="one that hits" mark="rare-impact" />}
