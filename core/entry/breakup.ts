@@ -64,7 +64,10 @@ export interface EntryOutcome {
   /** First break-up; null for none. */
   readonly breakAltitudeKm: number | null;
   readonly breakSpeedKmS: number | null;
-  /** Where most energy per kilometre is given to the air; null where nothing broke. */
+  /**
+   * Where most energy per kilometre is given to the air; null where nothing broke, and where half of
+   * the energy or more reaches the ground.
+   */
   readonly burstAltitudeKm: number | null;
   /** The same peak, broken or not. */
   readonly peakDepositionAltitudeKm: number;
@@ -196,7 +199,7 @@ export class EntrySimulator {
         (entryMJ + this.workMJ - deposited - this.groundMJ - this.leavingMJ) / entryMJ,
       breakAltitudeKm,
       breakSpeedKmS,
-      burstAltitudeKm: breakAltitudeKm === null ? null : peak,
+      burstAltitudeKm: breakAltitudeKm === null || this.groundMJ >= 0.5 * entryMJ ? null : peak,
       peakDepositionAltitudeKm: peak,
       peakDepositionKtPerKm: (largest(deposition.energyMJ) * toKt) / deposition.slabKm,
       peakDynamicPressurePa: flight.peakPressurePa,

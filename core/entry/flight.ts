@@ -208,6 +208,7 @@ export class Flight {
     body.observe(y);
     this.markTo(this.marksAtStart, stops);
     this.keepPeak();
+    if (this.marksAtStart[1] >= 0) return 'out';
     if (this.marksAtStart[2] >= 0) return 'strength';
     if (this.track !== null && this.track.length === 0) this.sample(this.track);
     stepper.begin(y);

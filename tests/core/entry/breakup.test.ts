@@ -137,6 +137,14 @@ describe('an entry', () => {
     expect(outcome.arrivals[0].speedKmS).toBeGreaterThan(17);
   });
 
+  it('has no burst when it comes apart but brings most of its energy to the ground', () => {
+    const outcome = simulate(entryAt(18, 60), 1e12, breakupOf('pancake', 1e6));
+    expect(outcome.breakAltitudeKm).not.toBeNull();
+    expect(outcome.burstAltitudeKm).toBeNull();
+    expect(outcome.groundKt).toBeGreaterThan(0.5 * outcome.entryEnergyKt);
+    expect(outcome.arrivals[0].spread).toBe(true);
+  });
+
   it('leaves the air again when it only grazes it, slower and on a smaller orbit', () => {
     // About 15 km/s and 5.5°: a pass with its lowest point near 60 km.
     const outcome = simulate(entryAt(15, 5.5), 1e6, breakupOf('none', 1));
@@ -147,6 +155,13 @@ describe('an entry', () => {
     expect(skip?.returns).toBe(false);
     expect(outcome.leavingKt).toBeGreaterThan(0.5 * outcome.entryEnergyKt);
     expect(Math.abs(outcome.energyResidual)).toBeLessThan(1e-6);
+  });
+
+  it('that climbs at the interface is out again at once, with all of its energy', () => {
+    const outcome = simulate(entryAt(20, -3), 1e6, breakupOf('pancake', 1e5));
+    expect(outcome.end).toBe('skips out');
+    expect(outcome.skip?.seconds).toBe(0);
+    expect(outcome.leavingKt).toBe(outcome.entryEnergyKt);
   });
 
   it('comes back when the air takes enough speed from it', () => {
