@@ -8,6 +8,8 @@ import { planeWords } from './plane-words';
 
 /** Width of a letter in the sheet's small text, px. */
 const LETTER_PX = 6;
+/** The same in the words of the ticks, px. */
+const TICK_LETTER_PX = 6.3;
 /** Room for the tick words under the sheet, px. */
 const FOOT_PX = 23;
 /** The aim's words stand clear of an ellipse that is no wider than this at 3 σ, half of it, px. */
@@ -55,7 +57,7 @@ export const PlaneSheet = memo(function PlaneSheet(props: {
           />
         </g>
         <rect className="plane-frame" width={widthPx} height={heightPx} />
-        {!isThumbnail && <Ticks geometry={geometry} heightPx={heightPx} />}
+        {!isThumbnail && <Ticks geometry={geometry} widthPx={widthPx} heightPx={heightPx} />}
       </g>
     </svg>
   );
@@ -74,7 +76,7 @@ function Axes(props: {
   const back = uprightPointsDown ? -7 : 7;
   // The aim's words stand on its own side.
   const nameSide = aim.x > x ? -1 : 1;
-  const nameX = Math.min(Math.max(x + nameSide * 9, 9), widthPx - 9);
+  const nameX = Math.min(Math.max(x + nameSide * 9, 15), widthPx - 15);
   const nameY = Math.min(Math.max(y - 9, 16), heightPx - 9);
   return (
     <>
@@ -285,15 +287,22 @@ function leavingPlace(
   return from < to ? { x: x + to * (aim.x - x), y: y + to * (aim.y - y) } : null;
 }
 
-function Ticks({ geometry, heightPx }: { geometry: PlaneGeometry; heightPx: number }) {
+function Ticks(props: { geometry: PlaneGeometry; widthPx: number; heightPx: number }) {
+  const { geometry, widthPx, heightPx } = props;
+  const fits = (px: number, words: string) => {
+    const half = (words.length * TICK_LETTER_PX) / 2;
+    return px > half - 4 && px < widthPx - half + 1;
+  };
   return (
     <>
       {geometry.ticks.across.map(({ px, words }) => (
         <g key={words}>
           <path className="plane-tick" d={`M${px} ${heightPx}v5`} />
-          <text className="plane-tick-words" x={px} y={heightPx + 17} textAnchor="middle">
-            {words}
-          </text>
+          {fits(px, words) && (
+            <text className="plane-tick-words" x={px} y={heightPx + 17} textAnchor="middle">
+              {words}
+            </text>
+          )}
         </g>
       ))}
       {geometry.ticks.upright.map(({ px, words }) => (

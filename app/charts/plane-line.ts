@@ -60,7 +60,9 @@ function spaced(ticks: PlaneLine['ticks']): PlaneLine['ticks'] {
   const median = apart.sort((a, b) => a - b)[Math.floor(apart.length / 2)];
   if (median === 0) return [];
   const every = roundStep(Math.max(1, LEAST_TICK_PX / median));
-  return ticks.filter(({ sigma }) => sigma % every === 0);
+  const kept = ticks.filter(({ sigma }) => sigma % every === 0);
+  // One alone says nothing of the scale.
+  return kept.length > 1 ? kept : [];
 }
 
 /** "−2 σ", "0". */

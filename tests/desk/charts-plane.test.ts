@@ -305,6 +305,8 @@ describe('the line of variations', () => {
     // 8 px a σ: every fifth is the first round number of them that is 30 px or more.
     const { ticks } = planeLine(line(sigmas, 1600), project);
     expect(ticks.map(({ sigma }) => sigma)).toEqual([-5, 0, 5]);
+    // A tenth of that: only 0 would be left.
+    expect(planeLine(line(sigmas, 160), project).ticks).toEqual([]);
   });
 });
 
