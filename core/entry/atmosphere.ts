@@ -23,7 +23,7 @@ export interface Air {
 }
 
 /** Above it there is no standard: the density is taken as zero. */
-export const ATMOSPHERE_TOP_KM = 1000;
+const ATMOSPHERE_TOP_KM = 1000;
 /** Here the layers of the lower part end. */
 const LAYERS_TOP_KM = 86;
 

@@ -23,7 +23,7 @@ const MACH_FACTORS = Float64Array.of(
 export const HYPERSONIC_MACH = 4;
 
 /** Below it a body no longer ablates, km/s. Ceplecha et al. (1998): 3 km/s, end of the bright flight. */
-export const ABLATION_END_KM_S = 3;
+const ABLATION_END_KM_S = 3;
 
 /**
  * Drag relative to the hypersonic continuum, by Mach number.

@@ -37,7 +37,7 @@ export interface SkipOut {
  *
  * Accuracy: of the conic; J2 shifts the axis of a low orbit by some 10 km along its way.
  */
-export function geocentricOrbit(state: EarthFixedState): GeocentricOrbit {
+function geocentricOrbit(state: EarthFixedState): GeocentricOrbit {
   const gm = GM_KM3_S2.DE431.Earth;
   const v = inertialVelocity(state);
   const r = norm(state.rKm);
