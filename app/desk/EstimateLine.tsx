@@ -3,7 +3,7 @@ import { useDeskStore } from '../store/context';
 import type { EstimateState } from '../store/store';
 import { ESTIMATE_SEED } from './controller';
 import { useController } from './controller-context';
-import { grouped, percentage } from './figures';
+import { grouped, percentage, unbroken } from './figures';
 import './estimate-line.css';
 
 /** Numbers of clones that can be asked for. */
@@ -94,9 +94,6 @@ function inWords({ status, count, wanted, impacts, interval95, error }: Estimate
   const reach = `${grouped(impacts)} ${impacts === 1 ? 'reaches' : 'reach'} the ground`;
   return `${carried} clones carried; ${reach}: ${percentage(impacts / count)} (${percentage(low)} to ${percentage(high)})`;
 }
-
-/** No line ends within a figure. */
-const unbroken = (text: string): string => text.replaceAll('\u2009', '\u202f');
 
 /** Quarter by quarter, and the outcome. */
 function spoken(estimate: EstimateState): string {

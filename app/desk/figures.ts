@@ -22,6 +22,11 @@ export function withUnit(figure: string, unit: string): string {
   return figure + THIN_SPACE + unit;
 }
 
+/** The same words with no place for a line to end within a figure, or between it and its unit. */
+export function unbroken(text: string): string {
+  return text.replaceAll(THIN_SPACE, '\u202f');
+}
+
 /** A probability in per cent: two digits of it, or of what is missing to certainty. */
 export function percentage(probability: number): string {
   const percent = probability * 100;

@@ -1,6 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import { grouped, percentage, plain, utcWords, withUnit } from '../../app/desk/figures';
+import { grouped, percentage, plain, unbroken, utcWords, withUnit } from '../../app/desk/figures';
 import { NIGHT, PAPER } from '../../app/theme/tokens';
 
 // Expected texts follow the ISO 80000-1 rule (groups of three, thin space) and the calendar.
@@ -15,6 +15,12 @@ describe('figures', () => {
     [3.689e-6, '0.00037\u2009%'],
   ])('the probability %d reads %s: two digits, and never certain when it is not', (value, text) => {
     expect(percentage(value)).toBe(text);
+  });
+
+  // Unicode Standard Annex 14: U+2009 is of class BA, a line may end after it; U+202F is GL, "glue".
+  it('in running words leave a line no place to end', () => {
+    const words = unbroken(`Passes ${withUnit(grouped(16240), 'km')} away`);
+    expect(words).toBe('Passes 16\u202f240\u202fkm away');
   });
 
   it.each([

@@ -1,7 +1,7 @@
 import type { Finding } from '../../../core/report/report';
 import { useDeskStore } from '../../store/context';
 import { useController } from '../controller-context';
-import { withUnit } from '../figures';
+import { unbroken, withUnit } from '../figures';
 import { Caution } from './Caution';
 
 /** One sentence with its figures, where they come from, and what can be done with it. */
@@ -11,7 +11,11 @@ export function FindingItem({ finding }: { finding: Finding }) {
   const onPlate = useDeskStore((state) => state.plateFindings.includes(id));
   return (
     <li className={`finding finding-${kind}`}>
-      {kind === 'caution' ? <Caution text={text} /> : <p className="finding-text">{text}</p>}
+      {kind === 'caution' ? (
+        <Caution text={text} />
+      ) : (
+        <p className="finding-text">{unbroken(text)}</p>
+      )}
       {figures.length > 0 && (
         <dl className="finding-figures">
           {figures.map((figure) => (
