@@ -41,7 +41,7 @@ export interface Body {
   readonly ablationS2Km2: number;
   /** In hypersonic continuum flow: force = ½ ρ v² C_D A. */
   readonly dragCoefficient: number;
-  /** Of an upward lift at right angles to the motion; 0 for none. */
+  /** Of a lift upward and at right angles to the motion, times the path angle's cosine; 0 for none. */
   readonly liftCoefficient: number;
 }
 
@@ -175,13 +175,11 @@ export class FlyingBody implements Field {
       const lx = x - along * ux;
       const ly = yy - along * uy;
       const lz = z - along * uz;
-      const across = Math.sqrt(lx * lx + ly * ly + lz * lz);
-      if (across > 0) {
-        const lift = (push * u * this.liftCoefficient) / across;
-        fx += lift * lx;
-        fy += lift * ly;
-        fz += lift * lz;
-      }
+      // Times the cosine of the path angle: a body that falls straight has no side to be lifted to.
+      const lift = (push * u * this.liftCoefficient) / r;
+      fx += lift * lx;
+      fy += lift * ly;
+      fz += lift * lz;
     }
     const massRate = -this.ablationS2Km2 * ablationShare(u) * push * drag * u2;
     out[0] = vx;
