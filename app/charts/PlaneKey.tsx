@@ -21,12 +21,12 @@ export function PlaneKey({ approach, cloud }: { approach: Approach; cloud: Clone
   if (ellipse === null && !hasClones && !hasRare) return null;
   return (
     <p className="plane-key">
-      {ellipse !== null && <Entry word="1, 2, 3 σ at first order" mark="ellipse" />}
+      {ellipse !== null && <Entry word="1, 2, 3 σ" mark="ellipse" />}
       {approach.lineOfVariations !== undefined && <Entry word="line of variations" mark="line" />}
       {hasClones && <Entry word={clones} mark="clone" />}
-      {hasClones && <Entry word="one that hits" mark="impact" />}
-      {hasRare && <Entry word="rare-event sample" mark="rare" />}
-      {hasRare && <Entry word="one that hits" mark="rare-impact" />}
+      {hasClones && <Entry word="that hits" mark="impact" />}
+      {hasRare && <Entry word="rare-event clone" mark="rare" />}
+      {hasRare && <Entry word="that hits" mark="rare-impact" />}
     </p>
   );
 }
