@@ -1,5 +1,5 @@
 import { geoDistance, geoInterpolate } from 'd3-geo';
-import type { MultiLineString, MultiPolygon } from 'geojson';
+import type { MultiLineString, MultiPolygon, Position } from 'geojson';
 import type { ReportCorridor } from '../../core/report/corridor';
 import { grouped, withUnit } from '../desk/figures';
 import { formatIso } from '../worker/core-values';
@@ -28,6 +28,8 @@ const HALF = 0.5;
 const MOST = 0.95;
 /** Strips less likely than this part of the likeliest are drawn without words. */
 const NAMED_SHARE = 0.1;
+/** A great circle over so much of a parallel leaves it by less than 0.01° at any latitude. */
+const PARALLEL_STEP_DEG = 2;
 const TICKS_ALONG = 6;
 /** Steps of time that a clock has, s. */
 const STEPS_S = [1, 2, 5, 10, 15, 30, 60, 120, 300, 600, 900, 1800, 3600, 7200, 10800, 21600];
@@ -46,8 +48,8 @@ export function corridorShapes(corridor: ReportCorridor): CorridorShapes {
         cells.filter((cell) => cell.within <= within && cell.within > (BANDS[i - 1] ?? 0)),
       ),
     })),
-    half: outlineOf(cells, HALF),
-    most: outlineOf(cells, MOST),
+    half: alongParallels(outlineOf(cells, HALF)),
+    most: alongParallels(outlineOf(cells, MOST)),
     axes: {
       type: 'MultiLineString',
       coordinates: pieces.map(({ axis }) => axis.map(lonLatOf)).filter((line) => line.length > 1),
@@ -66,12 +68,28 @@ function polygonsOf(cells: ReportCorridor['cells']): MultiPolygon {
     coordinates: cells.map(({ boundsDeg: [west, south, east, north] }) => [
       [
         [west, south],
-        [west, north],
-        [east, north],
-        [east, south],
-        [west, south],
+        ...parallel([west, north], [east, north]),
+        ...parallel([east, south], [west, south]),
       ],
     ]),
+  };
+}
+
+/**
+ * Both ends of a side and places between them: the map joins places by great circles, which leave a
+ * parallel the farther the nearer it is to a pole.
+ */
+function parallel([from, latitude]: Position, [to]: Position): Position[] {
+  const steps = Math.max(1, Math.ceil(Math.abs(to - from) / PARALLEL_STEP_DEG));
+  return Array.from({ length: steps + 1 }, (_, i) => [from + ((to - from) * i) / steps, latitude]);
+}
+
+function alongParallels({ coordinates }: MultiLineString): MultiLineString {
+  return {
+    type: 'MultiLineString',
+    coordinates: coordinates.map(([start, end]) =>
+      start[1] === end[1] ? parallel(start, end) : [start, end],
+    ),
   };
 }
 

@@ -1,4 +1,4 @@
-import { geoDistance } from 'd3-geo';
+import { geoArea, geoDistance } from 'd3-geo';
 import { describe, expect, it } from 'vitest';
 import { outlineOf } from '../../app/charts/corridor-outline';
 import { corridorShapes } from '../../app/charts/map-corridor';
@@ -71,6 +71,24 @@ describe('what the map draws of the corridor', () => {
       // Half of the spacing of the axis' 25 points on one radian.
       expect(Math.min(...away)).toBeLessThan(0.022);
     }
+  });
+
+  it.each([
+    [-84, -78],
+    [-90, -84],
+    [78, 84],
+  ])('has cells that reach the parallels %d° and %d° all along', (south, north) => {
+    const corridor = { ...sampleCorridor(), cells: [cell([0, south, 60, north], 1)] };
+    const { bands, most } = corridorShapes(corridor);
+    const drawn = bands.reduce((sum, { shape }) => sum + geoArea(shape), 0);
+    const sine = (degrees: number) => Math.sin((degrees * Math.PI) / 180);
+    // Archimedes: the area between two parallels is that of the cylinder about them. Chords of 2°
+    // take 1e-3 of it; one great circle over the 60° would take a tenth and more.
+    const exact = (Math.PI / 3) * (sine(north) - sine(south));
+    expect(Math.abs(drawn / exact - 1)).toBeLessThan(1e-3);
+    const parallels = most.coordinates.filter(([[, start], [, next]]) => start === next);
+    expect(parallels).toHaveLength(south === -90 ? 1 : 2);
+    for (const line of parallels) expect(line.length).toBeGreaterThan(20);
   });
 
   it('has one end and no ticks for a single clone', () => {
