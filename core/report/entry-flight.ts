@@ -59,7 +59,7 @@ export const entryFlightSchema = v.object({
   peakDepositionKtPerKm: percentiles('There.'),
   peakDynamicPressureMPa: percentiles('On the leading body.'),
   groundEnergyShare: percentiles('Of the energy at entry.'),
-  /** One member with customary values of an ordinary chondrite, from the first of the entries. */
+  /** A flight with customary values of an ordinary chondrite, as a pancake, from the first entry. */
   trajectory: v.object({
     diameterM: finite,
     densityKgM3: finite,
@@ -84,7 +84,7 @@ export interface EntryFlightFacts {
 }
 
 const MODEL =
-  'Flight of a point mass over the turning WGS 84 Earth with J2, U.S. Standard Atmosphere 1976, drag and ablation; break-up where ram pressure reaches a strength that falls with size (Weibull); pieces and dust after it (fragment cloud: Wheeler, Register & Mathias 2017, from memory). Density, strength, ablation and albedo are drawn from published ranges.';
+  'Flight of a point mass over the turning WGS 84 Earth with J2, U.S. Standard Atmosphere 1976, drag and ablation; break-up where ram pressure reaches a strength that falls with size (Weibull); after it, half of the flights each, a spreading pancake (Chyba, Thomas & Zahnle 1993) and pieces with a cloud of dust (Wheeler, Register & Mathias 2017, from memory). Density, strength, ablation and albedo are drawn from published ranges.';
 const CAUTION =
   'Ranges of a model, not a forecast and not a warning: protective action belongs to the responsible civil-protection authority. What a burst does on the ground is not modelled.';
 /** Rows of the trajectory that are kept. */
