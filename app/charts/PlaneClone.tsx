@@ -1,9 +1,9 @@
 import type { Approach } from '../../core/report/report';
 import type { CloneCloud } from '../worker/clone-cloud';
+import { CLONE_POINT } from '../worker/core-values';
 import { type PlaneAxes, turnBetween } from './plane-axes';
 import type { PlaneGeometry } from './plane-geometry';
 import { cloneFigures, type PickedClone } from './plane-pick';
-import { CLONE_POINT } from './plane-points';
 
 /** Room the words need, px. */
 const BOX_WIDTH = 200;

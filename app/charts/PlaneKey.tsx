@@ -3,7 +3,7 @@ import type { Approach } from '../../core/report/report';
 import { grouped } from '../desk/figures';
 import { useDesk } from '../store/context';
 import type { CloneCloud } from '../worker/clone-cloud';
-import { CLONE_POINT } from './plane-points';
+import { CLONE_POINT } from '../worker/core-values';
 
 /** What the marks mean, in one line; only those that are drawn. */
 export function PlaneKey({ approach, cloud }: { approach: Approach; cloud: CloneCloud }) {

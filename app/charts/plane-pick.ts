@@ -1,9 +1,9 @@
 import { grouped, withUnit } from '../desk/figures';
 import { distanceWords, spanWords } from '../ribbon/words';
 import type { CloneCloud } from '../worker/clone-cloud';
+import { CLONE_OUTCOME, CLONE_POINT } from '../worker/core-values';
 import { type PlaneAxes, turned } from './plane-axes';
 import type { Projection } from './plane-geometry';
-import { CLONE_OUTCOME, CLONE_POINT } from './plane-points';
 
 /** A clone of the cloud by its place in it. */
 export interface PickedClone {

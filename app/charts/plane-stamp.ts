@@ -1,5 +1,5 @@
+import { CLONE_OUTCOME, CLONE_POINT } from '../worker/core-values';
 import type { Projection } from './plane-geometry';
-import { CLONE_OUTCOME, CLONE_POINT } from './plane-points';
 
 /**
  * Marks of clones printed into the pixels of a picture of one colour: some 40 000 of them well within

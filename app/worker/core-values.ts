@@ -9,3 +9,4 @@ export {
 } from '../../core/constants';
 export { SAMPLE } from '../../core/dynamics/sample-layout';
 export { formatIso } from '../../core/time/format';
+export { CLONE_OUTCOME, CLONE_POINT } from '../../core/uncertainty/clones';
