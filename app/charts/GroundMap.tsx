@@ -10,7 +10,7 @@ import type { Trajectory } from '../worker/trajectory';
 import { groundTrack, type LonLat, pointsBeneath } from './ground-track';
 import { LAND } from './land';
 import { CorridorKey, MapCorridor } from './MapCorridor';
-import { MapMarks, MapTicks } from './MapMarks';
+import { MapMarks, MapTicks, markBoxes } from './MapMarks';
 import { corridorShapes } from './map-corridor';
 import {
   closeProjection,
@@ -61,7 +61,7 @@ export function GroundMap() {
   }
   return (
     <Track
-      key={report?.fingerprint}
+      key={principal.tdbSeconds}
       approach={principal}
       trajectory={trajectory}
       corridor={report?.corridor ?? null}
@@ -138,6 +138,7 @@ function Track(props: {
                 <MapCorridor
                   map={map}
                   shapes={shapes}
+                  taken={markBoxes(map, widthPx)}
                   withWords={!isThumbnail}
                   widthPx={widthPx}
                   heightPx={heightPx - footPx}

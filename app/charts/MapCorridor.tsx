@@ -2,18 +2,20 @@ import type { GeoPath, GeoProjection } from 'd3-geo';
 import type { ReportCorridor } from '../../core/report/corridor';
 import { grouped, withUnit } from '../desk/figures';
 import type { LonLat } from './ground-track';
+import { type Box, meet, wordsBox } from './MapMarks';
 import type { CorridorShapes } from './map-corridor';
 import { isOnSheet } from './map-geometry';
 
-/** Words nearer than this to others are left out, px. */
-const ROOM_X_PX = 64;
-const ROOM_Y_PX = 17;
 const TICK_PX = 5;
 const AWAY_PX = 11;
+/** From the middle of words down to the line that they stand on. */
+const BASELINE_PX = 4;
 /** Ends nearer than this to one another have no marks: they would hide what lies between. */
 const SPOT_PX = 60;
 /** Their words stand so far to the side of the spot. */
 const SPOT_AWAY_PX = 48;
+/** How far down from its middle the first of them is tried, in turn. */
+const SPOT_DOWN_PX = [0, -28, 44, -48, 64];
 /** Words at the ends are about so wide, px. */
 const END_PX = 200;
 
@@ -21,11 +23,13 @@ const END_PX = 200;
 export function MapCorridor(props: {
   map: { projection: GeoProjection; path: GeoPath };
   shapes: CorridorShapes;
+  /** Parts of the sheet that have words or marks of others. */
+  taken: readonly Box[];
   withWords: boolean;
   widthPx: number;
   heightPx: number;
 }) {
-  const { map, shapes, withWords, widthPx, heightPx } = props;
+  const { map, shapes, taken, withWords, widthPx, heightPx } = props;
   const draw = (shape: Parameters<GeoPath>[0]) => map.path(shape) ?? '';
   return (
     <g className="map-corridor">
@@ -39,6 +43,7 @@ export function MapCorridor(props: {
         <AxisWords
           map={map}
           shapes={shapes}
+          taken={taken}
           isShown={(at) => isOnSheet(map.projection, at, widthPx, heightPx)}
           widthPx={widthPx}
         />
@@ -51,19 +56,18 @@ export function MapCorridor(props: {
 function AxisWords(props: {
   map: { projection: GeoProjection };
   shapes: CorridorShapes;
+  taken: readonly Box[];
   isShown: (at: LonLat) => boolean;
   widthPx: number;
 }) {
   const { map, shapes, isShown, widthPx } = props;
   const place = (at: LonLat) => map.projection(at) ?? [0, 0];
-  const ends = shapes.ends.filter(({ at }) => isShown(at));
-  const endPlaces = ends.map(({ at }) => place(at));
-  const taken = [...endPlaces];
-  const isSpot =
-    taken.length === 2 &&
-    Math.hypot(taken[0][0] - taken[1][0], taken[0][1] - taken[1][1]) < SPOT_PX;
-  const isCrowded = (x: number, y: number): boolean =>
-    taken.some(([a, b]) => Math.abs(a - x) < ROOM_X_PX && Math.abs(b - y) < ROOM_Y_PX);
+  const ends = endWords(
+    shapes.ends.filter(({ at }) => isShown(at)).map(({ at, words }) => ({ words, at: place(at) })),
+    props.taken,
+    widthPx,
+  );
+  const full = [...props.taken, ...ends.map(boxOf)];
   return (
     <>
       {shapes.ticks
@@ -76,47 +80,86 @@ function AxisWords(props: {
           // Across the axis, on the side that looks up the map.
           const acrossX = (isRightward * (nextY - y)) / length;
           const acrossY = (-isRightward * (nextX - x)) / length;
-          const hasWords = !isCrowded(x, y);
-          if (hasWords) taken.push([x, y]);
+          const side = acrossX > 0.4 ? 1 : acrossX < -0.4 ? -1 : 0;
+          const wordsX = x + acrossX * AWAY_PX;
+          const wordsY = y + acrossY * AWAY_PX * 1.2;
+          const box = wordsBox(words, wordsX, wordsY, side);
+          const hasWords = !full.some((other) => meet(box, other));
+          if (hasWords) full.push(box);
           return (
             <g key={`${words} ${at[0]}`} className="map-axis-tick">
               <path
                 d={`M${x - acrossX * TICK_PX} ${y - acrossY * TICK_PX}L${x + acrossX * TICK_PX} ${y + acrossY * TICK_PX}`}
               />
               {hasWords && (
-                <text
-                  x={x + acrossX * AWAY_PX}
-                  y={y + acrossY * AWAY_PX * 1.2}
-                  dy="0.35em"
-                  textAnchor={acrossX > 0.4 ? 'start' : acrossX < -0.4 ? 'end' : 'middle'}
-                >
+                <text x={wordsX} y={wordsY} dy="0.35em" textAnchor={ANCHORS[side]}>
                   {words}
                 </text>
               )}
             </g>
           );
         })}
-      {ends.map(({ at, words }, i) => {
-        const [x, y] = place(at);
-        const isRight = x + END_PX < widthPx;
-        const side = isRight ? 1 : -1;
-        // The words of a spot's two ends stand one under the other beside its middle.
-        const [other] = endPlaces.slice(1 - i);
-        const middle = isSpot ? [(x + other[0]) / 2, (y + other[1]) / 2] : [x, y];
-        const wordsX = isSpot ? middle[0] + side * SPOT_AWAY_PX : x + side * 8;
-        const wordsY = isSpot ? middle[1] + 16 * i : y + 16;
-        return (
-          <g key={`${words} ${at[0]}`} className="map-axis-end">
-            {!isSpot && <circle cx={x} cy={y} r={3.2} />}
-            <text x={wordsX} y={wordsY} textAnchor={isRight ? 'start' : 'end'}>
-              {words}
-            </text>
-          </g>
-        );
-      })}
+      {ends.map(({ words, at, x, y, side, isSpot }) => (
+        <g key={`${words} ${at[0]}`} className="map-axis-end">
+          {!isSpot && <circle cx={at[0]} cy={at[1]} r={3.2} />}
+          <text x={x} y={y} textAnchor={ANCHORS[side]}>
+            {words}
+          </text>
+        </g>
+      ))}
     </>
   );
 }
+
+const ANCHORS = { 1: 'start', 0: 'middle', [-1]: 'end' } as const;
+
+interface EndWords {
+  words: string;
+  /** The end itself, and where its words start or end, px. */
+  at: [number, number];
+  x: number;
+  y: number;
+  side: 1 | -1;
+  isSpot: boolean;
+}
+
+/**
+ * Where the words at the ends stand: below the end or above it, on a side that has room; those of a
+ * spot's two ends one under the other beside its middle.
+ */
+function endWords(
+  ends: { words: string; at: [number, number] }[],
+  taken: readonly Box[],
+  widthPx: number,
+): EndWords[] {
+  const [one, two] = ends.map(({ at }) => at);
+  const isSpot = ends.length === 2 && Math.hypot(one[0] - two[0], one[1] - two[1]) < SPOT_PX;
+  const isFree = (box: Box, full: readonly Box[]): boolean =>
+    box.left > 0 && box.right < widthPx && !full.some((other) => meet(box, other));
+  const sides = (x: number): (1 | -1)[] => (x + END_PX < widthPx ? [1, -1] : [-1, 1]);
+  if (isSpot) {
+    const [x, y] = [(one[0] + two[0]) / 2, (one[1] + two[1]) / 2];
+    const pairs = sides(x).flatMap((side) =>
+      SPOT_DOWN_PX.map((down) =>
+        ends.map(({ words, at }, i) => {
+          return { words, at, side, isSpot, x: x + side * SPOT_AWAY_PX, y: y + down + 16 * i };
+        }),
+      ),
+    );
+    return pairs.find((pair) => pair.every((each) => isFree(boxOf(each), taken))) ?? pairs[0];
+  }
+  const full = [...taken];
+  return ends.map(({ words, at }) => {
+    const places = sides(at[0]).flatMap((side) =>
+      [16, -8].map((down) => ({ words, at, side, isSpot, x: at[0] + side * 8, y: at[1] + down })),
+    );
+    const chosen = places.find((each) => isFree(boxOf(each), full)) ?? places[0];
+    full.push(boxOf(chosen));
+    return chosen;
+  });
+}
+
+const boxOf = ({ words, x, y, side }: EndWords): Box => wordsBox(words, x, y - BASELINE_PX, side);
 
 /** What the shades and lines of the corridor mean. */
 export function CorridorKey({ corridor }: { corridor: ReportCorridor }) {
