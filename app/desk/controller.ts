@@ -242,6 +242,12 @@ export function createController(deps: ControllerDeps): Controller {
     const { plateFindings } = store.getState();
     const untouched = before.join() === plateFindings.join();
     shown = { report, trajectory: shown.trajectory };
+    const { clones } = store.getState();
+    // Where the clones are now counted the report says nothing of the sample any more.
+    const isCounted = report.impactProbability?.rareEvent === undefined;
+    if (isCounted && clones.points('rare').length > 0) {
+      store.setState({ clones: clones.withoutRare() });
+    }
     store.setState({ report, ...(untouched ? { plateFindings: firstFindings(report) } : {}) });
   }
 

@@ -23,6 +23,13 @@ export class CloneCloud {
     this.version += 1;
   }
 
+  /** The plain clones alone, in a new cloud. */
+  withoutRare(): CloneCloud {
+    const cloud = new CloneCloud();
+    cloud.append('plain', this.points('plain'));
+    return cloud;
+  }
+
   /** Points so far, CLONE_POINT.size numbers each; a view, not a copy. */
   points(drawn: 'plain' | 'rare'): Float32Array {
     return drawn === 'plain'

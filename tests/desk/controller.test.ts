@@ -452,7 +452,11 @@ describe('the estimate', () => {
     };
     return { ...report, approaches: report.approaches.map((each) => ({ ...each, uncertainty })) };
   };
-  const carried = (count: number, wanted: number, impacts = 0): EstimateEvent => ({
+  const carried = (
+    count: number,
+    wanted: number,
+    impacts = 0,
+  ): Extract<EstimateEvent, { type: 'clones' }> => ({
     type: 'clones',
     approach: 0,
     count,
@@ -517,6 +521,20 @@ describe('the estimate', () => {
     expect(state().estimate).toMatchObject({ status: 'done', fraction: 1 });
     expect(await controller.savePlate()).toContain('ffffffff');
     expect(await saved[0].content.text()).toBe('ffffffffff 2');
+  });
+
+  it('keeps the marks of the rare-event sample only while the report speaks of it', async () => {
+    const { estimates, state } = await finished(uncertain());
+    estimates[0].tell(carried(10_000, 10_000));
+    estimates[0].tell({ ...carried(10_000, 10_000), drawn: 'rare' });
+    const counted = { firstOrder: null, dates: [], seed: 1, reliability: null };
+    const rareEvent = { method: 'sampling', value: 1e-3, relativeError: 0.1, samples: 1 };
+    const sampled = uncertain({ impactProbability: { ...counted, rareEvent } });
+    estimates[0].tell({ type: 'report', report: sampled });
+    expect(state().clones.points('rare')).toHaveLength(7);
+    estimates[0].tell({ type: 'report', report: uncertain({ impactProbability: counted }) });
+    expect(state().clones.points('rare')).toHaveLength(0);
+    expect(state().clones.points('plain')).toHaveLength(7);
   });
 
   it('puts new first findings on the plate unless the person has chosen', async () => {
