@@ -20,7 +20,9 @@ export function HandOver() {
   const hasReport = useDeskStore((state) => state.report !== null && !state.reportIsStale);
   const hasCorridor = useDeskStore((state) => state.report?.corridor !== undefined);
   const hasCase = useDeskStore((state) => state.reading?.case != null);
-  const [said, setSaid] = useState(PLATE_CARRIES);
+  const text = useDeskStore((state) => state.text);
+  /** What was said belongs to the text it was said of. */
+  const [said, setSaid] = useState({ of: text, words: PLATE_CARRIES });
   const [making, setMaking] = useState(false);
 
   function canHand(kind: ExportKind | 'plate'): boolean {
@@ -31,12 +33,13 @@ export function HandOver() {
   async function hand(kind: ExportKind | 'plate') {
     if (making) return;
     setMaking(true);
-    setSaid('The file is being written.');
+    const say = (words: string) => setSaid({ of: text, words });
+    say('The file is being written.');
     try {
       const name = await (kind === 'plate' ? controller.savePlate() : controller.saveFile(kind));
-      setSaid(`Written: ${name}`);
+      say(`Written: ${name}`);
     } catch (error) {
-      setSaid(error instanceof Error ? error.message : String(error));
+      say(error instanceof Error ? error.message : String(error));
     } finally {
       setMaking(false);
     }
@@ -62,7 +65,7 @@ export function HandOver() {
         ))}
       </div>
       <p className="hand-over-said" role="status">
-        {said}
+        {said.of === text ? said.words : PLATE_CARRIES}
       </p>
     </section>
   );
