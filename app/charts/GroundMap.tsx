@@ -1,5 +1,5 @@
 import { geoCircle, geoDistance, geoGraticule, geoPath } from 'd3-geo';
-import { useEffect, useId, useMemo, useRef, useState } from 'react';
+import { useDeferredValue, useEffect, useId, useMemo, useRef, useState } from 'react';
 import type { ReportCorridor } from '../../core/report/corridor';
 import type { Approach } from '../../core/report/report';
 import { reportOfTrajectory } from '../ribbon/shown-report';
@@ -9,7 +9,7 @@ import { useDesk, useDeskStore } from '../store/context';
 import type { Trajectory } from '../worker/trajectory';
 import { groundTrack, type LonLat, pointsBeneath } from './ground-track';
 import { LAND } from './land';
-import { CorridorKey, MapCorridor } from './MapCorridor';
+import { CorridorKey, Drawn, MapCorridor } from './MapCorridor';
 import { MapMarks, MapTicks, markBoxes } from './MapMarks';
 import { corridorShapes } from './map-corridor';
 import {
@@ -47,8 +47,9 @@ const nightOf = ([longitude, latitude]: LonLat) =>
 
 /** The path of the point beneath the object, with day and night at the clock. */
 export function GroundMap() {
-  const report = useDeskStore(reportOfTrajectory);
-  const trajectory = useDeskStore((state) => state.trajectory);
+  // The map is heavy to draw: the rest of the page does not wait for it.
+  const report = useDeferredValue(useDeskStore(reportOfTrajectory));
+  const trajectory = useDeferredValue(useDeskStore((state) => state.trajectory));
   const principal =
     report === null || report.principal === null ? null : report.approaches[report.principal];
   if (principal === null) return null;
@@ -113,14 +114,12 @@ function Track(props: {
             style={{ width: widthPx, height: heightPx - footPx }}
           >
             <svg className="map-svg" aria-hidden="true">
-              <path
+              <Drawn
                 className="map-graticule"
-                d={
-                  map.path(graticule(isClose ? graticuleStep(close.radiusDeg) : WORLD_STEP_DEG)) ??
-                  ''
-                }
+                path={map.path}
+                shape={graticule(isClose ? graticuleStep(close.radiusDeg) : WORLD_STEP_DEG)}
               />
-              <path className="map-land" d={map.path(LAND) ?? ''} />
+              <Drawn className="map-land" path={map.path} shape={LAND} />
             </svg>
             <Night map={map} trajectory={trajectory} />
             <svg className="map-svg" aria-hidden="true">

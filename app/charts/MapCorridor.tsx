@@ -30,15 +30,15 @@ export function MapCorridor(props: {
   heightPx: number;
 }) {
   const { map, shapes, taken, withWords, widthPx, heightPx } = props;
-  const draw = (shape: Parameters<GeoPath>[0]) => map.path(shape) ?? '';
+  const { path } = map;
   return (
     <g className="map-corridor">
       {shapes.bands.map(({ within, shape }, i) => (
-        <path key={within} className={`map-band map-band-${i + 1}`} d={draw(shape)} />
+        <Drawn key={within} className={`map-band map-band-${i + 1}`} path={path} shape={shape} />
       ))}
-      <path className="map-most" d={draw(shapes.most)} />
-      <path className="map-half" d={draw(shapes.half)} />
-      <path className="map-axis" d={draw(shapes.axes)} />
+      <Drawn className="map-most" path={path} shape={shapes.most} />
+      <Drawn className="map-half" path={path} shape={shapes.half} />
+      <Drawn className="map-axis" path={path} shape={shapes.axes} />
       {withWords && (
         <AxisWords
           map={map}
@@ -50,6 +50,12 @@ export function MapCorridor(props: {
       )}
     </g>
   );
+}
+
+/** A shape of the map; a component for each, so that other work can come between two of them. */
+export function Drawn(props: { className: string; path: GeoPath; shape: Parameters<GeoPath>[0] }) {
+  const { className, path, shape } = props;
+  return <path className={className} d={path(shape) ?? ''} />;
 }
 
 /** Times across the axis, and what it is like at the ends. */

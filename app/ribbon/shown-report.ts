@@ -18,3 +18,19 @@ export function reportOfTrajectory({
   trajectoryOf.set(report, own);
   return own === trajectory ? report : null;
 }
+
+const firstOf = new WeakMap<Trajectory, Report>();
+
+/**
+ * The first report of the trajectory in the store. One that clones have made sharper has the same
+ * approaches and crossings: what is drawn of these alone need not be drawn anew.
+ */
+export function firstReportOfTrajectory(
+  state: Pick<DeskStore, 'report' | 'trajectory'>,
+): Report | null {
+  const report = reportOfTrajectory(state);
+  if (report === null) return null;
+  const first = firstOf.get(state.trajectory) ?? report;
+  firstOf.set(state.trajectory, first);
+  return first;
+}

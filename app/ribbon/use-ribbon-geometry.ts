@@ -2,7 +2,7 @@ import { useEffect, useMemo, useState } from 'react';
 import { useDesk, useDeskStore } from '../store/context';
 import { FONT_TEXT } from '../theme/tokens';
 import { type RibbonGeometry, ribbonGeometry } from './geometry';
-import { reportOfTrajectory } from './shown-report';
+import { firstReportOfTrajectory, reportOfTrajectory } from './shown-report';
 
 /** Size of the small text in the ribbon, px; the style sheet says the same. */
 const TEXT_PX = 11;
@@ -15,7 +15,7 @@ export const RIBBON_HEIGHT_PX = 158;
 /** The ribbon of what the store holds; drawn anew as states come, no oftener than it can be read. */
 export function useRibbonGeometry(widthPx: number): RibbonGeometry | null {
   const trajectory = useDeskStore((state) => state.trajectory);
-  const report = useDeskStore(reportOfTrajectory);
+  const report = useDeskStore(firstReportOfTrajectory);
   const spread = useDeskStore((state) =>
     reportOfTrajectory(state) === null ? null : state.spread,
   );

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { clockReading } from '../../app/ribbon/clock-reading';
 import { eventsOf } from '../../app/ribbon/events';
 import { advance, PACES, paceWords, REDUCED_STEP } from '../../app/ribbon/pace';
-import { reportOfTrajectory } from '../../app/ribbon/shown-report';
+import { firstReportOfTrajectory, reportOfTrajectory } from '../../app/ribbon/shown-report';
 import { keyMove } from '../../app/ribbon/slider-keys';
 import { jumpToEvent, togglePlaying } from '../../app/ribbon/transport';
 import { createClock } from '../../app/store/clock';
@@ -85,6 +85,16 @@ describe('the report of the trajectory on the ribbon', () => {
     expect(reportOfTrajectory({ report: shown, trajectory: own })).toBe(shown);
     expect(reportOfTrajectory({ report: shown, trajectory: new Trajectory() })).toBeNull();
     expect(reportOfTrajectory({ report: shown, trajectory: own })).toBe(shown);
+  });
+
+  it('stays the first where clones only sharpen it, and changes with the case', () => {
+    const own = new Trajectory();
+    const [shown, sharper, other] = [report([]), report([]), report([])];
+    expect(firstReportOfTrajectory({ report: shown, trajectory: own })).toBe(shown);
+    expect(firstReportOfTrajectory({ report: sharper, trajectory: own })).toBe(shown);
+    const next = new Trajectory();
+    expect(firstReportOfTrajectory({ report: sharper, trajectory: next })).toBeNull();
+    expect(firstReportOfTrajectory({ report: other, trajectory: next })).toBe(other);
   });
 });
 
