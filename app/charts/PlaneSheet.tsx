@@ -8,6 +8,7 @@ import { planeWords } from './plane-words';
 
 /** Width of a letter in the sheet's small text, px. */
 const LETTER_PX = 6;
+const LINE_PX = 15;
 /** The same in the words of the ticks, px. */
 const TICK_LETTER_PX = 6.3;
 /** Room for the tick words under the sheet, px. */
@@ -45,7 +46,7 @@ export const PlaneSheet = memo(function PlaneSheet(props: {
         </clipPath>
         <g clipPath={`url(#${title}-clip)`}>
           <Axes geometry={geometry} axes={axes} widthPx={widthPx} heightPx={heightPx} />
-          <Discs approach={approach} geometry={geometry} widthPx={widthPx} />
+          <Discs approach={approach} geometry={geometry} widthPx={widthPx} heightPx={heightPx} />
           <Ellipses geometry={geometry} />
           <Line approach={approach} geometry={geometry} isThumbnail={isThumbnail} />
           <Aim
@@ -99,8 +100,13 @@ function Axes(props: {
   );
 }
 
-function Discs(props: { approach: Approach; geometry: PlaneGeometry; widthPx: number }) {
-  const { approach, geometry, widthPx } = props;
+function Discs(props: {
+  approach: Approach;
+  geometry: PlaneGeometry;
+  widthPx: number;
+  heightPx: number;
+}) {
+  const { approach, geometry, widthPx, heightPx } = props;
   const { x, y, discPx, capturePx, aim } = geometry;
   // Words stand on the side away from the aim, and off the axes.
   const side = aim.y > y ? -1 : 1;
@@ -108,6 +114,15 @@ function Discs(props: { approach: Approach; geometry: PlaneGeometry; widthPx: nu
   const name = isWide ? 'capture disc' : `${approach.body}, capture disc`;
   const half = (name.length * LETTER_PX) / 2;
   const beside = x + (aim.x > x ? -1 : 1) * (capturePx * Math.SQRT1_2 + half + 7);
+  const nameX = Math.min(Math.max(beside, half + 4), widthPx - half - 4);
+  const away = capturePx * Math.SQRT1_2 + 10;
+  // A small disc has the aim's words close by.
+  const aimHalf = (aimWords(approach).length * LETTER_PX) / 2;
+  const label = aimLabel(approach, geometry, aimHalf, widthPx, heightPx);
+  const isTaken =
+    geometry.aimIsShown &&
+    Math.abs(label.x - nameX) < half + aimHalf + LETTER_PX &&
+    Math.abs(label.y - (y + side * away)) < LINE_PX;
   return (
     <>
       <circle
@@ -128,12 +143,7 @@ function Discs(props: { approach: Approach; geometry: PlaneGeometry; widthPx: nu
           {approach.body}
         </text>
       )}
-      <text
-        x={Math.min(Math.max(beside, half + 4), widthPx - half - 4)}
-        y={y + side * (capturePx * Math.SQRT1_2 + 10)}
-        dy="0.35em"
-        textAnchor="middle"
-      >
+      <text x={nameX} y={y + (isTaken ? -side : side) * away} dy="0.35em" textAnchor="middle">
         {name}
       </text>
     </>
@@ -216,15 +226,18 @@ function Aim(props: {
     );
   }
   const cross = `M${aim.x - 7} ${aim.y}h14M${aim.x} ${aim.y - 7}v14`;
-  const words = `B ${distanceWords(km)}`;
-  const label = aimLabel(approach, geometry, (words.length * LETTER_PX) / 2, widthPx, heightPx);
+  const words = aimWords(approach);
+  const half = (words.length * LETTER_PX) / 2;
+  const label = aimLabel(approach, geometry, half, widthPx, heightPx);
+  const isOnDisc =
+    Math.abs(label.y - y) < geometry.discPx && Math.abs(label.x - x) < geometry.discPx + half;
   return (
     <>
       <path className="plane-b" d={`M${x} ${y}L${aim.x} ${aim.y}`} />
       <path className="plane-aim-rim" d={cross} />
       <path className="plane-aim" d={cross} />
       <circle className="plane-aim plane-aim-open" cx={aim.x} cy={aim.y} r={3.5} />
-      {!(isThumbnail && widthPx < LEAST_WORDS_PX) && (
+      {!(isThumbnail && (widthPx < LEAST_WORDS_PX || isOnDisc)) && (
         <text x={label.x} y={label.y} dy="0.35em" textAnchor="middle">
           {words}
         </text>
@@ -232,6 +245,9 @@ function Aim(props: {
     </>
   );
 }
+
+const aimWords = ({ hyperbola }: Approach): string =>
+  `B ${distanceWords(hyperbola?.impactParameterKm ?? 0)}`;
 
 /** The middle of the aim's words, which are 2 × `half` px long: clear of the ellipse and of its words. */
 function aimLabel(
