@@ -14,7 +14,7 @@ import {
   speedFinding,
   targetPlaneFinding,
 } from './pass-findings';
-import { probabilityFindings } from './probability-findings';
+import { probabilityFindings, probabilitySentence } from './probability-findings';
 import type { Finding } from './report';
 import { scalesFinding } from './scales-findings';
 
@@ -39,9 +39,15 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
   const caution = reachesAir || mayHit ? CIVIL_PROTECTION_CAUTION : null;
   const mainCaution = main?.body === 'Earth' ? caution : null;
   const moon = main === null ? null : nearMoon(draft, main);
+  const probable = probabilitySentence(draft);
   const answer = main === null ? nothingFound(draft) : answerOf(main, moon);
   const findings = [
-    { ...answer, kind: 'answer' as const, caution },
+    {
+      ...answer,
+      text: probable === null ? answer.text : `${answer.text} ${probable}`,
+      kind: 'answer' as const,
+      caution,
+    },
     ...probabilityFindings(draft, caution),
     draft.scales === undefined ? null : scalesFinding(draft.scales, caution),
     draft.corridor === undefined ? null : corridorFinding(draft.corridor, caution),

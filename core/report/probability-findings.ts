@@ -4,6 +4,14 @@ import type { Finding, ImpactDate, ImpactProbability, Report } from './report';
 
 /** Findings about the probability of impact: how likely, when, whether the methods agree. */
 
+/** The probability as a sentence to follow the answer; null where it is zero or not known. */
+export function probabilitySentence({
+  impactProbability,
+}: Pick<Report, 'impactProbability'>): string | null {
+  const value = impactProbability?.adopted?.value ?? 0;
+  return value > 0 ? `The probability that it strikes the Earth is ${chance(value)}.` : null;
+}
+
 const PERCENT_FROM = 0.001;
 /** Named one by one; more are counted. */
 const MOST_DATES = 3;
@@ -59,7 +67,7 @@ function probabilityFinding(
   const counted =
     ensemble === undefined
       ? ''
-      : ` Of ${formatNumber(ensemble.count, 0)} clones ${ensemble.impacts === 0 ? 'none reaches' : `${formatNumber(ensemble.impacts, 0)} ${ensemble.impacts === 1 ? 'reaches' : 'reach'}`} the ground.`;
+      : ` Of ${formatNumber(ensemble.count, 0)} clones ${ensemble.impacts === 0 ? 'none hits' : `${formatNumber(ensemble.impacts, 0)} ${ensemble.impacts === 1 ? 'hits' : 'hit'}`} the Earth.`;
   const answer =
     value === 0
       ? `No impact of the Earth ${until} was found within the uncertainty given.`
@@ -88,7 +96,7 @@ function datesFinding({ dates }: ImpactProbability, caution: string | null): Fin
   const rest = likely.length - named.length;
   return finding(
     'impact-dates',
-    `${dates.length === 1 ? 'If it strikes, it is' : 'If it strikes, the likeliest are'} ${named.map(say).join('; ')}${rest > 0 ? `; and ${rest} less likely ${rest === 1 ? 'date' : 'dates'}` : ''}.`,
+    `It may strike ${named.map(say).join('; ')}${rest > 0 ? `; and ${rest} less likely ${rest === 1 ? 'date' : 'dates'}` : ''}.`,
     named.map((date) =>
       figure(`${date.body}, ${formatDay(date.tdbSeconds)}`, date.value, '', chance(date.value)),
     ),
