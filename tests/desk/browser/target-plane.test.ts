@@ -47,7 +47,8 @@ describe('the target plane', () => {
       await page.getByRole('radio', { name: 'Target plane' }).check({ force: true });
       const surface = page.locator('.plane-surface');
       await surface.waitFor();
-      expect(await inked(page)).toBeGreaterThan(1000);
+      // Marks are printed in the frame after the surface stands.
+      await expect.poll(() => inked(page), { timeout: 30_000 }).toBeGreaterThan(1000);
       // What the sheet shows of the line of variations waits for the last report.
       await page.locator('.plane-line-words').first().waitFor({ timeout: 60_000 });
 
@@ -63,7 +64,7 @@ describe('the target plane', () => {
       expect(await said(page, /million/)).toBe(
         '1.00 million km from the middle to the nearer edge',
       );
-      expect(await inked(page)).toBeLessThan(whole / 10);
+      await expect.poll(() => inked(page), { timeout: 30_000 }).toBeLessThan(whole / 10);
       await page.keyboard.press('0');
       await page.keyboard.press('ArrowRight');
 
