@@ -236,11 +236,15 @@ export function createController(deps: ControllerDeps): Controller {
     }
   }
 
+  /** Whether the plate's findings are still those that the shown report put there by itself. */
+  function isPlateUntouched(): boolean {
+    const before = shown.report === null ? [] : firstFindings(shown.report);
+    return before.join() === store.getState().plateFindings.join();
+  }
+
   /** Puts the report with the estimate in the place of the one it continues. */
   function sharpen(report: Report): void {
-    const before = shown.report === null ? [] : firstFindings(shown.report);
-    const { plateFindings } = store.getState();
-    const untouched = before.join() === plateFindings.join();
+    const untouched = isPlateUntouched();
     shown = { report, trajectory: shown.trajectory };
     const { clones } = store.getState();
     // Where the clones are now counted the report says nothing of the sample any more.
@@ -252,6 +256,7 @@ export function createController(deps: ControllerDeps): Controller {
   }
 
   function show(next: Shown & { report: Report; spread: Spread | null }): void {
+    const ownFindings = isNewCase || isPlateUntouched();
     shown = next;
     const { report, trajectory, spread } = next;
     store.setState({
@@ -261,7 +266,7 @@ export function createController(deps: ControllerDeps): Controller {
       reportIsStale: false,
       clones: new CloneCloud(),
       estimate: IDLE_ESTIMATE,
-      ...(isNewCase ? { plateFindings: firstFindings(report) } : {}),
+      ...(ownFindings ? { plateFindings: firstFindings(report) } : {}),
     });
     isNewCase = false;
     const at = clock.tdbSeconds;
