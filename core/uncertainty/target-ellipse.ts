@@ -59,11 +59,8 @@ export function firstOrderOf(state: ApproachState, covariance: Float64Array): Fi
     jacobian.set([...out, 0, 0, 0]);
     jacobian.set([...scale(v, rate), ...scale(r, rate)], 6);
   } else {
-    // |r| = R moves with its own time: δt = −(r·δr) / (r·v); the distance is the periapsis of |B|.
-    const size = Math.hypot(state.bDotTKm, state.bDotRKm);
-    const slope = size / Math.hypot(size, state.gm / excessSpeed2(state));
-    const [t, s] = [state.bDotTKm / size, state.bDotRKm / size];
-    for (let k = 0; k < 6; k++) jacobian[k] = slope * (t * b[k] + s * b[6 + k]);
+    // |r| = R moves with its own time: δt = −(r·δr) / (r·v); the distance is the osculating periapsis.
+    jacobian.set(periapsisGradient(state));
     jacobian.set([...scale(out, -1 / dot(out, v)), 0, 0, 0], 6);
   }
   const along = dot(ahead, a);
@@ -129,6 +126,27 @@ function targetPlaneJacobian(state: ApproachState): Float64Array {
     jacobian[6 + k] = (up[1] - down[1]) / (2 * step);
   }
   return jacobian;
+}
+
+/**
+ * Derivatives of the periapsis distance q = h² / (GM (1 + e)) by the state (6), bound or not.
+ *
+ * Central differences, steps as for the target plane.
+ */
+function periapsisGradient({ r, v, gm }: ApproachState): number[] {
+  const size = (x: readonly number[]): number => {
+    const [place, motion] = [vec3(x), vec3(x, 3)];
+    const h = norm(cross(place, motion));
+    const energy = dot(motion, motion) / 2 - gm / norm(place);
+    const eccentricity = Math.sqrt(Math.max(0, 1 + (2 * energy * h * h) / (gm * gm)));
+    return (h * h) / (gm * (1 + eccentricity));
+  };
+  const x = [...r, ...v];
+  return x.map((_, k) => {
+    const step = 1e-5 * (k < 3 ? norm(r) : norm(v));
+    const moved = (by: number): number[] => x.map((value, i) => (i === k ? value + by : value));
+    return (size(moved(step)) - size(moved(-step))) / (2 * step);
+  });
 }
 
 /** Least and largest distance on the 3-σ ellipse of B, the distance following from |B|. */

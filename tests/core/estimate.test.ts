@@ -74,4 +74,13 @@ describe('the estimate', () => {
     expect(last.interval95).toEqual(report.impactProbability?.ensemble?.interval95);
     expect(events.at(-1)).toEqual({ type: 'report', report });
   });
+
+  it('starts from a report also where an object bound to the Earth hits: no target plane, no NaN', async () => {
+    const bound = `Invented, bound\nEarth-centred, ICRF, km, km/s\n2031-03-01T00:00:00 TDB\n200000 0 0 -0.5 0.3 0.02\nsigma 100 km, 1 cm/s\n`;
+    const { assessed } = await assessText(bound, { spanTo: '2031-03-10' });
+    const main = assessed.report.approaches[assessed.report.principal ?? -1];
+    expect(main.outcome).toBe('impact');
+    expect(main.uncertainty?.ellipse).toBeNull();
+    expect(main.uncertainty?.sigmaDistanceKm).toBeGreaterThan(0);
+  });
 });
