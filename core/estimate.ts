@@ -191,7 +191,8 @@ export class Estimate {
 
   private report(): Report {
     const { report, plan } = this.basis;
-    const { rare } = this;
+    // Where plain clones hit often the estimate is a count of a few more: the ensemble's own is the one.
+    const rare = this.rare?.isPlain === true ? null : this.rare;
     const plainGroups = this.tally.groups();
     const rareGroups = rare === null ? [] : groupImpacts(rare.impacts.rows, rare.impacts.weights);
     const likeliest = likeliestOfEarth(rare === null ? plainGroups : rareGroups, rare === null);

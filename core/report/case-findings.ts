@@ -58,12 +58,15 @@ const FIRST_ORDER: Finding['basis'] = {
 const sigma = (label: string, value: number, unit: string): Finding['figures'][number] =>
   figure(label, value, unit, formatSmall(value));
 
-export function certaintyFinding(main: Approach | null): Finding {
+/** @param hasClones other orbits within the uncertainty were carried */
+export function certaintyFinding(main: Approach | null, hasClones: boolean): Finding {
   const given = main?.uncertainty;
   if (main === null) {
     return finding(
       'certainty',
-      'This is about the nominal orbit alone: what other orbits within its uncertainty do was not looked at.',
+      hasClones
+        ? 'The nominal orbit makes no approach here; other orbits within its uncertainty were carried as clones.'
+        : 'This is about the nominal orbit alone: what other orbits within its uncertainty do was not looked at.',
       [],
       NOMINAL,
     );

@@ -70,7 +70,7 @@ export function writeFindings(draft: FindingsDraft): { findings: Finding[]; caut
         ]),
     moidFinding(draft),
     othersFinding(draft, main),
-    certaintyFinding(main),
+    certaintyFinding(main, draft.impactProbability !== undefined),
     assumptionsFinding(draft),
   ].filter((item) => item !== null);
   return {

@@ -57,7 +57,7 @@ export function probabilitySection(facts: ProbabilityFacts): {
     firstOrders.length === 0 ? null : 1 - firstOrders.reduce((miss, p) => miss * (1 - p), 1);
   return {
     impactProbability: rounded({
-      ...keysOf(firstOrder, plain, rare),
+      ...keysOf(firstOrder, plain, rare, facts.lines.size > 0),
       dates: datesOf(facts),
       seed: facts.seed,
       reliability: rare?.reliability ?? null,
@@ -76,6 +76,7 @@ function keysOf(
   firstOrder: number | null,
   plain: PlainCount,
   rare: Omit<RareSummary, 'reliability'> | null,
+  hasLines: boolean,
 ): Keys {
   const adopted = adopt(firstOrder, plain, rare);
   return {
@@ -107,14 +108,14 @@ function keysOf(
             value: adopted.value,
             range95: adopted.range95,
             from: adopted.from,
-            why: whyOf(adopted, plain),
+            why: whyOf(adopted, plain, hasLines),
           },
         }),
   };
 }
 
 /** Why this estimate, and whether the others agree: sentences. */
-function whyOf(adopted: Adopted, plain: PlainCount): string {
+function whyOf(adopted: Adopted, plain: PlainCount, hasLines: boolean): string {
   const { from, value, firstOrderAgrees, ensembleAgrees } = adopted;
   const hits = `${plain.impacts === 0 ? 'none' : formatNumber(plain.impacts, 0)} of ${formatNumber(plain.count, 0)} clones`;
   const reasons: Record<Adopted['from'], string> = {
@@ -122,7 +123,7 @@ function whyOf(adopted: Adopted, plain: PlainCount): string {
     ensemble: `Counted: ${hits} carried by the n-body model hit.`,
     'rare-event':
       value === 0
-        ? `Looked for and not found: ${hits} hit, and no way to an impact was found along the line of variations within 6.5\u2009σ.`
+        ? `Looked for and not found: ${hits} hit${hasLines ? ', and no way to an impact was found along the line of variations within 6.5\u2009σ' : '; there is no line of variations to search, since the nominal orbit has no approach of the Earth ahead'}.`
         : `Sampled where impacts are: ${hits} hit, ${plain.impacts < COUNTABLE ? 'too few to count' : 'a less sharp count'}.`,
   };
   const first =
@@ -163,6 +164,7 @@ function ofApproach(item: Approach, index: number, facts: ProbabilityFacts): Par
       item.impactProbability?.firstOrder ?? null,
       { count: plain.count, impacts },
       own,
+      facts.lines.size > 0,
     ),
     ...(line === undefined || line.length === 0 ? {} : { lineOfVariations: line }),
   };

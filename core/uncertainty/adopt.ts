@@ -74,7 +74,8 @@ function settle(
   interval: [number, number] | null,
   rare: RareValue | null,
 ): Pick<Adopted, 'value' | 'range95' | 'from'> | null {
-  if (rare !== null) {
+  // Hits that the search did not lead to are hits all the same.
+  if (rare !== null && (rare.value > 0 || plain === null || plain.impacts === 0)) {
     const spread = Math.exp(Z95 * (rare.relativeError ?? 0));
     // Where nothing was found, what the plain clones leave open is all that sampling says.
     const range95: [number, number] =

@@ -35,6 +35,8 @@ export interface RareEventOptions {
 
 export interface RareEvent {
   method: string;
+  /** Hits were so frequent that plain clones were counted, and nothing else done. */
+  isPlain: boolean;
   /** Probability that the Earth is hit in the span. */
   value: number;
   /** 1 σ, of the sampling; null where no impact was found. */
@@ -216,6 +218,7 @@ function sampled(
   }
   return {
     method,
+    isPlain: method === PLAIN,
     value: samples === 0 ? 0 : sampling.value,
     relativeError,
     upperBound: null,

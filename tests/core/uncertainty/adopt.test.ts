@@ -45,4 +45,10 @@ describe('the estimate to go by', () => {
     expect(adopted?.firstOrderAgrees).toBe(true);
     expect(adopt(1e-6, plain, { value: 0, relativeError: null })?.firstOrderAgrees).toBe(false);
   });
+
+  it('is the count where clones hit that the search for rare impacts did not lead to', () => {
+    const plain = { count: 10_000, impacts: 3 };
+    const adopted = adopt(null, plain, { value: 0, relativeError: null });
+    expect([adopted?.from, adopted?.value]).toEqual(['ensemble', 3e-4]);
+  });
 });
