@@ -13,7 +13,7 @@ import { writeOem } from './report/oem';
 import type { Report } from './report/report';
 import { createCarrier } from './uncertainty/carry';
 
-/** Case on standard input, report on standard output; errors on standard error with exit code 2. */
+/** Case on standard input, report on standard output; errors on standard error with exit code 2, warnings there beside the report. */
 
 const USAGE = `Usage: npm run -s assess -- [options] < case.txt > report.json
   --gm DE405|DE431   gravitational parameters (default DE431)
@@ -140,6 +140,10 @@ async function main(): Promise<void> {
   }
   const reading = readCase(text, choicesOf(values));
   if (reading.case === null) throw new Refused(whyNot(reading));
+  const warnings = reading.problems.filter(({ severity }) => severity === 'warning');
+  for (const { line, message } of warnings) {
+    process.stderr.write(`Warning: ${line === null ? '' : `line ${line}: `}${message}\n`);
+  }
   const trajectory = new Trajectory();
   const clones = wholeNumber('--clones', values.clones, 10_000, MOST_CLONES);
   const seed = wholeNumber('--seed', values.seed, 1, 2 ** 32 - 1);

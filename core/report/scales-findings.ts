@@ -1,4 +1,4 @@
-import { formatNumber } from './figures';
+import { formatNumber, formatSmall } from './figures';
 import { figure, finding } from './finding';
 import type { Finding } from './report';
 import type { Scales } from './scales';
@@ -16,7 +16,7 @@ export function scalesFinding(scales: Scales, caution: string | null): Finding |
   const most = energies.reduce((a, b) => (b[1] > a[1] ? b : a));
   const said = [
     `Palermo scale ${spread(cumulativePalermo, 1)}${dates.length === 1 ? '' : `, summed over ${dates.length} dates`}; ${torinoWords(highestTorino)}.`,
-    `The range is that of the size: diameter ${spread(size.diameterM, 0)}\u2009m, energy ${spread(most, 1)}\u2009Mt of TNT.`,
+    `The range is that of the size: diameter ${spread(size.diameterM, 0)}\u2009m, energy ${spreadOf(most, formatSmall)}\u2009Mt of TNT.`,
     ...assumed,
   ];
   return finding(
@@ -25,7 +25,7 @@ export function scalesFinding(scales: Scales, caution: string | null): Finding |
     [
       figure('Palermo scale, nominal', cumulativePalermo[1], '', 2),
       figure('diameter, nominal', size.diameterM[1], 'm', 0),
-      figure('energy, nominal', most[1], 'Mt', 1),
+      figure('energy, nominal', most[1], 'Mt', formatSmall(most[1])),
     ],
     BASIS,
     null,
@@ -42,8 +42,11 @@ const BASIS: Finding['basis'] = {
 };
 
 /** "−2.1 (−3.0 to −1.2)", or one figure where all are the same. */
-function spread([low, nominal, high]: Triple, decimals: number): string {
-  const [a, b, c] = [low, nominal, high].map((value) => formatNumber(value, decimals));
+const spread = (of: Triple, decimals: number): string =>
+  spreadOf(of, (value) => formatNumber(value, decimals));
+
+function spreadOf([low, nominal, high]: Triple, format: (value: number) => string): string {
+  const [a, b, c] = [low, nominal, high].map(format);
   return a === c ? b : `${b} (${a} to ${c})`;
 }
 
