@@ -13,17 +13,18 @@ export interface Demo {
   text: string;
 }
 
-export const DEMOS: Demo[] = [
-  {
-    id: 'pass',
-    title: 'A pass inside the geosynchronous belt',
-    note: 'Invented. A CCSDS OPM with a covariance, ten weeks ahead.',
-    text: `CCSDS_OPM_VERS = 3.0
+/** The low pass as an OPM, by the diagonal of its covariance: km², then km²/s². */
+const lowPass = (
+  name: string,
+  id: string,
+  [rr, tt, nn, vr, vt, vn]: readonly string[],
+  h: string,
+): string => `CCSDS_OPM_VERS = 3.0
 COMMENT An invented object on an invented approach: nothing in the sky follows this orbit.
 CREATION_DATE = 2031-03-01T09:00:00
 ORIGINATOR = SKIMLINE DEMO
-OBJECT_NAME = Invented A, low pass
-OBJECT_ID = INVENTED-A
+OBJECT_NAME = ${name}
+OBJECT_ID = ${id}
 CENTER_NAME = SUN
 REF_FRAME = ICRF
 TIME_SYSTEM = TDB
@@ -35,30 +36,42 @@ X_DOT = -17.3091705923 [km/s]
 Y_DOT = -23.9733256970 [km/s]
 Z_DOT = -10.7018195987 [km/s]
 COV_REF_FRAME = RTN
-CX_X = 900.0
+CX_X = ${rr}
 CY_X = 0.0
-CY_Y = 14400.0
+CY_Y = ${tt}
 CZ_X = 0.0
 CZ_Y = 0.0
-CZ_Z = 625.0
+CZ_Z = ${nn}
 CX_DOT_X = 0.0
 CX_DOT_Y = 0.0
 CX_DOT_Z = 0.0
-CX_DOT_X_DOT = 1.6e-10
+CX_DOT_X_DOT = ${vr}
 CY_DOT_X = 0.0
 CY_DOT_Y = 0.0
 CY_DOT_Z = 0.0
 CY_DOT_X_DOT = 0.0
-CY_DOT_Y_DOT = 2.5e-11
+CY_DOT_Y_DOT = ${vt}
 CZ_DOT_X = 0.0
 CZ_DOT_Y = 0.0
 CZ_DOT_Z = 0.0
 CZ_DOT_X_DOT = 0.0
 CZ_DOT_Y_DOT = 0.0
-CZ_DOT_Z_DOT = 4.0e-11
-USER_DEFINED_H = 23.9
+CZ_DOT_Z_DOT = ${vn}
+USER_DEFINED_H = ${h}
 USER_DEFINED_G = 0.15
-`,
+`;
+
+export const DEMOS: Demo[] = [
+  {
+    id: 'pass',
+    title: 'A pass inside the geosynchronous belt',
+    note: 'Invented. A CCSDS OPM with a covariance, ten weeks ahead.',
+    text: lowPass(
+      'Invented A, low pass',
+      'INVENTED-A',
+      ['900.0', '14400.0', '625.0', '1.6e-10', '2.5e-11', '4.0e-11'],
+      '23.9',
+    ),
   },
   {
     id: 'wide-miss',
@@ -126,46 +139,11 @@ H = 29.0
     id: 'may-hit',
     title: 'A possible impact',
     note: 'Invented. A first solution with a wide covariance: some of what it allows hits.',
-    text: `CCSDS_OPM_VERS = 3.0
-COMMENT An invented object on an invented approach: nothing in the sky follows this orbit.
-CREATION_DATE = 2031-03-01T09:00:00
-ORIGINATOR = SKIMLINE DEMO
-OBJECT_NAME = Invented G, may hit
-OBJECT_ID = INVENTED-G
-CENTER_NAME = SUN
-REF_FRAME = ICRF
-TIME_SYSTEM = TDB
-EPOCH = 2031-03-01T00:00:00.000
-X = -116968342.9423 [km]
-Y = 10740112.8277 [km]
-Z = 19883009.1765 [km]
-X_DOT = -17.3091705923 [km/s]
-Y_DOT = -23.9733256970 [km/s]
-Z_DOT = -10.7018195987 [km/s]
-COV_REF_FRAME = RTN
-CX_X = 1.44e6
-CY_X = 0.0
-CY_Y = 2.304e7
-CZ_X = 0.0
-CZ_Y = 0.0
-CZ_Z = 1.0e6
-CX_DOT_X = 0.0
-CX_DOT_Y = 0.0
-CX_DOT_Z = 0.0
-CX_DOT_X_DOT = 2.56e-7
-CY_DOT_X = 0.0
-CY_DOT_Y = 0.0
-CY_DOT_Z = 0.0
-CY_DOT_X_DOT = 0.0
-CY_DOT_Y_DOT = 4.0e-8
-CZ_DOT_X = 0.0
-CZ_DOT_Y = 0.0
-CZ_DOT_Z = 0.0
-CZ_DOT_X_DOT = 0.0
-CZ_DOT_Y_DOT = 0.0
-CZ_DOT_Z_DOT = 6.4e-8
-USER_DEFINED_H = 22.6
-USER_DEFINED_G = 0.15
-`,
+    text: lowPass(
+      'Invented G, may hit',
+      'INVENTED-G',
+      ['1.44e6', '2.304e7', '1.0e6', '2.56e-7', '4.0e-8', '6.4e-8'],
+      '22.6',
+    ),
   },
 ];
