@@ -63,12 +63,15 @@ export function probabilitySection(facts: ProbabilityFacts): {
       reliability: rare?.reliability ?? null,
     }),
     approaches: report.approaches.map((item, index) =>
-      item.tdbSeconds > epochTdbSeconds && item.impactProbability !== undefined
+      item.tdbSeconds > epochTdbSeconds && item.uncertainty !== undefined && isWatched(item)
         ? { ...item, ...rounded(ofApproach(item, index, facts)) }
         : item,
     ),
   };
 }
+
+/** Clones are watched at the Earth and the Moon; of other bodies they say nothing. */
+const isWatched = ({ body }: Approach): boolean => body === 'Earth' || body === 'Moon';
 
 type Keys = Pick<ImpactProbability, 'firstOrder' | 'ensemble' | 'rareEvent' | 'adopted'>;
 
