@@ -83,4 +83,21 @@ describe('the estimate', () => {
     expect(main.uncertainty?.ellipse).toBeNull();
     expect(main.uncertainty?.sigmaDistanceKm).toBeGreaterThan(0);
   });
+
+  it('speaks of passes of the Earth and the Moon, bound ones too, and of no planet', async () => {
+    const wide = await assessText(WIDE, { spanTo: '2031-08-01' });
+    const report = await new Estimate(wide.basis, 1).run(500, wide.host);
+    const of = (body: string) => report.approaches.find((item) => item.body === body);
+    expect(of('Earth')?.impactProbability?.ensemble?.count).toBe(500);
+    expect(of('Moon')?.impactProbability?.ensemble?.count).toBe(500);
+    expect(of('Venus')?.impactProbability?.firstOrder).toBeDefined();
+    expect(of('Venus')?.impactProbability?.adopted).toBeUndefined();
+    const slow = DEMOS.find(({ id }) => id === 'slow')?.text ?? '';
+    const bound = await assessText(`${slow}sigma 50 km, 1 mm/s\n`, { spanTo: '2033-04-01' });
+    const held = await new Estimate(bound.basis, 1).run(500, bound.host);
+    const pass = held.approaches.find((item) => item.body === 'Earth');
+    expect(pass?.targetPlane).toBeNull();
+    expect(pass?.impactProbability?.firstOrder).toBeNull();
+    expect(pass?.impactProbability?.adopted).toBeDefined();
+  });
 });
