@@ -1,3 +1,4 @@
+import { lastNotAfter } from '../../core/math/sorted';
 import { SPREAD } from '../../core/uncertainty/spread-layout';
 
 export { SPREAD };
@@ -17,14 +18,7 @@ export class Spread {
 
   /** Index of the last row not after the instant; clamped so that index + 1 exists. */
   indexAt(tdbSeconds: number): number {
-    let low = 0;
-    let high = this.count - 1;
-    while (high - low > 1) {
-      const middle = (low + high) >> 1;
-      if (this.timeOf(middle) <= tdbSeconds) low = middle;
-      else high = middle;
-    }
-    return low;
+    return lastNotAfter(this.rows, SPREAD.stride, 0, this.count, tdbSeconds);
   }
 
   /**

@@ -1,4 +1,5 @@
 import { hermiteState } from '../math/hermite';
+import { lastNotAfter } from '../math/sorted';
 import { SAMPLE } from './sample-layout';
 
 /**
@@ -81,14 +82,7 @@ export class Trajectory {
 
   /** Index of the last sample not after the instant; clamped so that index + 1 exists. */
   indexAt(tdbSeconds: number): number {
-    let low = 0;
-    let high = this.count - 1;
-    while (high - low > 1) {
-      const middle = (low + high) >> 1;
-      if (this.timeOf(middle) <= tdbSeconds) low = middle;
-      else high = middle;
-    }
-    return low;
+    return lastNotAfter(this.rows, SAMPLE.stride, this.first, this.count, tdbSeconds);
   }
 
   /**

@@ -99,9 +99,6 @@ export class MixtureSampling {
   }
 }
 
-/** Upper end of what a count of none leaves open, 95 %, as a share of the clones. */
-export const boundWithoutHits = (count: number): number => 1 - 0.05 ** (1 / count);
-
 /** Standard error of a plain count over its value; with the count itself kept off 0 and 1 (Agresti & Coull 1998). */
 export function plainRelativeError(hits: number, count: number): number {
   const n = count + Z95 * Z95;

@@ -11,7 +11,7 @@ import {
   partingTime,
   scanLine,
 } from './line-of-variations';
-import { boundWithoutHits, MixtureSampling, plainRelativeError } from './mixture-sampling';
+import { MixtureSampling, plainRelativeError } from './mixture-sampling';
 import { sampleRegions } from './region-sampling';
 
 export interface RareEventOptions {
@@ -41,8 +41,6 @@ export interface RareEvent {
   value: number;
   /** 1 σ, of the sampling; null where no impact was found. */
   relativeError: number | null;
-  /** What plain clones alone leave open where no impact was found, 95 %; null otherwise. */
-  upperBound: number | null;
   /** Clones carried in all. */
   samples: number;
   /** Separate impacting regions that were sampled. */
@@ -113,7 +111,6 @@ export async function estimateRareEvent(options: RareEventOptions): Promise<Rare
       ...sampled(METHOD, pilot, null, 0, carrier),
       lines,
       reliability: wordsOf(parting, isComplete, false),
-      upperBound: boundWithoutHits(pilot.samples),
     };
   }
   const linear = regions.reduce((sum, { probability }) => sum + probability, 0);
@@ -122,7 +119,6 @@ export async function estimateRareEvent(options: RareEventOptions): Promise<Rare
     ...sampled(METHOD, sampling, sampling.relativeError, regions.length, carrier),
     lines,
     reliability: wordsOf(parting, isComplete, sampling.value * CURVED < linear),
-    upperBound: sampling.hits.length === 0 ? boundWithoutHits(pilot.samples) : null,
   };
 }
 
@@ -221,7 +217,6 @@ function sampled(
     isPlain: method === PLAIN,
     value: samples === 0 ? 0 : sampling.value,
     relativeError,
-    upperBound: null,
     samples: carrier.count,
     regions,
     impacts: { rows, weights },

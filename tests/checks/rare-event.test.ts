@@ -260,14 +260,11 @@ describe('the rare-event estimate at its edges', () => {
   const near = linear([100, 100], [10, 0, 0, 0, 0, 0], [0, 20, 0, 0, 0, 0]);
   const far = linear([5e6, 8e5], T, R);
 
-  it('says nothing was found where nothing is within 6.5 σ, with a bound', async () => {
+  it('says nothing was found where nothing is within 6.5 σ', async () => {
     const found = await estimate([far], 6, 1);
     expect(found.value).toBe(0);
     expect(found.relativeError).toBeNull();
     expect(found.regions).toBe(0);
-    // None of n clones leaves open 3/n at 95 %, to first order (rule of three).
-    expect(found.upperBound).toBeGreaterThan(2.5 / 400);
-    expect(found.upperBound).toBeLessThan(3.1 / 400);
   });
 
   it('counts plainly what is not rare, up to certainty', async () => {
