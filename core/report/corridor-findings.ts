@@ -16,6 +16,9 @@ const FEW_CLONES = 30;
 /** A strip in time longer than this is several dates, each with its own entry. */
 const ONE_DATE_S = 86400;
 
+/** Wider than this share of its length a strip is called an area: its ends are hardly defined. */
+const WIDE = 0.25;
+
 type Piece = ReportCorridor['pieces'][number];
 
 /** A whole length with the two figures that a person would say. */
@@ -39,7 +42,7 @@ export function corridorFinding(corridor: ReportCorridor, caution: string | null
       `It enters at ${range(airSpeedKmS, (value) => formatSpeed(value))} against the air, ${range(airFlightPathAngleDeg.map((angle) => -angle).reverse(), (value) => formatDegrees(value, 0))} below the horizontal (90\u2009% of the cases).`,
       ...(corridor.effectiveClones < FEW_CLONES
         ? [
-            `This rests on ${corridor.clones} impacting ${corridor.clones === 1 ? 'clone' : 'clones'}, of the worth of ${formatNumber(corridor.effectiveClones, 0)}: its shape is hardly known.`,
+            `This rests on ${corridor.clones} impacting ${corridor.clones === 1 ? 'clone' : 'clones'}, as good as ${formatNumber(corridor.effectiveClones, 0)} of equal weight: its shape is hardly known.`,
           ]
         : []),
       'Flight without air to the ground; air would shorten it by some kilometres or more.',
@@ -68,6 +71,9 @@ function placeOf({ axis, lengthKm }: Piece, width: number): string {
     const size = width > 0 ? `, on a spot about ${roughKm(width)} wide` : '';
     return `near ${at(first)}${size}`;
   }
+  if (width > WIDE * lengthKm) {
+    return `on an area about ${roughKm(lengthKm)} by ${roughKm(width)} (2\u2009σ) whose middle line runs from near ${at(first)} to near ${at(last)}`;
+  }
   return `on a strip from ${at(first)} to ${at(last)}, ${roughKm(lengthKm)} long and about ${roughKm(width)} wide (2\u2009σ)`;
 }
 
@@ -81,7 +87,7 @@ function share({ pieces, probability }: ReportCorridor): string {
 function when({ firstEntry, medianEntry, lastEntry, pieces }: ReportCorridor): string {
   const lasts = lastEntry.tdbSeconds - firstEntry.tdbSeconds;
   if (lasts > ONE_DATE_S) {
-    return `The likeliest strip is met on ${formatMoment(pieces[0].axis[0].entry.tdbSeconds)}; there are other dates.`;
+    return `The likeliest strip is met on ${formatMoment(pieces[0].axis[0].entry.tdbSeconds)}; other strips are met on other days.`;
   }
   const within = lasts >= 1 ? `, all within ${formatDuration(lasts)}` : '';
   return `Entry is near ${formatMoment(medianEntry.tdbSeconds)}${within}.`;

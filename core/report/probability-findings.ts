@@ -1,3 +1,5 @@
+import { tdbSecondsFromJdTdb } from '../time/convert';
+import { formatIso } from '../time/format';
 import { formatDay, formatNumber, formatProbability, formatSpeed } from './figures';
 import { figure, finding, NAMES } from './finding';
 import type { Finding, ImpactDate, ImpactProbability, Report } from './report';
@@ -19,7 +21,8 @@ const MOST_DATES = 3;
 /** "0.19 %" or "1 in 23 000": what a person can weigh. */
 function chance(p: number): string {
   if (p === 0) return 'zero';
-  return p >= PERCENT_FROM && p < 0.995
+  if (p >= 0.995) return 'above 99.5\u2009%';
+  return p >= PERCENT_FROM
     ? `${formatNumber(100 * p, p < 0.1 ? 2 : 1)}\u2009%`
     : formatProbability(p);
 }
@@ -49,7 +52,7 @@ export function probabilityFindings(
   const { impactProbability } = draft;
   if (impactProbability?.adopted === undefined) return [];
   return [
-    probabilityFinding(impactProbability, draft.model.span.toUtc, caution),
+    probabilityFinding(impactProbability, draft.model.span.toJdTdb, caution),
     datesFinding(impactProbability, caution),
     agreementFinding(impactProbability),
     reliabilityFinding(impactProbability),
@@ -58,12 +61,13 @@ export function probabilityFindings(
 
 function probabilityFinding(
   { adopted, ensemble, rareEvent }: ImpactProbability,
-  toUtc: string,
+  toJdTdb: number,
   caution: string | null,
 ): Finding | null {
   if (adopted === undefined) return null;
   const { value, range95, from } = adopted;
-  const until = `by ${toUtc.slice(0, 10)}`;
+  // The end of the span is asked for in TDB: its midnight is still the day before in UTC.
+  const until = `by ${formatIso(tdbSecondsFromJdTdb(toJdTdb), 'TDB', 0).slice(0, 10)}`;
   const counted =
     ensemble === undefined
       ? ''
@@ -96,7 +100,7 @@ function datesFinding({ dates }: ImpactProbability, caution: string | null): Fin
   const rest = likely.length - named.length;
   return finding(
     'impact-dates',
-    `It may strike ${named.map(say).join('; ')}${rest > 0 ? `; and ${rest} less likely ${rest === 1 ? 'date' : 'dates'}` : ''}.`,
+    `${named[0].value < 0.995 ? 'It may strike' : 'It strikes'} ${named.map(say).join('; ')}${rest > 0 ? `; and ${rest} less likely ${rest === 1 ? 'date' : 'dates'}` : ''}.`,
     named.map((date) =>
       figure(`${date.body}, ${formatDay(date.tdbSeconds)}`, date.value, '', chance(date.value)),
     ),
