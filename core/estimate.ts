@@ -208,6 +208,7 @@ export class Estimate {
     const probability = probabilitySection({
       report,
       epochTdbSeconds: plan.epochTdbSeconds,
+      untilTdbSeconds: plan.toTdbSeconds,
       seed: this.seed,
       plain: { count: this.carried, impacts: this.tally.earth },
       plainGroups,

@@ -46,13 +46,13 @@ const BASIS: Record<NonNullable<ImpactProbability['adopted']>['from'], Finding['
 };
 
 export function probabilityFindings(
-  draft: Pick<Report, 'impactProbability' | 'model'>,
+  draft: Pick<Report, 'impactProbability'>,
   caution: string | null,
 ): Finding[] {
   const { impactProbability } = draft;
   if (impactProbability?.adopted === undefined) return [];
   return [
-    probabilityFinding(impactProbability, draft.model.span.toJdTdb, caution),
+    probabilityFinding(impactProbability, caution),
     datesFinding(impactProbability, caution),
     agreementFinding(impactProbability),
     reliabilityFinding(impactProbability),
@@ -60,14 +60,13 @@ export function probabilityFindings(
 }
 
 function probabilityFinding(
-  { adopted, ensemble, rareEvent }: ImpactProbability,
-  toJdTdb: number,
+  { adopted, ensemble, rareEvent, untilJdTdb }: ImpactProbability,
   caution: string | null,
 ): Finding | null {
   if (adopted === undefined) return null;
   const { value, range95, from } = adopted;
   // The end of the span is asked for in TDB: its midnight is still the day before in UTC.
-  const until = `by ${formatIso(tdbSecondsFromJdTdb(toJdTdb), 'TDB', 0).slice(0, 10)}`;
+  const until = `by ${formatIso(tdbSecondsFromJdTdb(untilJdTdb), 'TDB', 0).slice(0, 10)}`;
   const counted =
     ensemble === undefined
       ? ''

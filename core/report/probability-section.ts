@@ -1,4 +1,5 @@
 import { BODIES, SECONDS_PER_DAY } from '../constants';
+import { jdFromTdbSeconds } from '../time/convert';
 import { formatIso } from '../time/format';
 import { type Adopted, adopt, intervalOf, type PlainCount } from '../uncertainty/adopt';
 import type { ImpactGroup } from '../uncertainty/tally';
@@ -22,6 +23,8 @@ export interface RareSummary {
 export interface ProbabilityFacts {
   report: Report;
   epochTdbSeconds: number;
+  /** Where the clones were carried to. */
+  untilTdbSeconds: number;
   seed: number;
   plain: PlainCount;
   /** Impacts among the plain clones, weight one each. */
@@ -59,6 +62,7 @@ export function probabilitySection(facts: ProbabilityFacts): {
     impactProbability: rounded({
       ...keysOf(firstOrder, plain, rare, facts.lines.size > 0),
       dates: datesOf(facts),
+      untilJdTdb: jdFromTdbSeconds(facts.untilTdbSeconds),
       seed: facts.seed,
       reliability: rare?.reliability ?? null,
     }),

@@ -187,6 +187,9 @@ const impactDate = v.object({
 const impactProbability = v.object({
   ...probabilityKeys,
   dates: v.array(impactDate),
+  untilJdTdb: number(
+    'To where the clones were carried; the nominal trajectory may end before, on the ground.',
+  ),
   seed: v.nullable(count),
   /** Null where nothing speaks against it. */
   reliability: v.nullable(text('Where the estimate stops being reliable, and why.')),
