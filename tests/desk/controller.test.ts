@@ -527,7 +527,13 @@ describe('the estimate', () => {
     const { estimates, state } = await finished(uncertain());
     estimates[0].tell(carried(10_000, 10_000));
     estimates[0].tell({ ...carried(10_000, 10_000), drawn: 'rare' });
-    const counted = { firstOrder: null, dates: [], seed: 1, reliability: null };
+    const counted = {
+      firstOrder: null,
+      dates: [],
+      seed: 1,
+      untilJdTdb: 2463000.5,
+      reliability: null,
+    };
     const rareEvent = { method: 'sampling', value: 1e-3, relativeError: 0.1, samples: 1 };
     const sampled = uncertain({ impactProbability: { ...counted, rareEvent } });
     estimates[0].tell({ type: 'report', report: sampled });
