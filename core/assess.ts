@@ -3,7 +3,6 @@ import type { OrbitCase } from './case/types';
 import {
   AU_KM,
   BODY_INDEX,
-  EARTH_MOON_MASS_RATIO,
   EARTH_RADIUS_KM,
   ENTRY_INTERFACE_ALTITUDE_KM,
   GM_KM3_S2,
@@ -13,29 +12,23 @@ import {
 import { createForceModel } from './dynamics/force-model';
 import { INTEGRATION_TOLERANCE } from './dynamics/propagate';
 import { Sampler } from './dynamics/samples';
-import { type ApproachRecord, assembleApproaches } from './encounter/approach';
-import { integrateLeg, type Leg, type LegHost, LONGEST_STEP_S, stateInLeg } from './encounter/leg';
+import { assembleApproaches } from './encounter/approach';
+import { integrateLeg, type Leg, type LegHost, LONGEST_STEP_S } from './encounter/leg';
+import { principalOf } from './encounter/principal';
 import type { EncounterEvent } from './encounter/scan';
 import { EPHEMERIS_COVERAGE, type Ephemeris, loadEphemeris } from './ephemeris';
+import { bodyState, earthFromBarycentre, earthMoonBarycentre } from './ephemeris/earth-moon';
 import type { AssessHost, AssessInput } from './events';
 import { fly } from './fly';
-import { icrfToEcliptic } from './frames/ecliptic';
-import { add, scale, subtract, type Vec3, vec3 } from './math/vector';
-import { type ClassicalEncounter, classicalEncounter } from './orbit/classical';
-import { elementsFromState } from './orbit/elements';
+import { add } from './math/vector';
+import { classicalEncounter } from './orbit/classical';
+import { comparisonOf, endsInWords, orbitChange } from './pass-sections';
 import { sealReport } from './report/canonical';
 import { caseSection } from './report/case-section';
 import { writeFindings } from './report/findings';
 import { modelSection } from './report/model-section';
-import {
-  type Approach,
-  type Comparison,
-  REPORT_VERSION,
-  type Report,
-  type ReportElements,
-} from './report/report';
-import { approachSection, classicalSection, elementsSection } from './report/sections';
-import { jdFromTdbSeconds } from './time/convert';
+import { REPORT_VERSION, type Report } from './report/report';
+import { approachSection, classicalSection } from './report/sections';
 import { uncertaintiesOf } from './uncertainty/approaches';
 import type { ClonePlan } from './uncertainty/clones';
 import { factorOf } from './uncertainty/factor';
@@ -72,15 +65,10 @@ const NEAR_APPROACH_KM = 0.05 * AU_KM;
 const DEFAULT_RULE =
   'From 30 days before the epoch to the later of one year after it and 60 days past the first approach to the Earth within 0.05 au; ten years when there is none.';
 const ASKED_RULE = 'As asked.';
-/** The orbit before and after a pass is taken this far from it, or as far as the span allows. */
-const ORBIT_CHANGE_S = 60 * DAY;
-const LEAST_ORBIT_CHANGE_S = 5 * DAY;
 /** Flights of the nominal entry through the air. */
 const FLIGHTS = 200;
 /** How far the classical chain looks past the end on a surface. */
 const PAST_SURFACE_S = 30 * DAY;
-/** A two-body approach this far in time from the n-body one is not the same pass. */
-const SAME_PASS_S = 10 * DAY;
 
 /**
  * The pipeline: a case becomes a stream of states and, at the end, one report.
@@ -301,126 +289,7 @@ async function integrate(
   return { forward, backward };
 }
 
-function bodyState(ephemeris: Ephemeris, body: number, tdbSeconds: number): { r: Vec3; v: Vec3 } {
-  const base = Math.floor(tdbSeconds);
-  const all = new Float64Array(66);
-  ephemeris.states(base, tdbSeconds - base, all);
-  return { r: vec3(all, body * 6), v: vec3(all, body * 6 + 3) };
-}
-
 function barycentric(n: NormalisedCase, ephemeris: Ephemeris): Float64Array {
   const sun = bodyState(ephemeris, BODY_INDEX.Sun, n.epochTdbSeconds);
   return Float64Array.from([...add(n.positionKm, sun.r), ...add(n.velocityKmS, sun.v)]);
-}
-
-/** The Earth's centre relative to the Earth–Moon barycentre. */
-function earthFromBarycentre(ephemeris: Ephemeris, tdbSeconds: number): { r: Vec3; v: Vec3 } {
-  const earth = bodyState(ephemeris, BODY_INDEX.Earth, tdbSeconds);
-  const moon = bodyState(ephemeris, BODY_INDEX.Moon, tdbSeconds);
-  const share = 1 / (1 + EARTH_MOON_MASS_RATIO);
-  return {
-    r: scale(subtract(earth.r, moon.r), share),
-    v: scale(subtract(earth.v, moon.v), share),
-  };
-}
-
-/** Heliocentric state of the Earth–Moon barycentre. */
-function earthMoonBarycentre(ephemeris: Ephemeris, tdbSeconds: number): { r: Vec3; v: Vec3 } {
-  const earth = bodyState(ephemeris, BODY_INDEX.Earth, tdbSeconds);
-  const sun = bodyState(ephemeris, BODY_INDEX.Sun, tdbSeconds);
-  const offset = earthFromBarycentre(ephemeris, tdbSeconds);
-  return {
-    r: subtract(subtract(earth.r, sun.r), offset.r),
-    v: subtract(subtract(earth.v, sun.v), offset.v),
-  };
-}
-
-/** The approach the briefing is about: an impact, else the nearest pass of the Earth, else of any. */
-function principalOf(records: readonly ApproachRecord[]): number | null {
-  const nearest = (wanted: (record: ApproachRecord) => boolean): number | null => {
-    let best: number | null = null;
-    for (const [i, record] of records.entries()) {
-      if (!wanted(record)) continue;
-      if (best === null || record.distanceKm < records[best].distanceKm) best = i;
-    }
-    return best;
-  };
-  return (
-    nearest((record) => record.outcome === 'impact') ??
-    nearest((record) => record.body === 'Earth') ??
-    nearest(() => true)
-  );
-}
-
-/** Heliocentric elements before and after a pass inside the Earth's sphere of influence. */
-function orbitChange(
-  record: ApproachRecord,
-  legs: readonly Leg[],
-  ephemeris: Ephemeris,
-  gmSun: number,
-): Pick<Approach, 'orbitBefore' | 'orbitAfter'> {
-  if (record.body !== 'Earth' || record.distanceKm > SPHERE_OF_INFLUENCE_KM) return {};
-  const at = (direction: 1 | -1): ReportElements | null => {
-    const state = new Float64Array(6);
-    for (let reach = ORBIT_CHANGE_S; reach >= LEAST_ORBIT_CHANGE_S; reach -= LEAST_ORBIT_CHANGE_S) {
-      const tdbSeconds = record.tdbSeconds + direction * reach;
-      if (!legs.some((leg) => stateInLeg(leg, tdbSeconds, state))) continue;
-      const sun = bodyState(ephemeris, BODY_INDEX.Sun, tdbSeconds);
-      return elementsSection(
-        elementsFromState(
-          icrfToEcliptic(subtract(vec3(state), sun.r)),
-          icrfToEcliptic(subtract(vec3(state, 3), sun.v)),
-          gmSun,
-        ),
-      );
-    }
-    return null;
-  };
-  const before = at(-1);
-  const after = record.outcome === 'impact' ? null : at(1);
-  return {
-    ...(before === null ? {} : { orbitBefore: before }),
-    ...(after === null ? {} : { orbitAfter: after }),
-  };
-}
-
-/** The two answers for the principal pass of the Earth side by side. */
-function comparisonOf(
-  record: ApproachRecord | null,
-  classical: ClassicalEncounter,
-  epoch: number,
-): Comparison | null {
-  if (record === null || record.body !== 'Earth') return null;
-  const unperturbed = classical.approaches
-    .filter((item) => Math.abs(epoch + item.dtS - record.tdbSeconds) <= SAME_PASS_S)
-    .sort((a, b) => a.distanceKm - b.distanceKm)[0];
-  if (unperturbed === undefined) return null;
-  const sameEntry = classical.closest.dtS === unperturbed.dtS;
-  const periapsis = sameEntry ? classical.periapsis : null;
-  return {
-    jdTdb: jdFromTdbSeconds(record.tdbSeconds),
-    unperturbedDistanceKm: unperturbed.distanceKm,
-    classicalPeriapsisKm: periapsis?.distanceKm ?? null,
-    nBodyDistanceKm: record.distanceKm,
-    impactParameterKm: record.hyperbola?.impactParameterKm ?? null,
-    classicalTimeMinusNBodyS: epoch + (periapsis?.dtS ?? unperturbed.dtS) - record.tdbSeconds,
-  };
-}
-
-function endsInWords(forward: Leg, backward: Leg): string | null {
-  const circled = forward.circled ?? backward.circled;
-  const words = [
-    ...(forward.surface === null
-      ? []
-      : [`It ends where it meets the surface of the ${forward.surface.body}.`]),
-    ...(backward.surface === null
-      ? []
-      : [`It begins on the surface of the ${backward.surface.body}.`]),
-    ...(circled === null
-      ? []
-      : [
-          `The search was stopped after a hundred approaches: the object circles the ${circled}. Ask for a shorter span to see another part.`,
-        ]),
-  ];
-  return words.length === 0 ? null : words.join(' ');
 }
