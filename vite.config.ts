@@ -17,6 +17,8 @@ export default defineConfig({
   server: { port: 5173 },
   preview: { port: 4173 },
   test: {
+    // Two cores are what the tests must fit on; by itself vitest would leave one of them out.
+    maxWorkers: 2,
     testTimeout: 60_000,
     hookTimeout: 120_000,
     projects: [
@@ -24,6 +26,7 @@ export default defineConfig({
         extends: true,
         test: {
           name: 'code',
+          setupFiles: 'tests/seed.ts',
           include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'],
           exclude: ['tests/desk/browser/**'],
         },

@@ -111,6 +111,9 @@ function sigmaAlong(place: Vec3, covariance: Float64Array): number {
   return Math.sqrt(Math.max(0, mapped[0]));
 }
 
+/** An ellipsoid smaller than this is a point: far above where squares lose their digits. */
+const NOTHING_KM = 1e-12;
+
 /**
  * Least and greatest distance of an error ellipsoid from the origin.
  *
@@ -131,7 +134,7 @@ export function distanceRange(
   const squares = Array.from(values, (value) => sigmas * sigmas * Math.max(0, value));
   const reach = Math.sqrt(squares[0]);
   const distance = norm(place);
-  if (reach === 0) return [distance, distance];
+  if (reach < NOTHING_KM) return [distance, distance];
   const parts = [0, 1, 2].map((i) => Math.abs(dot(place, vec3(vectors, 3 * i))));
   return [
     leastDistance(parts, squares, distance),

@@ -146,6 +146,14 @@ describe('the range of distance of an ellipsoid', () => {
     expect(far).toBeCloseTo(Math.hypot(30, 7), 6);
   });
 
+  it('takes an ellipsoid whose squares vanish for a point', () => {
+    // A variance of 2.5e-324 km²: found by a drawn case, NaN before.
+    const covariance = new Float64Array(9);
+    covariance[8] = Number.MIN_VALUE;
+    expect(distanceRange([0, 0, 0], covariance, 3)).toEqual([0, 0]);
+    expect(distanceRange([0, 0, 5], covariance, 3)).toEqual([5, 5]);
+  });
+
   it('holds every point of the ellipsoid, of any rank, and is finite', () => {
     fc.assert(
       fc.property(

@@ -178,6 +178,8 @@ describe('the ribbon', () => {
 describe('what is handed over', () => {
   it('is a JSON report that its schema accepts and a PNG plate with the same fingerprint', () =>
     on(async ({ page }) => {
+      // Until the estimate is in, the next report may take this one's place between two downloads.
+      await page.locator('.estimate-words', { hasText: /^All/ }).waitFor({ timeout: 60_000 });
       const { bytes: json, file } = await download(page, 'Report');
       const report = JSON.parse(json.toString('utf8'));
       const schema = await page.evaluate(async () =>
