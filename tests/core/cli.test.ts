@@ -37,6 +37,8 @@ describe('the command line', () => {
       '2031-04-01',
       '--to',
       '2031-06-01',
+      '--clones',
+      '0',
     );
     const report = JSON.parse(run.stdout);
     expect(report.model.gmSet).toBe('DE405');
